@@ -1,0 +1,1 @@
+//! Water in pipes: properties, friction, fittings, the steady line with its jets, quick surge figures.

@@ -1,0 +1,1 @@
+//! The interface: shows findings, edits the book, holds no engineering.

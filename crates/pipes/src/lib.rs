@@ -1,0 +1,1 @@
+//! The pipe catalogue: materials, published size tables as data files, temperature derating.

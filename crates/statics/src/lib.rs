@@ -1,0 +1,1 @@
+//! Forces and walls: hoop stress, allowable pressure by stress, collapse.

@@ -1,0 +1,2 @@
+//! The developer's commands behind `cargo task`.
+fn main() {}

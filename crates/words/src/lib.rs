@@ -1,0 +1,1 @@
+//! The message catalogues and the number formatter: where findings become sentences.

@@ -1,0 +1,1 @@
+//! The book a user fills in, and every finding computed from it.

@@ -1,0 +1,1 @@
+//! The walk through the page in a real browser.

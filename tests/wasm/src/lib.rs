@@ -1,0 +1,1 @@
+//! The same numbers from wasm as natively, bit for bit.
