@@ -1,0 +1,65 @@
+//! Pressure allowed against wall temperature.
+
+use uom::si::f64::ThermodynamicTemperature;
+use uom::si::thermodynamic_temperature::kelvin;
+
+use crate::{Attested, RatingError};
+
+/// One point of a derating table.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct DeratingPoint {
+    /// Wall temperature.
+    pub temperature: ThermodynamicTemperature,
+    /// Share of the rated pressure allowed, above 0 up to 1.
+    pub factor: f64,
+    /// Whether this point was seen.
+    pub attested: Attested,
+}
+
+/// A derating table: factor 1 up to the first point, straight lines between
+/// points, an error above the last. Temperatures rise and factors never do.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Derating {
+    /// The points, by rising temperature.
+    pub points: Vec<DeratingPoint>,
+    /// The rule, by name, with its source.
+    pub source: String,
+}
+
+impl Derating {
+    /// The factor at a wall temperature, and whether the points it rests on
+    /// were seen.
+    ///
+    /// # Errors
+    /// [`RatingError::TooHot`] above the last point, [`RatingError::Temperature`]
+    /// when the temperature is not a finite number above 0 K,
+    /// [`RatingError::NoDerating`] when the table is empty.
+    pub fn factor(&self, wall: ThermodynamicTemperature) -> Result<(f64, Attested), RatingError> {
+        let at = wall.get::<kelvin>();
+        if !at.is_finite() || at <= 0.0 {
+            return Err(RatingError::Temperature { kelvin: at });
+        }
+        let (Some(first), Some(last)) = (self.points.first(), self.points.last()) else {
+            return Err(RatingError::NoDerating);
+        };
+        if at <= first.temperature.get::<kelvin>() {
+            return Ok((1.0, first.attested));
+        }
+        for pair in self.points.windows(2) {
+            let (low, high) = (&pair[0], &pair[1]);
+            let (from, to) = (
+                low.temperature.get::<kelvin>(),
+                high.temperature.get::<kelvin>(),
+            );
+            if at <= to {
+                let share = (at - from) / (to - from);
+                let factor = low.factor + share * (high.factor - low.factor);
+                return Ok((factor, low.attested.and(high.attested)));
+            }
+        }
+        Err(RatingError::TooHot {
+            wall,
+            highest: last.temperature,
+        })
+    }
+}
