@@ -1,2 +1,7 @@
 //! The developer's commands behind `cargo task`.
-fn main() {}
+
+use std::process::ExitCode;
+
+fn main() -> ExitCode {
+    tasks::run(&std::env::args().skip(1).collect::<Vec<_>>())
+}
