@@ -1,0 +1,204 @@
+//! Wave speed.
+
+use crate::quantity::{AbsolutePressure, Length, Pressure, Velocity};
+use crate::water::Water;
+use uom::si::length::meter;
+use uom::si::pressure::pascal;
+use uom::si::velocity::meter_per_second;
+
+/// How the pipe is held along its axis.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Restraint {
+    /// Anchored at its upstream end only.
+    UpstreamEnd,
+    /// Anchored against all movement along the axis (buried, or anchored
+    /// throughout).
+    Throughout,
+    /// Expansion joints throughout: no stress along the axis.
+    ExpansionJoints,
+}
+
+/// The wall of a pipe, for waves.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct PipeWall {
+    /// Bore (inside diameter).
+    pub bore: Length,
+    /// Wall thickness.
+    pub thickness: Length,
+    /// Modulus of elasticity, short term.
+    pub modulus: Pressure,
+    /// Poisson's ratio, 0 to 0.5.
+    pub poisson: f64,
+    /// How it is held.
+    pub restraint: Restraint,
+}
+
+/// Free air carried as bubbles.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct EntrainedAir {
+    /// Share of the volume that is air, at the given pressure; 0 to 0.02.
+    pub share: f64,
+    /// Absolute pressure.
+    pub pressure: AbsolutePressure,
+}
+
+/// Why there is no wave speed.
+#[derive(Debug, Clone, Copy, PartialEq)]
+#[non_exhaustive]
+pub enum WaveError {
+    /// Bore or wall is not a positive length.
+    Length(Length),
+    /// The modulus is not a positive pressure.
+    Modulus(Pressure),
+    /// Poisson's ratio lies outside 0..=0.5.
+    Poisson(f64),
+    /// The share of air lies outside 0..=0.02.
+    AirShare(f64),
+    /// The absolute pressure is not positive.
+    AirPressure(AbsolutePressure),
+}
+
+impl core::fmt::Display for WaveError {
+    fn fmt(&self, f: &mut core::fmt::Formatter<'_>) -> core::fmt::Result {
+        match self {
+            Self::Length(value) => {
+                write!(
+                    f,
+                    "bore or wall of {} m is not above 0",
+                    value.get::<meter>()
+                )
+            }
+            Self::Modulus(value) => {
+                write!(f, "modulus {} Pa is not above 0", value.get::<pascal>())
+            }
+            Self::Poisson(value) => write!(f, "Poisson's ratio {value} lies outside 0 to 0.5"),
+            Self::AirShare(value) => write!(f, "share of air {value} lies outside 0 to 0.02"),
+            Self::AirPressure(value) => {
+                write!(f, "absolute pressure {} Pa is not above 0", value.pa())
+            }
+        }
+    }
+}
+
+impl core::error::Error for WaveError {}
+
+/// Factor c of the wave speed formula: how restraint and the thickness of the
+/// wall change its give.
+///
+/// # Equation
+/// With e the wall and D the bore, c = 2 e/D (1 + mu) + D/(D + e) c0, with
+/// c0 = 1 - mu/2 (upstream end), 1 - mu^2 (throughout), 1 (expansion joints).
+/// Source: Wylie and Streeter, Fluid Transients in Systems, 1993, equations
+/// 2-20 to 2-22 (from memory). For thin walls c tends to c0.
+///
+/// # Errors
+/// A length that is not positive, Poisson's ratio outside 0..=0.5.
+pub fn restraint_factor(wall: &PipeWall) -> Result<f64, WaveError> {
+    let bore = positive(wall.bore)?;
+    let thickness = positive(wall.thickness)?;
+    let mu = wall.poisson;
+    if !(0.0..=0.5).contains(&mu) {
+        return Err(WaveError::Poisson(mu));
+    }
+    let thin = wall.restraint.thin_factor(mu);
+    Ok(2.0 * thickness / bore * (1.0 + mu) + bore / (bore + thickness) * thin)
+}
+
+impl Restraint {
+    /// The factor of a thin wall: 1 - mu/2, 1 - mu^2 or 1.
+    #[must_use]
+    pub fn thin_factor(self, poisson: f64) -> f64 {
+        match self {
+            Self::UpstreamEnd => 1.0 - poisson / 2.0,
+            Self::Throughout => 1.0 - poisson * poisson,
+            Self::ExpansionJoints => 1.0,
+        }
+    }
+}
+
+/// Wave speed in a pipe running full of water.
+///
+/// # Equation
+/// a = sqrt(K/rho) / sqrt(1 + K D c / (E e)) (Korteweg 1878; Wylie and
+/// Streeter 1993), c by [`restraint_factor`], K the adiabatic bulk modulus.
+///
+/// # Errors
+/// As for [`restraint_factor`]; a modulus that is not positive.
+///
+/// # Example
+/// ```
+/// use hydraulics::quantity::{Length, Pressure, ThermodynamicTemperature, unit};
+/// use hydraulics::surge::{PipeWall, Restraint, wave_speed};
+/// use hydraulics::water::Water;
+/// let water = Water::at(ThermodynamicTemperature::new::<
+///     unit::thermodynamic_temperature::degree_celsius,
+/// >(10.0)).expect("in range");
+/// let wall = PipeWall {
+///     bore: Length::new::<unit::length::millimeter>(204.6),
+///     thickness: Length::new::<unit::length::millimeter>(22.7),
+///     modulus: Pressure::new::<unit::pressure::gigapascal>(1.1),
+///     poisson: 0.45,
+///     restraint: Restraint::Throughout,
+/// };
+/// let speed = wave_speed(&water, &wall)?.get::<unit::velocity::meter_per_second>();
+/// assert!((340.0..380.0).contains(&speed));
+/// # Ok::<(), hydraulics::surge::WaveError>(())
+/// ```
+pub fn wave_speed(water: &Water, wall: &PipeWall) -> Result<Velocity, WaveError> {
+    let density = water.density_si();
+    let bulk = water.bulk_modulus().get::<pascal>();
+    Ok(Velocity::new::<meter_per_second>(f64::sqrt(
+        1.0 / (density * (1.0 / bulk + wall_compliance(wall)?)),
+    )))
+}
+
+/// Wave speed with free air in the water.
+///
+/// # Equation
+/// 1/(rho a^2) = 1/K + D c/(E e) + share/p: the give of the air (isothermal)
+/// added to that of water and wall (Wylie and Streeter 1993, section 1-4, from
+/// memory). **Not conservative**: air lowers the computed surge, and it may
+/// not be there on the day. Off unless asked for.
+///
+/// # Errors
+/// As for [`wave_speed`]; a share outside 0..=0.02, a pressure that is not
+/// positive.
+pub fn wave_speed_with_air(
+    water: &Water,
+    wall: &PipeWall,
+    air: EntrainedAir,
+) -> Result<Velocity, WaveError> {
+    if !(0.0..=0.02).contains(&air.share) {
+        return Err(WaveError::AirShare(air.share));
+    }
+    let pressure = air.pressure.pa();
+    if !(pressure > 0.0 && pressure.is_finite()) {
+        return Err(WaveError::AirPressure(air.pressure));
+    }
+    let density = water.density_si();
+    let bulk = water.bulk_modulus().get::<pascal>();
+    let give = 1.0 / bulk + wall_compliance(wall)? + air.share / pressure;
+    Ok(Velocity::new::<meter_per_second>(f64::sqrt(
+        1.0 / (density * give),
+    )))
+}
+
+/// D c / (E e), 1/Pa.
+fn wall_compliance(wall: &PipeWall) -> Result<f64, WaveError> {
+    let factor = restraint_factor(wall)?;
+    let modulus = wall.modulus.get::<pascal>();
+    if !(modulus > 0.0 && modulus.is_finite()) {
+        return Err(WaveError::Modulus(wall.modulus));
+    }
+    Ok(positive(wall.bore)? * factor / (modulus * positive(wall.thickness)?))
+}
+
+/// A positive length in metres.
+fn positive(length: Length) -> Result<f64, WaveError> {
+    let metres = length.get::<meter>();
+    if metres > 0.0 && metres.is_finite() {
+        Ok(metres)
+    } else {
+        Err(WaveError::Length(length))
+    }
+}
