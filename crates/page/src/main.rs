@@ -4,7 +4,7 @@ use leptos::prelude::*;
 
 fn main() {
     console_error_panic_hook::set_once();
-    leptos::mount::mount_to_body(|| {
+    mount_to_body(|| {
         view! {
             <main>
                 <h1>"Fallwright"</h1>

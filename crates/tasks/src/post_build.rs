@@ -127,7 +127,13 @@ fn wrong(contents: &[(String, Vec<u8>)]) -> Vec<String> {
             found.push(format!("{name}: not UTF-8"));
             continue;
         };
-        found.extend(foreign(text).map(|address| format!("{name}: names {address}")));
+        // What stands in a comment asks for nothing; the glue of wasm-bindgen has some.
+        let code: String = text
+            .lines()
+            .filter(|line| !(name.ends_with(".js") && line.trim_start().starts_with("//")))
+            .flat_map(|line| [line, "\n"])
+            .collect();
+        found.extend(foreign(&code).map(|address| format!("{name}: names {address}")));
         if name.ends_with(".html") {
             found.extend(
                 page_wrong(text)
@@ -239,7 +245,7 @@ mod tests {
         let mut contents = page("<script src=\"boot.js\"></script>");
         contents.push((
             "a.js".into(),
-            b"// a comment\nconst x = 'http://www.w3.org/2000/svg';".into(),
+            b"// https://example.org in a comment\nconst x = 'http://www.w3.org/2000/svg';".into(),
         ));
         assert_eq!(wrong(&contents), Vec::<String>::new());
     }
