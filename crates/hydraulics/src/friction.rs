@@ -18,8 +18,8 @@ mod law;
 
 pub use colebrook::{colebrook_factor, colebrook_factors, colebrook_white};
 pub use factor::{
-    DarcyFactor, FrictionError, GREATEST_RELATIVE_ROUGHNESS, LAMINAR_LIMIT, Regime,
-    RelativeRoughness, ReynoldsNumber, TURBULENT_LIMIT, darcy_factor, factor_si, laminar,
+    DarcyFactor, FrictionError, GREATEST_RELATIVE_ROUGHNESS, GREATEST_REYNOLDS, LAMINAR_LIMIT,
+    Regime, RelativeRoughness, ReynoldsNumber, TURBULENT_LIMIT, darcy_factor, factor_si, laminar,
     reynolds_number,
 };
 pub use law::{

@@ -29,6 +29,8 @@ mod jets;
 mod layout;
 mod spec;
 mod suction;
+#[cfg(test)]
+mod tests;
 
 pub use curve::{CurvePoint, PowerCurve};
 pub use grade::{Grade, LineCaution, Node, RunLoss};

@@ -15,7 +15,7 @@ pub const TURBULENT_LIMIT: f64 = 4000.0;
 /// beyond 0.1 the wall no longer is a rough wall but a row of obstacles.
 pub const GREATEST_RELATIVE_ROUGHNESS: f64 = 0.1;
 /// Greatest Reynolds number accepted: ten times the end of Moody's diagram.
-pub(crate) const GREATEST_REYNOLDS: f64 = 1e9;
+pub const GREATEST_REYNOLDS: f64 = 1e9;
 
 /// Why there is no friction factor.
 #[derive(Debug, Clone, Copy, PartialEq)]

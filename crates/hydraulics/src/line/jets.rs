@@ -3,9 +3,14 @@
 use super::grade::Grade;
 use super::layout::Line;
 use super::spec::LineError;
-use crate::nozzle::Nozzle;
+use crate::math;
+use crate::nozzle::{Nozzle, bore_for_flow, check_coefficients, jet_power};
 use crate::quantity::{GaugePressure, Head, Length, Level, Power, Velocity, VolumeRate};
-use crate::solve::Solution;
+use crate::solve::{Bracket, Solution, Stop, Tolerance};
+use uom::si::area::square_meter;
+use uom::si::length::meter;
+use uom::si::power::watt;
+use uom::si::volume_rate::cubic_meter_per_second;
 
 /// Open nozzles at the foot of a line, each at the end of its own branch; the
 /// branches are alike.
@@ -84,27 +89,271 @@ pub struct Solved {
     pub solution: Solution,
 }
 
+/// The branch that leads to each nozzle, in SI numbers.
+#[derive(Debug, Clone, Copy)]
+struct Branch {
+    k: f64,
+    area: f64,
+}
+
+impl Branch {
+    fn new(k: f64, bore: Length) -> Result<Self, LineError> {
+        let metres = bore.get::<meter>();
+        if !(k >= 0.0 && k.is_finite() && metres > 0.0 && metres.is_finite()) {
+            return Err(LineError::Branch { k, bore });
+        }
+        Ok(Self {
+            k,
+            area: math::PI * metres * metres / 4.0,
+        })
+    }
+
+    /// Flow over sqrt(2 g H) of a nozzle, H the energy at the foot above the
+    /// axis: Cd a / sqrt(1 + k (Cd a / A)^2).
+    fn conductance(&self, nozzle: &Nozzle) -> f64 {
+        let free = free_conductance(nozzle);
+        let share = free / self.area;
+        free / (1.0 + self.k * share * share).sqrt()
+    }
+}
+
+/// Cd a of a nozzle, m2.
+fn free_conductance(nozzle: &Nozzle) -> f64 {
+    nozzle.discharge_coefficient() * nozzle.area().get::<square_meter>()
+}
+
 impl Line {
     /// The flow through given nozzles.
     ///
+    /// # Equation
+    /// Each branch passes q = G sqrt(2 g H) with
+    /// G = Cd a / sqrt(1 + k (Cd a/A)^2) and H the energy at the foot above the
+    /// jet axis, so that the flow Q solves forebay - axis - losses(Q) =
+    /// Q^2 / (2 g (sum G)^2). The left side falls with Q and the right side
+    /// rises: there is one root, and it lies between no flow and the flow
+    /// without losses.
+    ///
     /// # Errors
-    /// A set that cannot be used, or no head above the jet axis.
+    /// A set that cannot be used ([`LineError::NoNozzle`],
+    /// [`LineError::Branch`], [`LineError::NozzleWiderThanBranch`]), or no head
+    /// above the jet axis ([`LineError::NoHead`]).
     pub fn flow_for(&self, set: &NozzleSet) -> Result<Solved, LineError> {
-        let _ = set;
-        unimplemented!()
+        let branch = Branch::new(set.branch_k, set.branch_bore)?;
+        if set.nozzles.is_empty() {
+            return Err(LineError::NoNozzle);
+        }
+        for (index, nozzle) in set.nozzles.iter().enumerate() {
+            if nozzle.bore() > set.branch_bore {
+                return Err(LineError::NozzleWiderThanBranch {
+                    nozzle: index,
+                    bore: nozzle.bore(),
+                    branch: set.branch_bore,
+                });
+            }
+        }
+        let gross = self.gross_head(set.axis)?;
+        let conductance: f64 = set
+            .nozzles
+            .iter()
+            .map(|nozzle| branch.conductance(nozzle))
+            .sum();
+        let resistance = 1.0 / (2.0 * self.gravity * conductance * conductance);
+        let mut balance = |q: f64| gross - self.head_lost(q) - resistance * q * q;
+        // A hair above the flow without losses, so that rounding cannot hide
+        // the change of sign.
+        let most = (gross / resistance).sqrt() * (1.0 + 1e-12);
+        let solution = Bracket::new(0.0, most, &mut balance)
+            .map_err(|_| LineError::NoHead {
+                forebay: self.spec.forebay,
+                axis: set.axis,
+            })?
+            .solve(Tolerance::default(), &mut balance);
+        self.solved(set, &branch, solution.root, solution)
     }
 
     /// The bore of equal nozzles for a given flow.
     ///
+    /// # Equation
+    /// Net head is what the line and the branch leave; the bore follows from
+    /// Q/n = Cd a sqrt(2 g Hn) in closed form.
+    ///
     /// # Errors
-    /// A template that cannot be used, a flow that is not positive, or
-    /// [`LineError::FlowTooGreat`] with the greatest flow the line can pass.
+    /// A template that cannot be used, a flow that is not positive, no head
+    /// above the axis, or [`LineError::FlowTooGreat`] with the greatest flow
+    /// the line can pass: that with every nozzle as wide as its branch.
     pub fn bore_for(
         &self,
         flow: VolumeRate,
         template: &NozzleTemplate,
     ) -> Result<Solved, LineError> {
-        let _ = (flow, template);
-        unimplemented!()
+        let branch = template.check()?;
+        let q = flow.get::<cubic_meter_per_second>();
+        if !(q > 0.0 && q.is_finite()) {
+            return Err(LineError::Flow(flow));
+        }
+        let net = self.net_head_of(template)?(q);
+        let too_great = || -> Result<Solved, LineError> {
+            let widest = self.flow_for(&template.set(template.branch_bore)?)?;
+            Err(LineError::FlowTooGreat {
+                flow,
+                greatest: widest.grade.flow,
+            })
+        };
+        if net <= 0.0 {
+            return too_great();
+        }
+        let each = q / template.jets();
+        let bore = bore_for_flow(
+            VolumeRate::new::<cubic_meter_per_second>(each),
+            Head::from_m(net),
+            self.spec.gravity,
+            template.velocity_coefficient,
+            template.contraction_coefficient,
+        )?;
+        if bore > template.branch_bore {
+            return too_great();
+        }
+        let set = template.set(bore)?;
+        let passed: f64 = set.nozzles.iter().map(free_conductance).sum();
+        let needed = q / passed;
+        let solution = Solution {
+            root: bore.get::<meter>(),
+            residual: net - needed * needed / (2.0 * self.gravity),
+            iterations: 0,
+            stop: Stop::ClosedForm,
+        };
+        self.solved(&set, &branch, q, solution)
+    }
+
+    /// Forebay above the jet axis, m; an error unless positive.
+    pub(super) fn gross_head(&self, axis: Level) -> Result<f64, LineError> {
+        let gross = (self.spec.forebay - axis).m();
+        if gross > 0.0 && gross.is_finite() {
+            Ok(gross)
+        } else {
+            Err(LineError::NoHead {
+                forebay: self.spec.forebay,
+                axis,
+            })
+        }
+    }
+
+    /// Head that line and branches leave for equal jets, m, as a function of
+    /// the flow, m3/s; may be negative.
+    pub(super) fn net_head_of(
+        &self,
+        template: &NozzleTemplate,
+    ) -> Result<impl Fn(f64) -> f64 + '_, LineError> {
+        let branch = template.check()?;
+        let gross = self.gross_head(template.axis)?;
+        let (gravity, jets) = (self.gravity, template.jets());
+        Ok(move |flow: f64| {
+            let velocity = flow / (jets * branch.area);
+            gross - self.head_lost(flow) - branch.k * velocity * velocity / (2.0 * gravity)
+        })
+    }
+
+    fn solved(
+        &self,
+        set: &NozzleSet,
+        branch: &Branch,
+        flow: f64,
+        solution: Solution,
+    ) -> Result<Solved, LineError> {
+        let grade = self.grade(VolumeRate::new::<cubic_meter_per_second>(flow))?;
+        let total: f64 = set
+            .nozzles
+            .iter()
+            .map(|nozzle| branch.conductance(nozzle))
+            .sum();
+        let jets: Vec<Jet> = set
+            .nozzles
+            .iter()
+            .map(|nozzle| self.jet(nozzle, branch, flow * branch.conductance(nozzle) / total))
+            .collect::<Result<_, _>>()?;
+        let Some(widest) = jets
+            .iter()
+            .max_by(|a, b| a.bore.get::<meter>().total_cmp(&b.bore.get::<meter>()))
+        else {
+            return Err(LineError::NoNozzle);
+        };
+        let share = |jet: &Jet| jet.flow.get::<cubic_meter_per_second>() / flow;
+        let net_head = jets.iter().map(|jet| jet.net_head.m() * share(jet)).sum();
+        let branch_loss = jets
+            .iter()
+            .map(|jet| {
+                let velocity = jet.flow.get::<cubic_meter_per_second>() / branch.area;
+                branch.k * velocity * velocity / (2.0 * self.gravity) * share(jet)
+            })
+            .sum();
+        let power = jets.iter().map(|jet| jet.power.get::<watt>()).sum();
+        Ok(Solved {
+            net_head: Head::from_m(net_head),
+            jet_velocity: widest.velocity,
+            jet_diameter: widest.diameter,
+            bore: widest.bore,
+            jet_power: Power::new::<watt>(power),
+            branch_loss: Head::from_m(branch_loss),
+            grade,
+            jets,
+            solution,
+        })
+    }
+
+    fn jet(&self, nozzle: &Nozzle, branch: &Branch, flow: f64) -> Result<Jet, LineError> {
+        let spouting = flow / free_conductance(nozzle);
+        let net = spouting * spouting / (2.0 * self.gravity);
+        let approach = flow / branch.area;
+        let pressure_head = Head::from_m(net - approach * approach / (2.0 * self.gravity));
+        let net_head = Head::from_m(net);
+        let flow = VolumeRate::new::<cubic_meter_per_second>(flow);
+        let velocity = nozzle.jet_velocity(net_head, self.spec.gravity)?;
+        let density = self.spec.water.density();
+        Ok(Jet {
+            bore: nozzle.bore(),
+            flow,
+            net_head,
+            pressure: pressure_head.pressure(density, self.spec.gravity),
+            velocity,
+            diameter: nozzle.jet_diameter(),
+            power: jet_power(density, flow, velocity),
+        })
+    }
+}
+
+impl NozzleTemplate {
+    fn check(&self) -> Result<Branch, LineError> {
+        check_coefficients(self.velocity_coefficient, self.contraction_coefficient)?;
+        if self.count == 0 {
+            return Err(LineError::NoNozzle);
+        }
+        Branch::new(self.branch_k, self.branch_bore)
+    }
+
+    /// Number of jets as a factor.
+    #[expect(
+        clippy::cast_precision_loss,
+        reason = "a count of nozzles is far below 2^52"
+    )]
+    fn jets(&self) -> f64 {
+        self.count as f64
+    }
+
+    /// The set of equal nozzles of this template with a given bore.
+    ///
+    /// # Errors
+    /// [`LineError::Nozzle`] when bore or coefficients cannot be used.
+    pub fn set(&self, bore: Length) -> Result<NozzleSet, LineError> {
+        let nozzle = Nozzle::new(
+            bore,
+            self.velocity_coefficient,
+            self.contraction_coefficient,
+        )?;
+        Ok(NozzleSet {
+            nozzles: vec![nozzle; self.count],
+            axis: self.axis,
+            branch_k: self.branch_k,
+            branch_bore: self.branch_bore,
+        })
     }
 }
