@@ -27,6 +27,25 @@ pub struct Derating {
 }
 
 impl Derating {
+    /// Index of the first point out of order: temperatures must rise, factors
+    /// must not, and lie above 0 up to 1.
+    #[must_use]
+    pub fn disorder(&self) -> Option<usize> {
+        let mut last: Option<&DeratingPoint> = None;
+        for (index, point) in self.points.iter().enumerate() {
+            let possible = point.factor > 0.0 && point.factor <= 1.0;
+            let ordered = last.is_none_or(|last| {
+                point.temperature.get::<kelvin>() > last.temperature.get::<kelvin>()
+                    && point.factor <= last.factor
+            });
+            if !possible || !ordered {
+                return Some(index);
+            }
+            last = Some(point);
+        }
+        None
+    }
+
     /// The factor at a wall temperature, and whether the points it rests on
     /// were seen.
     ///

@@ -15,7 +15,11 @@ mod material;
 mod own;
 mod pipe;
 mod rating;
+mod series;
+mod shared;
 mod sourced;
+mod steel_data;
+mod table;
 
 pub use catalogue::{Catalogue, Series, catalogue};
 pub use derating::{Derating, DeratingPoint};
@@ -24,3 +28,4 @@ pub use own::{OwnPipe, OwnPipeError, OwnRating, plate_steel};
 pub use pipe::{Dimensions, Pipe, Supply, SupplyKind};
 pub use rating::{Allowable, Basis, ClassRating, Rating, RatingError, Shares, SteelRating};
 pub use sourced::{Attested, Sourced};
+pub use steel_data::SteelJoint;

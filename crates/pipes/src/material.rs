@@ -73,11 +73,7 @@ impl Material {
     /// The usual properties with their sources; none for [`Material::Other`].
     #[must_use]
     pub fn properties(self) -> Option<&'static Properties> {
-        crate::catalogue()
-            .properties
-            .iter()
-            .find(|(material, _)| *material == self)
-            .map(|(_, p)| p)
+        crate::catalogue().properties(self)
     }
 }
 

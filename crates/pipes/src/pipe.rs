@@ -135,6 +135,21 @@ impl Pipe {
         }
     }
 
+    /// The Poisson ratio for collapse: the pipe's own where its source was
+    /// seen, else zero, which gives the least critical pressure and so needs
+    /// no source.
+    #[must_use]
+    pub fn poisson_for_collapse(&self) -> Sourced<f64> {
+        if self.poisson.attested.is_seen() {
+            self.poisson.clone()
+        } else {
+            Sourced::seen(
+                0.0,
+                "zero: gives the least critical pressure, since no figure was seen",
+            )
+        }
+    }
+
     /// Mass per length of the empty pipe, from its geometry: mean wall, lining
     /// included (cement mortar at 2200 kg/m3, from memory), sockets left out.
     #[must_use]
@@ -213,7 +228,7 @@ impl Pipe {
         })
     }
 
-    fn steel_wall(&self, rating: &crate::SteelRating) -> SteelWall {
+    pub(crate) fn steel_wall(&self, rating: &crate::SteelRating) -> SteelWall {
         SteelWall {
             outside_diameter: self.outside_diameter,
             nominal_wall: self.wall_mean(),

@@ -45,6 +45,15 @@ impl<T> Sourced<T> {
         }
     }
 
+    /// The same source and mark with the value made into something else.
+    pub fn map<U>(self, make: impl FnOnce(T) -> U) -> Sourced<U> {
+        Sourced {
+            value: make(self.value),
+            source: self.source,
+            attested: self.attested,
+        }
+    }
+
     /// A value from memory.
     pub fn from_memory(value: T, source: impl Into<String>) -> Self {
         Self {
