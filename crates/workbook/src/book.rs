@@ -1,0 +1,585 @@
+//! The book: all that the user enters for one site, and nothing computed.
+//!
+//! These are the types of the saved file (format 1, see [`crate::format`]):
+//! changing one changes the file. Each field's name ends in the base unit of
+//! its value; how each is read and which range it takes is
+//! [`Field`](crate::field::Field)'s.
+
+use crate::entry::Entry;
+use crate::pipe_copy::PipeCopy;
+use crate::units::UnitSystem;
+use schemars::JsonSchema;
+use serde::{Deserialize, Serialize};
+
+/// Number of a station, stretch, fitting or own pipe: given once, outlives
+/// edits, unique within its list.
+pub type Id = u32;
+
+/// One site's document.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct Book {
+    /// Format of the file; see [`crate::format::FORMAT`].
+    pub format: u32,
+    /// The edition of the program that wrote it.
+    pub written_by: String,
+    /// The book's own key among many.
+    pub id: String,
+    /// Counts the edits.
+    #[serde(default)]
+    pub revision: u64,
+    /// Edition of the pipe catalogue its copies were taken from.
+    #[serde(default)]
+    pub catalogue_edition: String,
+    /// Whether the site is invented, as in the demo: said on every print.
+    #[serde(default)]
+    pub invented: bool,
+    /// Units of the screen and the print.
+    #[serde(default)]
+    pub units: UnitSystem,
+    /// Title block.
+    #[serde(default)]
+    pub site: Site,
+    /// What the stream gives.
+    #[serde(default)]
+    pub stream: Stream,
+    /// Water and jet levels, in the book's own datum.
+    #[serde(default)]
+    pub levels: Levels,
+    /// Temperatures that decide strength, stiffness and losses.
+    #[serde(default)]
+    pub climate: Climate,
+    /// The surveyed line.
+    #[serde(default)]
+    pub line: LineEntries,
+    /// A copy of every catalogue pipe the line uses.
+    #[serde(default)]
+    pub pipes: Vec<PipeCopy>,
+    /// Pipes of the user's own.
+    #[serde(default)]
+    pub own_pipes: Vec<OwnPipeEntry>,
+    /// Nozzles.
+    #[serde(default)]
+    pub jets: Jets,
+    /// Prices from the user's own list.
+    #[serde(default)]
+    pub prices: Prices,
+    /// Limits and margins that are the user's to change.
+    #[serde(default)]
+    pub limits: Limits,
+    /// What the print needs beside the figures.
+    #[serde(default)]
+    pub print: PrintSetup,
+}
+
+/// The title block.
+#[derive(Debug, Clone, PartialEq, Eq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct Site {
+    /// Name of the site.
+    pub name: String,
+    /// Where it is.
+    pub place: String,
+    /// Who it is for.
+    pub client: String,
+    /// Who measured and entered it.
+    pub prepared_by: String,
+    /// Date as typed.
+    pub date: String,
+    /// Anything to remember.
+    pub note: String,
+}
+
+macro_rules! entries {
+    (
+        $(#[$meta:meta])*
+        $name:ident { $( $(#[$field_meta:meta])* $field:ident ),+ $(,)? }
+    ) => {
+        $(#[$meta])*
+        #[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+        #[serde(deny_unknown_fields, default)]
+        pub struct $name {
+            $(
+                $(#[$field_meta])*
+                #[serde(skip_serializing_if = "Entry::is_empty")]
+                pub $field: Entry,
+            )+
+        }
+    };
+}
+
+entries! {
+    /// What the stream gives.
+    Stream {
+        /// Flow the scheme is sized for, m³/s.
+        design_flow_m3_s,
+    }
+}
+
+entries! {
+    /// Levels in the book's own datum, m.
+    Levels {
+        /// Highest water level in the forebay: decides pressure.
+        forebay_highest_m,
+        /// Normal water level in the forebay: decides power. Where none is
+        /// entered, the level of the first station stands in, and is said.
+        forebay_normal_m,
+        /// Lowest water level in the forebay.
+        forebay_lowest_m,
+        /// Axis of the jets. Where none is entered, the level of the last
+        /// station stands in, and is said.
+        jet_axis_m,
+        /// Tail water.
+        tail_m,
+        /// The pressure gauge.
+        gauge_m,
+    }
+}
+
+entries! {
+    /// Place and climate.
+    Climate {
+        /// Altitude above the sea, apart from local levels, m.
+        altitude_m,
+        /// Coldest water, degC.
+        coldest_water_degc,
+        /// Warmest water, degC.
+        warmest_water_degc,
+        /// Coldest pipe wall, degC.
+        coldest_wall_degc,
+        /// Warmest pipe wall (sun on bare pipe, water standing), degC.
+        warmest_wall_degc,
+    }
+}
+
+/// How station distances are measured.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum DistanceKind {
+    /// Along the slope, by tape on the ground or the pipe.
+    #[default]
+    Slope,
+    /// Horizontal, off a map or by level.
+    Horizontal,
+}
+
+/// What a station's distance is counted from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum Reckoning {
+    /// From the first station.
+    #[default]
+    FromStart,
+    /// From the station before.
+    FromPrevious,
+}
+
+/// The surveyed line.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct LineEntries {
+    /// Slope or horizontal distances.
+    pub distance_kind: DistanceKind,
+    /// Running from the start, or leg by leg.
+    pub reckoning: Reckoning,
+    /// Stations from the forebay down, in the order of the line.
+    pub stations: Vec<Station>,
+    /// Stretches in the order of the line; each runs to where the next begins.
+    pub stretches: Vec<StretchEntry>,
+    /// Fittings and valves.
+    pub fittings: Vec<FittingEntry>,
+}
+
+/// A surveyed point of the pipe's axis.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct Station {
+    /// Its number.
+    pub id: Id,
+    /// A name, if it has one.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub name: String,
+    /// Distance, of the line's [`DistanceKind`] and [`Reckoning`], m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub distance_m: Entry,
+    /// Level, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub level_m: Entry,
+}
+
+/// How a stretch is laid.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum Laying {
+    /// In a trench, covered.
+    #[default]
+    Buried,
+    /// On the ground, bare.
+    OnGround,
+    /// On supports, bare.
+    OnSupports,
+}
+
+/// A run of the line with one pipe.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct StretchEntry {
+    /// Its number.
+    pub id: Id,
+    /// The station it begins at; the first begins at the first station.
+    pub from_station: Id,
+    /// Its pipe: the id of one of the book's copies, or `own/<id>`.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub pipe: Option<String>,
+    /// How it is laid.
+    #[serde(default)]
+    pub laying: Laying,
+    /// Cover over a buried pipe, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub cover_m: Entry,
+}
+
+/// A kind of fitting, valve or other local loss.
+#[derive(
+    Debug,
+    Clone,
+    Copy,
+    PartialEq,
+    Eq,
+    Hash,
+    PartialOrd,
+    Ord,
+    Default,
+    Serialize,
+    Deserialize,
+    JsonSchema,
+)]
+#[serde(rename_all = "snake_case")]
+pub enum FittingKind {
+    /// Entrance with a sharp edge, flush with the wall.
+    #[default]
+    EntranceSharp,
+    /// Pipe standing into the forebay.
+    EntranceProjecting,
+    /// Entrance with rounded edge.
+    EntranceRounded,
+    /// Bellmouth entrance.
+    EntranceBellmouth,
+    /// Smooth bend, by angle and radius.
+    Bend,
+    /// Mitre bend, by angle.
+    Mitre,
+    /// Gate valve, by opening.
+    GateValve,
+    /// Ball valve, by opening.
+    BallValve,
+    /// Butterfly valve, by opening.
+    ButterflyValve,
+    /// Tee, flow straight on.
+    TeeRun,
+    /// Tee, flow into the branch.
+    TeeBranch,
+    /// Anything else, with a loss coefficient of the user's own.
+    Own,
+}
+
+/// A fitting placed at a station.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct FittingEntry {
+    /// Its number.
+    pub id: Id,
+    /// The station it sits at.
+    pub at_station: Id,
+    /// What it is.
+    pub kind: FittingKind,
+    /// How many of them in a row.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub count_number: Entry,
+    /// Deflection of a bend or mitre, degree.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub angle_deg: Entry,
+    /// Bend radius over bore.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub radius_ratio_number: Entry,
+    /// Opening of a valve, as a share of full.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub opening_share: Entry,
+    /// The user's own loss coefficient K, on the velocity in the pipe there.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub k_number: Entry,
+    /// Its pressure rating, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub rating_pa: Entry,
+    /// What it is called on the order.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub note: String,
+}
+
+/// Material of a pipe of the user's own.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum OwnMaterial {
+    /// Polyethylene PE 100 and its like.
+    Pe,
+    /// PVC-U and its like.
+    Pvc,
+    /// Steel, rated by its pressure or by stress.
+    #[default]
+    Steel,
+    /// Ductile iron.
+    DuctileIron,
+    /// Glass-fibre reinforced plastic.
+    Grp,
+    /// Something else.
+    Other,
+}
+
+/// How a pipe of the user's own is rated.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum OwnRating {
+    /// By a pressure printed on it or given by its maker.
+    #[default]
+    Pressure,
+    /// By the stress in its steel wall.
+    SteelStress,
+}
+
+/// A pipe of the user's own.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct OwnPipeEntry {
+    /// Its number; stretches name it `own/<id>`.
+    pub id: Id,
+    /// What it is called on the order.
+    #[serde(default)]
+    pub name: String,
+    /// Where its figures come from, in the user's words: a maker's sheet, a
+    /// stamp on the pipe.
+    #[serde(default)]
+    pub source: String,
+    /// Its material.
+    #[serde(default)]
+    pub material: OwnMaterial,
+    /// How it is rated.
+    #[serde(default)]
+    pub rated: OwnRating,
+    /// Outside diameter, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub outside_diameter_m: Entry,
+    /// Smallest wall, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub wall_m: Entry,
+    /// Pressure rating, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub rating_pa: Entry,
+    /// Highest wall temperature the rating stands at, degC.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub rating_degc: Entry,
+    /// Yield strength of a steel wall, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub yield_pa: Entry,
+    /// Tensile strength of a steel wall, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub tensile_pa: Entry,
+    /// Joint factor of the weld, a share.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub joint_share: Entry,
+    /// Corrosion allowance, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub corrosion_m: Entry,
+    /// Mill tolerance on the wall, a share.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub mill_tolerance_share: Entry,
+    /// Roughness of the new pipe, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub roughness_new_m: Entry,
+    /// Roughness of the aged pipe, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub roughness_aged_m: Entry,
+    /// Short-term modulus, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub modulus_short_pa: Entry,
+    /// Long-term modulus, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub modulus_long_pa: Entry,
+    /// Supply length, m.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub supply_length_m: Entry,
+}
+
+/// Whether nozzle bores are solved for the design flow or given.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum BoreSizing {
+    /// The bore that passes the design flow is solved for.
+    #[default]
+    Solved,
+    /// The bore is given, and the flow follows.
+    Chosen,
+}
+
+/// Kind of nozzle.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum NozzleKind {
+    /// A plain nozzle, opened and shut by a valve before it.
+    #[default]
+    Fixed,
+    /// A needle (spear) nozzle.
+    Needle,
+}
+
+/// Nozzles.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct Jets {
+    /// Solved or given.
+    pub sizing: BoreSizing,
+    /// Fixed or needle.
+    pub kind: NozzleKind,
+    /// How many equal nozzles.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub count_number: Entry,
+    /// Outlet bore of each, where given, m.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub bore_m: Entry,
+    /// Velocity coefficient Cv.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub velocity_coefficient_number: Entry,
+    /// Contraction coefficient: jet area over outlet area.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub contraction_number: Entry,
+    /// Loss coefficient of each branch with its valve, on the branch velocity.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub branch_k_number: Entry,
+    /// Bore of each branch, m. Where none is entered, the last stretch's bore.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub branch_bore_m: Entry,
+    /// Pressure rating of manifold, valve and nozzle, Pa.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub rating_pa: Entry,
+}
+
+/// Prices, from the user's own list.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct Prices {
+    /// Currency as the user writes it.
+    pub currency: String,
+    /// One line a pipe.
+    pub pipes: Vec<Price>,
+}
+
+/// The price of one pipe.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct Price {
+    /// The pipe's catalogue id, or `own/<id>`.
+    pub pipe: String,
+    /// Price per metre, in the book's currency.
+    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    pub price_per_m: Entry,
+}
+
+/// Which roughness the losses are figured with.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum RoughnessAge {
+    /// As it will be after years of use: the careful choice for sizing.
+    #[default]
+    Aged,
+    /// As delivered.
+    New,
+}
+
+/// Limits and margins. An empty one takes its default, which is said.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct Limits {
+    /// Aged or new.
+    pub roughness: RoughnessAge,
+    /// A margin under this share of what is allowed is tight.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub tight_margin_share: Entry,
+    /// Most head that may be lost, as a share of gross head.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub loss_cap_share: Entry,
+    /// Velocity above which a caution is given, m/s.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub velocity_high_m_s: Entry,
+    /// Safety factor on collapse.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub collapse_safety_number: Entry,
+    /// Spare pipe to order, as a share of the length.
+    #[serde(skip_serializing_if = "Entry::is_empty")]
+    pub spare_share: Entry,
+}
+
+/// Sheet size of the print.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum Paper {
+    /// 210 x 297 mm.
+    #[default]
+    A4,
+    /// 8.5 x 11 in.
+    Letter,
+}
+
+/// What the print needs beside the figures.
+#[derive(Debug, Clone, PartialEq, Eq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct PrintSetup {
+    /// Sheet size.
+    pub paper: Paper,
+    /// The licensed engineer who reviews it.
+    pub reviewer: String,
+    /// Their licence.
+    pub reviewer_licence: String,
+}
+
+impl Book {
+    /// An empty book with this key, one stretch and the two stations that
+    /// every line has.
+    #[must_use]
+    pub fn new(id: &str) -> Book {
+        let mut book = Book {
+            format: crate::format::FORMAT,
+            written_by: crate::format::program(),
+            id: id.to_owned(),
+            revision: 0,
+            catalogue_edition: pipes::catalogue().edition.to_owned(),
+            invented: false,
+            units: UnitSystem::Metric,
+            site: Site::default(),
+            stream: Stream::default(),
+            levels: Levels::default(),
+            climate: Climate::default(),
+            line: LineEntries::default(),
+            pipes: Vec::new(),
+            own_pipes: Vec::new(),
+            jets: Jets::default(),
+            prices: Prices::default(),
+            limits: Limits::default(),
+            print: PrintSetup::default(),
+        };
+        book.line.stations = vec![
+            Station {
+                id: 1,
+                ..Station::default()
+            },
+            Station {
+                id: 2,
+                ..Station::default()
+            },
+        ];
+        book.line.stretches = vec![StretchEntry {
+            id: 1,
+            from_station: 1,
+            ..StretchEntry::default()
+        }];
+        book
+    }
+}

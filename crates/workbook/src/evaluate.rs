@@ -1,0 +1,103 @@
+//! From book to findings: a pure function, stage by stage, no back edges.
+
+use crate::book::Book;
+use crate::figure::Trouble;
+use crate::judge::{Judged, judge};
+use crate::next::{Next, next};
+use crate::operation::{Operation, operation};
+use crate::resolve::{Assumption, Resolved, resolve};
+use crate::steady::{Steady, steady};
+use crate::transient::{Transient, transient};
+use crate::walls::{Walls, walls};
+
+/// All that is computed from a book.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Findings {
+    /// Stage 1: what the entries come to.
+    pub resolved: Resolved,
+    /// Stage 2: line and jets in balance.
+    pub steady: Steady,
+    /// The line at other flows.
+    pub operation: Operation,
+    /// Stage 3: transients.
+    pub transient: Transient,
+    /// Stage 4: what the walls bear.
+    pub walls: Walls,
+    /// Stage 5: verdicts and cautions.
+    pub judged: Judged,
+    /// The next entry the book needs.
+    pub next: Option<Next>,
+}
+
+/// Computes every finding of a book.
+///
+/// Never fails: what cannot be figured says why, and leaves the rest alone.
+///
+/// # Example
+/// ```
+/// use workbook::{evaluate, Book};
+/// let findings = evaluate(&Book::new("a-key"));
+/// assert!(findings.resolved.gross_head.is_err());
+/// ```
+#[must_use]
+pub fn evaluate(book: &Book) -> Findings {
+    let resolved = resolve(book);
+    let steady = steady(&resolved);
+    let operation = operation(&resolved, &steady);
+    let transient = transient(&resolved, &steady);
+    let walls = walls(&resolved, &steady, &transient);
+    let judged = judge(
+        &resolved,
+        &steady,
+        &operation,
+        &transient,
+        &walls,
+        book.invented,
+    );
+    let next = next(book, &resolved, &walls);
+    Findings {
+        resolved,
+        steady,
+        operation,
+        transient,
+        walls,
+        judged,
+        next,
+    }
+}
+
+impl Findings {
+    /// Everything taken for granted, to be said on screen and print.
+    pub fn assumptions(&self) -> impl Iterator<Item = &Assumption> {
+        self.resolved
+            .assumptions
+            .iter()
+            .chain(&self.steady.assumptions)
+    }
+
+    /// Everything that is wrong, each named once.
+    #[must_use]
+    pub fn troubles(&self) -> Vec<Trouble> {
+        let mut all = self.resolved.troubles.clone();
+        let mut add = |gap: Option<&crate::figure::Gap>| {
+            if let Some(crate::figure::Gap::Wrong(trouble)) = gap
+                && !all.contains(trouble)
+            {
+                all.push(trouble.clone());
+            }
+        };
+        add(self.steady.solved.as_ref().err());
+        add(self.steady.grade.as_ref().err());
+        for (_, loss) in &self.steady.fittings {
+            add(loss.as_ref().err());
+        }
+        for (_, quick) in &self.transient.quick {
+            add(quick.as_ref().err());
+        }
+        for wall in &self.walls.stretches {
+            add(wall.allowable.as_ref().err());
+            add(wall.collapse.as_ref().err());
+        }
+        all
+    }
+}

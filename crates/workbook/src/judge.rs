@@ -1,0 +1,317 @@
+//! Stage 5, last: verdicts and cautions. Alone in judging; computes no figure.
+//!
+//! The careful rule for pressure, stricter than EN 805 (DP within PFA, MDP
+//! within PMA; a water-supply standard, applied to penstocks by analogy): the
+//! highest transient pressure stays within the lasting pressure allowed at
+//! the warmest wall, of the weakest part. No stretch holds until that, the
+//! lowest pressure and collapse are all settled.
+
+use crate::book::{Id, Laying};
+use crate::caution::Caution;
+use crate::figure::{Figure, Gap, Lack};
+use crate::measure::Measure;
+use crate::operation::Operation;
+use crate::resolve::Resolved;
+use crate::steady::Steady;
+use crate::transient::Transient;
+use crate::verdict::{Check, CheckKind, StretchVerdict, Verdict};
+use crate::walls::{StretchWalls, Walls};
+use hydraulics::line::LineCaution;
+use uom::si::f64::Pressure;
+
+/// A flow above this share of the flow of greatest power draws a caution.
+const NEAR_GREATEST: f64 = 0.8;
+
+/// Everything stage 5 finds.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Judged {
+    /// Stretch by stretch, in the order of the line.
+    pub stretches: Vec<StretchVerdict>,
+    /// The worst of the stretches; unsettled while there is none, or while
+    /// the line as a whole cannot be figured.
+    pub verdict: Verdict,
+    /// Cautions, the pressing ones first.
+    pub cautions: Vec<Caution>,
+}
+
+/// Stage 5.
+#[must_use]
+pub fn judge(
+    found: &Resolved,
+    steady: &Steady,
+    operation: &Operation,
+    transient: &Transient,
+    walls: &Walls,
+    invented: bool,
+) -> Judged {
+    let stretches = verdicts(found, transient, walls);
+    let worst = stretches
+        .iter()
+        .map(|s| s.verdict)
+        .max()
+        .unwrap_or(Verdict::Unsettled);
+    // A wrong entry anywhere leaves the book as a whole unsettled at best.
+    let verdict = if found.troubles.is_empty() {
+        worst
+    } else {
+        worst.max(Verdict::Unsettled)
+    };
+    let cautions = cautions(found, steady, operation, transient, walls, invented);
+    Judged {
+        stretches,
+        verdict,
+        cautions,
+    }
+}
+
+/// The verdict of every stretch.
+#[must_use]
+pub fn verdicts(found: &Resolved, transient: &Transient, walls: &Walls) -> Vec<StretchVerdict> {
+    let margin = found
+        .limits
+        .as_ref()
+        .map(|l| l.tight_margin)
+        .map_err(Clone::clone);
+    walls
+        .stretches
+        .iter()
+        .filter_map(|wall| {
+            let checks = vec![
+                standing(wall, &margin),
+                surge(transient),
+                lowest(wall),
+                collapse(wall, found, &margin),
+            ];
+            StretchVerdict::of(wall.stretch, checks)
+        })
+        .collect()
+}
+
+fn standing(wall: &StretchWalls, margin: &Figure<f64>) -> Check {
+    const KIND: CheckKind = CheckKind::StandingPressure;
+    let attempt = || -> Figure<Check> {
+        let standing = wall.standing.clone()?;
+        let margin = margin.clone()?;
+        let found = Measure::from(standing.pressure);
+        let check = match (&wall.bearing, &wall.at_rating) {
+            (Ok(bearing), _) => {
+                let mut check = Check::against(KIND, found, bearing.pressure.into(), margin);
+                check.weakest = Some(bearing.weakest);
+                check
+            }
+            // The temperature is missing, but no temperature would help.
+            (Err(gap), Ok(rated)) if found.value > pascals(rated.pressure) => {
+                let mut check = Check::against(KIND, found, rated.pressure.into(), margin);
+                check.gap = Some(gap.clone());
+                check
+            }
+            (Err(gap), _) => {
+                let mut check = Check::unsettled(KIND, gap.clone());
+                check.found = Some(found);
+                check
+            }
+        };
+        let seen = wall.allowable.as_ref().is_ok_and(|a| a.attested.is_seen());
+        let mut check = Check {
+            at: Some(standing.at),
+            ..check
+        };
+        if let Some(fitting) = wall.unrated.first() {
+            check = check.wanting(Lack::Rating(*fitting));
+        }
+        if wall.jets_unrated {
+            check = check.wanting(Lack::Entry(crate::field::Field::JetRating));
+        }
+        if !seen {
+            check = check.wanting(Lack::Source(wall.stretch));
+        }
+        Ok(check)
+    };
+    attempt().unwrap_or_else(|gap| Check::unsettled(KIND, gap))
+}
+
+fn surge(transient: &Transient) -> Check {
+    let gap = match &transient.surge {
+        Err(gap) => gap.clone(),
+        Ok(_) => Gap::Unsettled(Lack::Surge),
+    };
+    Check::unsettled(CheckKind::SurgePressure, gap)
+}
+
+fn lowest(wall: &StretchWalls) -> Check {
+    const KIND: CheckKind = CheckKind::LowestPressure;
+    let attempt = || -> Figure<Check> {
+        let lowest = wall.lowest.clone()?;
+        let allowed = wall.suction_allowed.clone()?;
+        let below = -lowest.pressure.pa();
+        let mut check = if below <= 0.0 {
+            Check {
+                verdict: Verdict::Holds,
+                gap: None,
+                found: Some(lowest.pressure.into()),
+                ..Check::unsettled(KIND, Gap::Unsettled(Lack::Surge))
+            }
+        } else {
+            // Any suction in running is tight at best.
+            let suction = Measure::new(below, crate::units::Kind::Pressure);
+            Check::against(KIND, suction, allowed.into(), 1.0)
+        };
+        check.at = Some(lowest.at);
+        Ok(check)
+    };
+    attempt().unwrap_or_else(|gap| Check::unsettled(KIND, gap))
+}
+
+fn collapse(wall: &StretchWalls, found: &Resolved, margin: &Figure<f64>) -> Check {
+    const KIND: CheckKind = CheckKind::Collapse;
+    let attempt = || -> Figure<Check> {
+        let figures = wall.collapse.clone()?;
+        let check = Check::against(
+            KIND,
+            figures.vacuum.into(),
+            figures.allowed.into(),
+            margin.clone()?,
+        );
+        let seen = found
+            .stretches
+            .iter()
+            .find(|s| s.id == wall.stretch)
+            .and_then(|s| s.pipe.as_ref().ok())
+            .is_some_and(|p| p.modulus_short.attested.is_seen() && p.dimensions.attested.is_seen());
+        Ok(if seen {
+            check
+        } else {
+            check.wanting(Lack::Source(wall.stretch))
+        })
+    };
+    attempt().unwrap_or_else(|gap| Check::unsettled(KIND, gap))
+}
+
+fn pascals(pressure: Pressure) -> f64 {
+    pressure.get::<uom::si::pressure::pascal>()
+}
+
+fn cautions(
+    found: &Resolved,
+    steady: &Steady,
+    operation: &Operation,
+    transient: &Transient,
+    walls: &Walls,
+    invented: bool,
+) -> Vec<Caution> {
+    let mut all = Vec::new();
+    if invented {
+        all.push(Caution::Invented);
+    }
+    if transient.surge.is_err() {
+        all.push(Caution::SurgeUnsolved);
+    }
+    all.extend(suction(steady));
+    all.push(Caution::CollapseAndVents {
+        weak: weak_in_vacuum(walls),
+    });
+    all.push(Caution::VelocityAndSilt {
+        fast: fastest(found, steady),
+    });
+    if let (Ok(share), Ok(limits)) = (&steady.loss_share, &found.limits)
+        && *share > limits.loss_cap
+    {
+        all.push(Caution::LossOverCap {
+            share: *share,
+            cap: limits.loss_cap,
+        });
+    }
+    if operation
+        .share_of_greatest
+        .as_ref()
+        .is_ok_and(|s| *s > NEAR_GREATEST)
+    {
+        all.push(Caution::NearGreatestPower);
+    }
+    if regime_uncertain(steady) {
+        all.push(Caution::RegimeUncertain);
+    }
+    let unseen = unseen(found, walls);
+    if !unseen.is_empty() {
+        all.push(Caution::SourceNotSeen { stretches: unseen });
+    }
+    let bare = found
+        .stretches
+        .iter()
+        .filter(|s| s.laying != Laying::Buried)
+        .map(|s| s.id)
+        .collect();
+    all.push(Caution::TemperatureAndSun { bare });
+    let unrated = walls
+        .stretches
+        .iter()
+        .flat_map(|w| w.unrated.iter().copied())
+        .collect();
+    all.push(Caution::WeakJoints { unrated });
+    all.extend([
+        Caution::ThrustAtBends,
+        Caution::Freezing,
+        Caution::DepressuriseBeforeWork,
+        Caution::LocalCodesAndReview,
+    ]);
+    all.sort_by_key(|c| !c.is_pressing());
+    all
+}
+
+fn suction(steady: &Steady) -> Option<Caution> {
+    let lengths = steady.suction.as_ref().ok()?;
+    let boils = steady.vapour.as_ref().is_ok_and(|v| v.margin.m() <= 0.0);
+    (!lengths.is_empty()).then(|| Caution::SubAtmospheric {
+        lengths: lengths.iter().map(|s| (s.from, s.to)).collect(),
+        boils,
+    })
+}
+
+fn weak_in_vacuum(walls: &Walls) -> Vec<Id> {
+    walls
+        .stretches
+        .iter()
+        .filter(|w| {
+            w.collapse
+                .as_ref()
+                .is_ok_and(|c| c.allowed < c.vacuum.get())
+        })
+        .map(|w| w.stretch)
+        .collect()
+}
+
+fn fastest(found: &Resolved, steady: &Steady) -> Option<(Id, uom::si::f64::Velocity)> {
+    let limit = found.limits.as_ref().ok()?.velocity_high;
+    steady
+        .stretches
+        .iter()
+        .filter_map(|(id, run)| run.as_ref().ok().map(|r| (*id, r.velocity)))
+        .filter(|(_, v)| *v > limit)
+        .reduce(|a, b| if b.1 > a.1 { b } else { a })
+}
+
+fn regime_uncertain(steady: &Steady) -> bool {
+    steady.grade.as_ref().is_ok_and(|g| {
+        g.cautions
+            .iter()
+            .any(|c| matches!(c, LineCaution::UncertainRegime { .. }))
+    })
+}
+
+/// Stretches whose pipe rests on a value whose source was not seen.
+fn unseen(found: &Resolved, walls: &Walls) -> Vec<Id> {
+    found
+        .stretches
+        .iter()
+        .zip(&walls.stretches)
+        .filter(|(stretch, wall)| {
+            let by_rating = wall.at_rating.as_ref().is_ok_and(|a| !a.attested.is_seen())
+                || wall.allowable.as_ref().is_ok_and(|a| !a.attested.is_seen());
+            let by_pipe = stretch.pipe.as_ref().is_ok_and(|p| {
+                !(p.dimensions.attested.is_seen() && p.modulus_short.attested.is_seen())
+            });
+            by_rating || by_pipe
+        })
+        .map(|(stretch, _)| stretch.id)
+        .collect()
+}

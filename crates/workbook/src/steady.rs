@@ -1,0 +1,442 @@
+//! Stage 2: line and jets in balance.
+//!
+//! The grade line at the flow that is to pass, with nozzle bores solved for it
+//! or given. Losses are figured from the normal forebay level with water as
+//! cold as it gets. What the same line does at other flows is
+//! [`crate::operation`]'s.
+
+use crate::book::{BoreSizing, FittingKind, Id, RoughnessAge};
+use crate::field::Field;
+use crate::figure::{CloneGap, Figure, Gap, Lack, Trouble};
+use crate::resolve::parts::{PlacedFitting, Shape, Stretch};
+use crate::resolve::{Assumption, JetSpec, Resolved};
+use hydraulics::constants::standard_gravity;
+use hydraulics::fittings::{
+    self, Entrance, FittingError, LossCoefficient, MitreWall, OpenValve, Tee, ValveOpening,
+};
+use hydraulics::friction::{
+    DarcyFactor, FrictionLaw, RelativeRoughness, ReynoldsNumber, darcy_factor, reynolds_number,
+};
+use hydraulics::line::{
+    Grade, Line, LineSpec, LocalLoss, NozzleSet, NozzleTemplate, Point, Run, RunLoss, Solved,
+    SuctionStretch, VapourMargin,
+};
+use hydraulics::nozzle::Nozzle;
+use hydraulics::quantity::{GaugePressure, Head, PipeLength};
+use hydraulics::water::Water;
+use pipes::Pipe;
+use uom::si::angle::degree;
+use uom::si::f64::{Angle, Length, Velocity, VolumeRate};
+use uom::si::velocity::meter_per_second;
+
+/// The lowest pressure of the line and its place.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Lowest {
+    /// Gauge pressure on the axis.
+    pub pressure: GaugePressure,
+    /// Where.
+    pub at: PipeLength,
+}
+
+/// The loss of one fitting, as figured.
+#[derive(Debug, Clone, PartialEq)]
+pub struct FittingLoss {
+    /// The fitting.
+    pub id: Id,
+    /// Loss coefficient of all of them together, on the velocity in the pipe
+    /// there.
+    pub k: f64,
+    /// Where the coefficient comes from.
+    pub source: &'static str,
+    /// Whether that was seen.
+    pub seen: bool,
+}
+
+/// Everything stage 2 finds.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Steady {
+    /// The flow that passes with all jets open.
+    pub flow: Figure<VolumeRate>,
+    /// The grade line at that flow.
+    pub grade: Figure<Grade>,
+    /// Line and jets in balance, all jets open.
+    pub solved: Figure<Solved>,
+    /// Head lost from forebay to nozzle, branches included.
+    pub loss: Figure<Head>,
+    /// The same as a share of gross head.
+    pub loss_share: Figure<f64>,
+    /// What each stretch loses.
+    pub stretches: Vec<(Id, Figure<RunLoss>)>,
+    /// What each fitting loses.
+    pub fittings: Vec<(Id, Figure<FittingLoss>)>,
+    /// The lowest pressure.
+    pub lowest: Figure<Lowest>,
+    /// Lengths below atmospheric pressure.
+    pub suction: Figure<Vec<SuctionStretch>>,
+    /// Margin above boiling at the lowest pressure, with water as warm as it
+    /// gets.
+    pub vapour: Figure<VapourMargin>,
+    /// What was taken for granted here.
+    pub assumptions: Vec<Assumption>,
+    /// The line itself.
+    pub(crate) line: Figure<Line>,
+    /// Its nozzles, but for their bore.
+    pub(crate) template: Figure<NozzleTemplate>,
+}
+
+/// What the line is made of, before its flow is known.
+struct Parts<'a> {
+    pipes: Vec<(&'a Stretch, &'a Pipe)>,
+    water: Water,
+}
+
+/// Stage 2.
+#[must_use]
+pub fn steady(found: &Resolved) -> Steady {
+    let mut assumptions = Vec::new();
+    let parts = parts(found);
+    let jets = found.jets.clone();
+    // The flow the fittings' losses are first figured at: bends depend on the
+    // pipe's friction factor, and that weakly on the flow.
+    let trial = found.design_flow.clone();
+    let fittings: Vec<(Id, Figure<FittingLoss>)> = found
+        .fittings
+        .iter()
+        .map(|f| {
+            let loss = parts
+                .clone_gap()
+                .and_then(|p| fitting_loss(f, p, found, trial.as_ref().ok()));
+            (f.id, loss)
+        })
+        .collect();
+    let line = parts.clone_gap().and_then(|p| line(found, p, &fittings));
+    let template = template(found, &parts, &mut assumptions);
+
+    let solved = solve(found, &line, &template, &jets);
+    let flow = match &solved {
+        Ok(s) => Ok(s.grade.flow),
+        Err(gap) => match jets.as_ref().map(|j| j.sizing) {
+            Ok(BoreSizing::Chosen) => Err(gap.clone()),
+            _ => found.design_flow.clone(),
+        },
+    };
+    let grade = match &solved {
+        Ok(s) => Ok(s.grade.clone()),
+        // Where the jets cannot be solved, the line alone still has its grade
+        // line at the flow that is to pass.
+        Err(_) => line.clone().and_then(|l| {
+            l.grade(flow.clone()?)
+                .map_err(|why| Gap::Wrong(Trouble::Line(why)))
+        }),
+    };
+    let loss = loss(&solved, &grade);
+    let loss_share = loss
+        .clone()
+        .and_then(|loss| Ok(loss.m() / found.gross_head.clone()?.m()));
+    let stretches = found
+        .stretches
+        .iter()
+        .enumerate()
+        .map(|(i, s)| {
+            let run = grade.clone().and_then(|g| {
+                g.runs
+                    .get(i)
+                    .copied()
+                    .ok_or(Gap::Unsettled(Lack::Pipe(s.id)))
+            });
+            (s.id, run)
+        })
+        .collect();
+    let lowest = grade.clone_gap().and_then(lowest);
+    let suction = grade.clone().map(|g| g.below_atmosphere());
+    let vapour = vapour(found, &grade);
+    Steady {
+        flow,
+        grade,
+        solved,
+        loss,
+        loss_share,
+        stretches,
+        fittings,
+        lowest,
+        suction,
+        vapour,
+        assumptions,
+        line,
+        template,
+    }
+}
+
+fn parts(found: &Resolved) -> Figure<Parts<'_>> {
+    let mut pipes = Vec::with_capacity(found.stretches.len());
+    for stretch in &found.stretches {
+        let pipe = stretch.pipe.clone_gap()?;
+        pipes.push((stretch, &**pipe));
+    }
+    Ok(Parts {
+        pipes,
+        water: found.cold_water.clone()?,
+    })
+}
+
+fn line(
+    found: &Resolved,
+    parts: &Parts<'_>,
+    fittings: &[(Id, Figure<FittingLoss>)],
+) -> Figure<Line> {
+    let stations = found.profile.whole()?;
+    let age = found.limits.clone()?.roughness;
+    let mut runs = Vec::with_capacity(parts.pipes.len());
+    for (stretch, pipe) in &parts.pipes {
+        runs.push(Run {
+            to: stretch.span.clone()?.to,
+            bore: pipe.bore(),
+            friction: FrictionLaw::ColebrookWhite {
+                roughness: roughness(pipe, age),
+            },
+        });
+    }
+    let mut losses = Vec::with_capacity(fittings.len());
+    for (placed, (_, loss)) in found.fittings.iter().zip(fittings) {
+        let loss = loss.clone()?;
+        losses.push(LocalLoss {
+            at: placed.at.clone()?,
+            k: LossCoefficient::new(loss.k).map_err(|why| {
+                Gap::Wrong(Trouble::Fitting {
+                    fitting: placed.id,
+                    why,
+                })
+            })?,
+            bore: pipe_at(placed, parts)?.bore(),
+        });
+    }
+    Line::new(LineSpec {
+        forebay: found.forebay.normal.clone()?,
+        points: stations
+            .iter()
+            .map(|s| Point {
+                chainage: s.chainage,
+                level: s.level,
+            })
+            .collect(),
+        runs,
+        losses,
+        water: parts.water,
+        gravity: standard_gravity(),
+    })
+    .map_err(|why| Gap::Wrong(Trouble::Line(why)))
+}
+
+/// The roughness losses are figured with.
+#[must_use]
+pub fn roughness(pipe: &Pipe, age: RoughnessAge) -> Length {
+    match age {
+        RoughnessAge::Aged => pipe.roughness_aged.value,
+        RoughnessAge::New => pipe.roughness_new.value,
+    }
+}
+
+fn pipe_at<'a>(placed: &PlacedFitting, parts: &Parts<'a>) -> Figure<&'a Pipe> {
+    placed.at.clone()?;
+    parts
+        .pipes
+        .iter()
+        .find(|(s, _)| Some(s.id) == placed.stretch)
+        .map(|(_, pipe)| *pipe)
+        .ok_or(Gap::Wrong(Trouble::FittingStation { fitting: placed.id }))
+}
+
+fn fitting_loss(
+    placed: &PlacedFitting,
+    parts: &Parts<'_>,
+    found: &Resolved,
+    flow: Option<&VolumeRate>,
+) -> Figure<FittingLoss> {
+    let pipe = pipe_at(placed, parts)?;
+    let count = placed.count.clone()?;
+    let wrong = |why| {
+        Gap::Wrong(Trouble::Fitting {
+            fitting: placed.id,
+            why,
+        })
+    };
+    let angle = Angle::new::<degree>;
+    let loss = match (placed.kind, placed.shape.clone()?) {
+        (_, Shape::Own { k }) => {
+            let k = LossCoefficient::new(k).map_err(wrong)?.get();
+            return Ok(FittingLoss {
+                id: placed.id,
+                k: k * f64::from(count),
+                source: "entered by the user",
+                seen: true,
+            });
+        }
+        (_, Shape::Bend { angle_deg, radius }) => {
+            let age = found.limits.clone()?.roughness;
+            let factor = bend_factor(pipe, age, flow, &parts.water);
+            match factor {
+                Some(f) => fittings::smooth_bend(angle(angle_deg), radius, f),
+                None => Err(FittingError::Bore(pipe.bore())),
+            }
+        }
+        (_, Shape::Mitre { angle_deg }) => fittings::mitre_bend(angle(angle_deg), MitreWall::Rough),
+        (kind, Shape::Valve { opening }) => valve_loss(kind, opening),
+        (kind, Shape::Plain) => Ok(plain_loss(kind)),
+    }
+    .map_err(wrong)?;
+    Ok(FittingLoss {
+        id: placed.id,
+        k: loss.k.get() * f64::from(count),
+        source: loss.source,
+        seen: loss.attested == fittings::Attested::Seen,
+    })
+}
+
+/// Friction factor for a bend's loss: at the design flow, or, before there is
+/// one, at 2 m/s.
+fn bend_factor(
+    pipe: &Pipe,
+    age: RoughnessAge,
+    flow: Option<&VolumeRate>,
+    water: &Water,
+) -> Option<DarcyFactor> {
+    let bore = pipe.bore();
+    let area = bore * bore * (std::f64::consts::PI / 4.0);
+    let velocity = flow.map_or_else(|| Velocity::new::<meter_per_second>(2.0), |q| *q / area);
+    let reynolds: ReynoldsNumber =
+        reynolds_number(velocity, bore, water.kinematic_viscosity()).ok()?;
+    Some(darcy_factor(
+        reynolds,
+        RelativeRoughness::of(roughness(pipe, age), bore).ok()?,
+    ))
+}
+
+fn valve_loss(kind: FittingKind, opening: f64) -> Result<fittings::Loss, FittingError> {
+    let fully_open = opening >= 1.0;
+    // A quarter turn from open to shut.
+    let turned = Angle::new::<degree>((1.0 - opening) * 90.0);
+    match kind {
+        FittingKind::GateValve if fully_open => Ok(fittings::open_valve(OpenValve::GateResilient)),
+        FittingKind::BallValve if fully_open => Ok(fittings::open_valve(OpenValve::Ball)),
+        FittingKind::ButterflyValve if fully_open => {
+            Ok(fittings::open_valve(OpenValve::ButterflyHeavy))
+        }
+        FittingKind::BallValve => fittings::valve(ValveOpening::Ball { turned }),
+        FittingKind::ButterflyValve => fittings::valve(ValveOpening::Butterfly { turned }),
+        _ => fittings::valve(ValveOpening::Gate {
+            open_share: opening,
+        }),
+    }
+}
+
+fn plain_loss(kind: FittingKind) -> fittings::Loss {
+    match kind {
+        FittingKind::EntranceProjecting => fittings::entrance(Entrance::Projecting),
+        FittingKind::EntranceRounded => fittings::entrance(Entrance::Rounded),
+        FittingKind::EntranceBellmouth => fittings::entrance(Entrance::Bellmouth),
+        FittingKind::TeeRun => fittings::tee(Tee::Line),
+        FittingKind::TeeBranch => fittings::tee(Tee::BranchCautious),
+        _ => fittings::entrance(Entrance::SharpFlush),
+    }
+}
+
+fn template(
+    found: &Resolved,
+    parts: &Figure<Parts<'_>>,
+    assumptions: &mut Vec<Assumption>,
+) -> Figure<NozzleTemplate> {
+    let jets = found.jets.clone()?;
+    let axis = found.jet_axis.clone()?;
+    let branch_bore = match jets.branch_bore {
+        Some(bore) => bore,
+        None => {
+            let last = parts.clone_gap()?.pipes.last().map(|(_, pipe)| pipe.bore());
+            let bore = last.ok_or(Gap::Unsettled(Lack::Pipe(1)))?;
+            assumptions.push(Assumption::BranchBoreOfLastStretch(bore));
+            bore
+        }
+    };
+    Ok(NozzleTemplate {
+        count: jets.count as usize,
+        velocity_coefficient: jets.velocity_coefficient,
+        contraction_coefficient: jets.contraction,
+        axis,
+        branch_k: jets.branch_k,
+        branch_bore,
+    })
+}
+
+fn solve(
+    found: &Resolved,
+    line: &Figure<Line>,
+    template: &Figure<NozzleTemplate>,
+    jets: &Figure<JetSpec>,
+) -> Figure<Solved> {
+    found.gross_head.clone()?;
+    let jets = jets.clone()?;
+    match jets.sizing {
+        BoreSizing::Solved => {
+            let flow = found.design_flow.clone()?;
+            line.clone_gap()?
+                .bore_for(flow, template.clone_gap()?)
+                .map_err(|why| Gap::Wrong(Trouble::Line(why)))
+        }
+        BoreSizing::Chosen => {
+            let bore = jets.bore.clone()?;
+            let set = set_of(template.clone_gap()?, bore, jets.count)?;
+            line.clone_gap()?
+                .flow_for(&set)
+                .map_err(|why| Gap::Wrong(Trouble::Line(why)))
+        }
+    }
+}
+
+pub(crate) fn set_of(template: &NozzleTemplate, bore: Length, open: u32) -> Figure<NozzleSet> {
+    let nozzle = Nozzle::new(
+        bore,
+        template.velocity_coefficient,
+        template.contraction_coefficient,
+    )
+    .map_err(|why| Gap::Wrong(Trouble::Nozzle(why)))?;
+    Ok(NozzleSet {
+        nozzles: vec![nozzle; open as usize],
+        axis: template.axis,
+        branch_k: template.branch_k,
+        branch_bore: template.branch_bore,
+    })
+}
+
+pub(crate) fn line_loss(grade: &Grade) -> Head {
+    grade.friction_loss + grade.local_loss
+}
+
+fn loss(solved: &Figure<Solved>, grade: &Figure<Grade>) -> Figure<Head> {
+    match solved {
+        Ok(s) => Ok(line_loss(&s.grade) + s.branch_loss),
+        Err(_) => Ok(line_loss(grade.clone_gap()?)),
+    }
+}
+
+fn lowest(grade: &Grade) -> Figure<Lowest> {
+    let node = grade
+        .nodes
+        .get(grade.lowest)
+        .ok_or(Gap::needs(Field::StationLevel(1)))?;
+    Ok(Lowest {
+        pressure: node.pressure,
+        at: node.chainage,
+    })
+}
+
+fn vapour(found: &Resolved, grade: &Figure<Grade>) -> Figure<VapourMargin> {
+    let atmosphere = found.atmosphere.clone()?;
+    // Water as warm as it gets boils first; unknown, the cold water's own.
+    let water = found
+        .warm_water
+        .clone()
+        .or_else(|_| found.cold_water.clone())?;
+    grade
+        .clone_gap()?
+        .vapour_margin(atmosphere, &water, standard_gravity())
+        .ok_or(Gap::needs(Field::StationLevel(1)))
+}
