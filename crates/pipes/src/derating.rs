@@ -82,3 +82,82 @@ impl Derating {
         })
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+    use uom::si::thermodynamic_temperature::degree_celsius;
+
+    use super::*;
+    use crate::catalogue;
+
+    fn celsius(value: f64) -> ThermodynamicTemperature {
+        ThermodynamicTemperature::new::<degree_celsius>(value)
+    }
+
+    fn rule() -> Derating {
+        let point = |t, factor, attested| DeratingPoint {
+            temperature: celsius(t),
+            factor,
+            attested,
+        };
+        Derating {
+            points: vec![
+                point(20.0, 1.0, Attested::Seen),
+                point(30.0, 0.8, Attested::Seen),
+                point(40.0, 0.4, Attested::FromMemory),
+            ],
+            source: "invented".to_owned(),
+        }
+    }
+
+    #[test]
+    fn lines_between_points_and_marks_with_them() {
+        let rule = rule();
+        let at = |t: f64| rule.factor(celsius(t)).unwrap();
+        for (t, factor, attested) in [
+            (-10.0, 1.0, Attested::Seen),
+            (20.0, 1.0, Attested::Seen),
+            (25.0, 0.9, Attested::Seen),
+            (30.0, 0.8, Attested::Seen),
+            (35.0, 0.6, Attested::FromMemory),
+            (40.0, 0.4, Attested::FromMemory),
+        ] {
+            assert!((at(t).0 - factor).abs() < 1e-12, "{t}");
+            assert_eq!(at(t).1, attested, "{t}");
+        }
+    }
+
+    #[test]
+    fn too_hot_no_temperature_and_no_rule_are_errors() {
+        let rule = rule();
+        let hot = rule.factor(celsius(40.01));
+        assert!(matches!(hot, Err(RatingError::TooHot { .. })));
+        for k in [f64::NAN, f64::INFINITY, 0.0, -5.0] {
+            let given = ThermodynamicTemperature::new::<kelvin>(k);
+            assert!(
+                matches!(rule.factor(given), Err(RatingError::Temperature { .. })),
+                "{k}"
+            );
+        }
+        let empty = Derating {
+            points: Vec::new(),
+            source: String::new(),
+        };
+        assert_eq!(empty.factor(celsius(20.0)), Err(RatingError::NoDerating));
+    }
+
+    proptest! {
+        #[test]
+        fn never_rises_with_temperature(a in -20.0..70.0_f64, b in -20.0..70.0_f64, which in 0..10_000_usize) {
+            let pipes = &catalogue().pipes;
+            let derating = &pipes[which % pipes.len()].derating;
+            let (low, high) = (celsius(a.min(b)), celsius(a.max(b)));
+            match (derating.factor(low), derating.factor(high)) {
+                (Ok((cold, _)), Ok((warm, _))) => prop_assert!(warm <= cold && warm > 0.0 && cold <= 1.0),
+                (Err(_), Ok(_)) => prop_assert!(false, "allowed warm but not cold"),
+                _ => {}
+            }
+        }
+    }
+}

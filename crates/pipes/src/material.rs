@@ -97,3 +97,22 @@ pub struct Properties {
     /// Derating with temperature; none where no rule is kept (GRP).
     pub derating: Option<Derating>,
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn slugs_go_both_ways_and_all_but_other_have_properties() {
+        for material in Material::ALL {
+            assert_eq!(Material::from_slug(material.slug()), Some(material));
+            assert_eq!(material.properties().is_some(), material != Material::Other);
+        }
+        assert_eq!(Material::from_slug("wood"), None);
+        assert!(
+            Material::Grp
+                .properties()
+                .is_some_and(|known| known.derating.is_none())
+        );
+    }
+}

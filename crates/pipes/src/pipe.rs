@@ -244,3 +244,141 @@ impl Pipe {
         }
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use uom::si::length::millimeter;
+    use uom::si::pressure::bar;
+    use uom::si::thermodynamic_temperature::degree_celsius;
+
+    use super::*;
+    use crate::catalogue;
+
+    fn celsius(value: f64) -> ThermodynamicTemperature {
+        ThermodynamicTemperature::new::<degree_celsius>(value)
+    }
+
+    #[test]
+    fn every_pipe_of_the_catalogue_is_possible() {
+        let pipes = &catalogue().pipes;
+        assert!(pipes.len() > 800, "{}", pipes.len());
+        for pipe in pipes {
+            let id = &pipe.id;
+            assert!(pipe.wall_min <= pipe.wall_mean(), "{id}");
+            assert!(pipe.bore() > Length::new::<meter>(0.0), "{id}");
+            assert!(pipe.bore() < pipe.outside_diameter, "{id}");
+            assert!(
+                pipe.wall_against_collapse() > Length::new::<meter>(0.0),
+                "{id}"
+            );
+            assert!(
+                pipe.mass_per_length().get::<kilogram_per_meter>() > 0.0,
+                "{id}"
+            );
+            assert!(pipe.modulus_long.value <= pipe.modulus_short.value, "{id}");
+            assert!(
+                pipe.roughness_new.value <= pipe.roughness_aged.value,
+                "{id}"
+            );
+            assert!(!pipe.supply.is_empty(), "{id} has no supply length");
+            for text in [
+                &pipe.designation,
+                &pipe.short,
+                &pipe.standard,
+                &pipe.dimensions.source,
+            ] {
+                assert!(
+                    !text.is_empty() && !text.contains(['{', '}']),
+                    "{id}: {text}"
+                );
+            }
+            let allowed = pipe.allowable(celsius(20.0)).unwrap();
+            let p = allowed.pressure.get::<bar>();
+            assert!(p > 1.0 && p < 500.0, "{id}: {p} bar");
+            assert!(!allowed.source.is_empty());
+        }
+    }
+
+    #[test]
+    fn ids_are_unique() {
+        let mut ids: Vec<&str> = catalogue()
+            .pipes
+            .iter()
+            .map(|pipe| pipe.id.as_str())
+            .collect();
+        ids.sort_unstable();
+        let count = ids.len();
+        ids.dedup();
+        assert_eq!(ids.len(), count);
+        assert!(catalogue().find("no/such").is_none());
+    }
+
+    #[test]
+    fn the_mean_wall_makes_the_bore() {
+        // Least wall 11.9 mm, greatest 13.2 mm: 200 - 11.9 - 13.2.
+        let pipe = catalogue().find("pe100-iso4427/200/sdr17").unwrap();
+        assert_eq!(pipe.designation, "PE 100 200 x 11.9 SDR 17 PN 10");
+        assert_eq!(pipe.short, "PE100 200 SDR 17");
+        assert!((pipe.bore().get::<millimeter>() - 174.9).abs() < 1e-9);
+        // Nominal wall 6.2 mm and lining 4 mm: 326 - 2 (6.2 + 4).
+        let iron = catalogue().find("ductile-iron-iso2531/300/c40").unwrap();
+        assert!((iron.bore().get::<millimeter>() - 305.6).abs() < 1e-9);
+        assert!((iron.wall_min.get::<millimeter>() - 4.6).abs() < 1e-9);
+    }
+
+    #[test]
+    fn the_mass_is_that_of_a_ring() {
+        // 219.1 x 4.5 mm at 7850 kg/m3: 0.0246615 x 4.5 x (219.1 - 4.5) kg/m, the usual
+        // factor of steel tube tables.
+        let pipe = catalogue().find("steel-en10220-welded/219.1/4.5").unwrap();
+        let mass = pipe.mass_per_length().get::<kilogram_per_meter>();
+        assert!((mass - 0.024_661_5 * 4.5 * 214.6).abs() < 1e-3, "{mass}");
+        // The lining weighs too.
+        let mut iron = catalogue()
+            .find("ductile-iron-iso2531/300/c40")
+            .unwrap()
+            .clone();
+        let lined = iron.mass_per_length();
+        iron.lining = Length::new::<meter>(0.0);
+        assert!(lined > iron.mass_per_length());
+    }
+
+    #[test]
+    fn memory_taints_what_is_allowed() {
+        let at = celsius(20.0);
+        let marked = |id: &str| {
+            catalogue()
+                .find(id)
+                .unwrap()
+                .allowable(at)
+                .unwrap()
+                .attested
+        };
+        assert_eq!(marked("pe100-iso4427/200/sdr17"), Attested::Seen);
+        assert_eq!(marked("pe100-iso4427/200/sdr6"), Attested::FromMemory);
+        assert_eq!(marked("pvcu-iso1452/110/pn10"), Attested::Seen);
+        assert_eq!(marked("pvcu-iso1452/110/pn8"), Attested::FromMemory);
+        let mut pipe = catalogue().find("pe100-iso4427/200/sdr17").unwrap().clone();
+        pipe.dimensions.attested = Attested::FromMemory;
+        assert_eq!(pipe.allowable(at).unwrap().attested, Attested::FromMemory);
+        pipe.dimensions.attested = Attested::Seen;
+        pipe.derating.points[0].attested = Attested::FromMemory;
+        assert_eq!(pipe.allowable(at).unwrap().attested, Attested::FromMemory);
+    }
+
+    #[test]
+    fn load_cases_of_steel_but_not_of_a_class() {
+        let at = celsius(20.0);
+        let steel = catalogue().find("steel-en10220-welded/219.1/4.5").unwrap();
+        let normal = steel.allowable_for(LoadCase::Normal, at).unwrap();
+        let surge = steel.allowable_for(LoadCase::Transient, at).unwrap();
+        assert!((surge.pressure / normal.pressure).get::<uom::si::ratio::ratio>() > 1.19);
+        assert_eq!(normal.pressure, steel.allowable(at).unwrap().pressure);
+        let plastic = catalogue().find("pe100-iso4427/200/sdr17").unwrap();
+        let lasting = plastic.allowable(at).unwrap();
+        assert_eq!(
+            plastic.allowable_for(LoadCase::Transient, at).unwrap(),
+            lasting
+        );
+    }
+}

@@ -282,3 +282,87 @@ fn read_supply(file: File) -> Result<Vec<SupplyLine>, DataError> {
     }
     Ok(lines)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn trouble(change: impl FnOnce(&mut Files)) -> DataError {
+        let mut files = FILES;
+        change(&mut files);
+        Shared::read(&files).unwrap_err()
+    }
+
+    #[test]
+    fn malformed_lines_are_named() {
+        let head = "rule,temperature,unit,factor,attested\n";
+        let twice = format!("{head}steel,20,degC,0.5,seen\nsteel,30,degC,0.6,seen\n");
+        let error = trouble(|files| files.derating.text = twice.leak());
+        assert_eq!(
+            (error.line, error.file.as_str()),
+            (3, "derating.csv"),
+            "{error}"
+        );
+        let unknown = format!("{head}tin,20,degC,1,seen\n");
+        assert!(
+            trouble(|files| files.derating.text = unknown.leak())
+                .trouble
+                .contains("tin")
+        );
+        let unit = format!("{head}steel,20,K,1,seen\n");
+        assert!(
+            trouble(|files| files.derating.text = unit.leak())
+                .trouble
+                .contains('K')
+        );
+
+        let gone = FILES
+            .materials
+            .text
+            .replacen("steel,poisson", "steel,posson", 1);
+        assert!(
+            trouble(|files| files.materials.text = gone.leak())
+                .trouble
+                .contains("poisson")
+        );
+        let unit = FILES.materials.text.replacen(
+            "pe100,modulus_short,1000,MPa",
+            "pe100,modulus_short,1,GPa",
+            1,
+        );
+        assert!(
+            trouble(|files| files.materials.text = unit.leak())
+                .trouble
+                .contains("MPa")
+        );
+        let state = FILES.roughness.text.replacen("pe100,new", "pe100,old", 1);
+        assert!(
+            trouble(|files| files.roughness.text = state.leak())
+                .trouble
+                .contains("old")
+        );
+        let kind = FILES.supply.text.replacen(",coil,", ",drum,", 1);
+        assert!(
+            trouble(|files| files.supply.text = kind.leak())
+                .trouble
+                .contains("drum")
+        );
+    }
+
+    #[test]
+    fn every_rule_has_points_and_every_supply_line_serves_a_pipe() {
+        let shared = Shared::read(&FILES).unwrap();
+        for (name, derating) in &shared.rules {
+            assert!(!derating.points.is_empty(), "{name}");
+        }
+        let pipes = &crate::catalogue().pipes;
+        for line in &shared.supply {
+            let serves = |pipe: &&crate::Pipe| {
+                pipe.series == line.series
+                    && line.from <= pipe.outside_diameter
+                    && pipe.outside_diameter <= line.to
+            };
+            assert!(pipes.iter().find(serves).is_some(), "{line:?}");
+        }
+    }
+}

@@ -154,3 +154,79 @@ fn read_line(row: &Row<'_>) -> Result<Line, DataError> {
         value,
     })
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::{Attested, catalogue};
+
+    #[test]
+    fn every_grade_rates_with_every_joint() {
+        let grades = catalogue().steel_grades();
+        assert_eq!(grades, ["P235TR1", "ASTM A53 Grade B", "S235JR"]);
+        for grade in grades {
+            for joint in [SteelJoint::Welded, SteelJoint::Seamless, SteelJoint::Plate] {
+                assert_eq!(SteelJoint::from_slug(joint.slug()), Some(joint));
+                let rating = catalogue().steel_rating(grade, joint).unwrap();
+                assert!(rating.yield_strength.value < rating.tensile_strength.value);
+                assert_eq!(
+                    rating.attested(statics::steel::LoadCase::Normal),
+                    Attested::Seen
+                );
+                assert_eq!(
+                    rating.attested(statics::steel::LoadCase::Test),
+                    Attested::FromMemory
+                );
+            }
+        }
+        assert!(
+            catalogue()
+                .steel_rating("unheard of", SteelJoint::Welded)
+                .is_none()
+        );
+    }
+
+    #[test]
+    fn threads_deepen_with_the_diameter() {
+        let depth = |od: f64| {
+            catalogue()
+                .steel()
+                .thread_depth(Length::new::<millimeter>(od))
+        };
+        let millimetres = |od: f64| depth(od).unwrap().value.get::<millimeter>();
+        assert!((millimetres(21.3) - 1.45).abs() < 1e-9);
+        assert!((millimetres(60.3) - 1.77).abs() < 1e-9);
+        assert!((millimetres(114.3) - 2.54).abs() < 1e-9);
+        assert!(depth(219.1).is_none());
+    }
+
+    #[test]
+    fn a_malformed_line_is_named() {
+        for (text, trouble) in [
+            (
+                "kind,name,value,unit,attested,source\nyield,X,235,kPa,seen,s\n",
+                "not in MPa",
+            ),
+            (
+                "kind,name,value,unit,attested,source\ncolour,X,1,1,seen,s\n",
+                "no kind",
+            ),
+            (
+                "kind,name,value,unit,attested,source\nyield,X,235,MPa,maybe,s\n",
+                "attested",
+            ),
+            (
+                "kind,name,value,unit,attested,source\nthread,X,1,mm,seen,s\n",
+                "outside diameter",
+            ),
+        ] {
+            let error = SteelData::read(File {
+                name: "s.csv",
+                text,
+            })
+            .unwrap_err();
+            assert_eq!(error.line, 2);
+            assert!(error.trouble.contains(trouble), "{error}");
+        }
+    }
+}

@@ -111,3 +111,99 @@ fn ovality_factor(q: f64) -> f64 {
     let base = (1.0 - q) / ((1.0 + q) * (1.0 + q));
     base * base * base
 }
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::*;
+
+    fn ring(d: f64, t: f64, e: f64, nu: f64, ovality: f64) -> FreeRing {
+        FreeRing {
+            outside_diameter: Length::new::<meter>(d),
+            wall: Length::new::<meter>(t),
+            modulus: Pressure::new::<pascal>(e),
+            poisson: nu,
+            ovality,
+        }
+    }
+
+    fn critical(ring: &FreeRing) -> f64 {
+        free_ring(ring).unwrap().critical.get::<pascal>()
+    }
+
+    #[test]
+    fn the_diameter_is_that_of_the_middle_of_the_wall() {
+        // D 0.504 m outside, t 4 mm: the mean diameter is 0.5 m.
+        let found = free_ring(&ring(0.504, 0.004, 206e9, 0.3, 0.0)).unwrap();
+        let by_hand = 2.0 * 206e9 / 0.91 * (0.004_f64 / 0.5) * (0.004 / 0.5) * (0.004 / 0.5);
+        assert!((found.critical.get::<pascal>() / by_hand - 1.0).abs() < 1e-12);
+        assert!(found.is_thin());
+        assert_eq!(found.critical, found.round);
+        assert!(
+            !free_ring(&ring(0.1, 0.015, 1e9, 0.45, 0.0))
+                .unwrap()
+                .is_thin()
+        );
+    }
+
+    #[test]
+    fn a_safety_factor_divides() {
+        let found = free_ring(&ring(0.504, 0.004, 206e9, 0.3, 0.02)).unwrap();
+        let allowed = found.allowed(2.0).unwrap();
+        assert!((allowed.get::<pascal>() * 2.0 - found.critical.get::<pascal>()).abs() < 1e-6);
+        assert!(found.allowed(0.99).is_err());
+        assert!(found.allowed(f64::NAN).is_err());
+    }
+
+    #[test]
+    fn impossible_rings_are_named() {
+        for (bad, input) in [
+            (ring(0.5, 0.004, 0.0, 0.3, 0.0), Input::Modulus),
+            (ring(0.5, 0.004, 1e9, 0.51, 0.0), Input::Poisson),
+            (ring(0.5, 0.004, 1e9, -0.1, 0.0), Input::Poisson),
+            (ring(0.5, 0.004, 1e9, 0.3, 0.11), Input::Ovality),
+            (ring(0.5, 0.0, 1e9, 0.3, 0.0), Input::Wall),
+        ] {
+            let Err(WallError::OutOfRange { input: named, .. }) = free_ring(&bad) else {
+                panic!("{bad:?} should be refused");
+            };
+            assert_eq!(named, input);
+        }
+        assert!(matches!(
+            free_ring(&ring(0.5, 0.25, 1e9, 0.3, 0.0)),
+            Err(WallError::NoBore { .. })
+        ));
+        assert!(free_ring(&ring(f64::NAN, 0.004, 1e9, 0.3, 0.0)).is_err());
+    }
+
+    proptest! {
+        #[test]
+        fn laws(
+            d in 0.02..5.0_f64, share in 0.002..0.2_f64, e in 1e7..3e11_f64,
+            nu in 0.0..0.49_f64, q in 0.0..0.09_f64, k in 0.2..5.0_f64,
+        ) {
+            let base = critical(&ring(d, d * share, e, nu, q));
+            let near = |a: f64, b: f64| (a / b - 1.0).abs() < 1e-9;
+            // Only t/D counts; pressure goes with the modulus.
+            prop_assert!(near(critical(&ring(d * k, d * k * share, e, nu, q)), base));
+            prop_assert!(near(critical(&ring(d, d * share, e * k, nu, q)), base * k));
+            // Thicker and stiffer sideways resist more; ovality resists less.
+            prop_assert!(critical(&ring(d, d * share * 1.01, e, nu, q)) > base);
+            prop_assert!(critical(&ring(d, d * share, e, nu + 0.01, q)) > base);
+            prop_assert!(critical(&ring(d, d * share, e, nu, q + 0.01)) < base);
+            prop_assert!(critical(&ring(d, d * share, e, 0.0, q)) <= base);
+        }
+
+        #[test]
+        fn never_a_figure_that_is_not_finite(
+            d in any::<f64>(), t in any::<f64>(), e in any::<f64>(), nu in any::<f64>(), q in any::<f64>(),
+        ) {
+            if let Ok(found) = free_ring(&ring(d, t, e, nu, q)) {
+                prop_assert!(found.critical.get::<pascal>().is_finite());
+                prop_assert!(found.hoop_compression.get::<pascal>().is_finite());
+                prop_assert!(found.mean_diameter_over_wall.is_finite());
+            }
+        }
+    }
+}

@@ -115,3 +115,104 @@ fn pressure(value: f64) -> Result<Pressure, WallError> {
         value,
     )?))
 }
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+
+    use super::*;
+
+    fn pa(value: f64) -> Pressure {
+        Pressure::new::<pascal>(value)
+    }
+
+    fn m(value: f64) -> Length {
+        Length::new::<meter>(value)
+    }
+
+    #[test]
+    fn impossible_tubes_are_named() {
+        let p = pa(1e6);
+        assert_eq!(
+            barlow_stress(p, m(0.2), m(0.1)),
+            Err(WallError::NoBore {
+                wall: 0.1,
+                half_diameter: 0.1
+            })
+        );
+        assert!(matches!(
+            barlow_stress(p, m(0.0), m(0.1)),
+            Err(WallError::OutOfRange {
+                input: Input::Diameter,
+                ..
+            })
+        ));
+        assert!(matches!(
+            lame_stress(pa(-1.0), m(0.2), m(0.01)),
+            Err(WallError::OutOfRange {
+                input: Input::Pressure,
+                ..
+            })
+        ));
+        assert_eq!(
+            barlow_pressure(pa(f64::NAN), m(0.2), m(0.01)),
+            Err(WallError::NotFinite {
+                input: Input::Stress
+            })
+        );
+        assert!(barlow_stress(pa(f64::MAX), m(1.0), m(1e-9)).is_err());
+        assert!(mean_diameter_pressure(pa(1.0), m(0.2), m(f64::INFINITY)).is_err());
+    }
+
+    #[test]
+    fn no_pressure_no_stress() {
+        assert_eq!(barlow_stress(pa(0.0), m(0.2), m(0.01)), Ok(pa(0.0)));
+        assert_eq!(lame_stress(pa(0.0), m(0.2), m(0.01)), Ok(pa(0.0)));
+    }
+
+    proptest! {
+        #[test]
+        fn barlow_by_the_outside_is_never_below_lame(
+            p in 1.0..1e8_f64, d in 0.01..10.0_f64, share in 1e-4..0.499_f64,
+        ) {
+            let wall = m(d * share);
+            let barlow = barlow_stress(pa(p), m(d), wall).unwrap();
+            let lame = lame_stress(pa(p), m(d), wall).unwrap();
+            prop_assert!(barlow >= lame * (1.0 - 1e-12));
+            // Thin walls: the mean-diameter rule, Barlow and Lame meet.
+            if share < 1e-3 {
+                prop_assert!((barlow - lame).get::<pascal>() < 0.002 * barlow.get::<pascal>());
+            }
+        }
+
+        #[test]
+        fn inverses_and_scaling(
+            s in 1.0..1e9_f64, d in 0.01..10.0_f64, share in 1e-4..0.499_f64, k in 0.1..10.0_f64,
+        ) {
+            let (od, wall) = (m(d), m(d * share));
+            let near = |a: Pressure, b: f64| ((a.get::<pascal>() - b) / b).abs() < 1e-12;
+            let barlow = barlow_pressure(pa(s), od, wall).unwrap();
+            prop_assert!(near(barlow_stress(barlow, od, wall).unwrap(), s));
+            let lame = lame_pressure(pa(s), od, wall).unwrap();
+            prop_assert!(near(lame_stress(lame, od, wall).unwrap(), s));
+            // Only the ratio of wall to diameter counts; pressure goes with stress.
+            prop_assert!(near(barlow_pressure(pa(s), od * k, wall * k).unwrap(), barlow.get::<pascal>()));
+            prop_assert!(near(lame_pressure(pa(s * k), od, wall).unwrap(), lame.get::<pascal>() * k));
+            let mean = mean_diameter_pressure(pa(s), od, wall).unwrap();
+            prop_assert!(mean > barlow);
+        }
+
+        #[test]
+        fn never_a_figure_that_is_not_finite(p in any::<f64>(), d in any::<f64>(), t in any::<f64>()) {
+            for found in [
+                barlow_stress(pa(p), m(d), m(t)),
+                lame_stress(pa(p), m(d), m(t)),
+                barlow_pressure(pa(p), m(d), m(t)),
+                lame_pressure(pa(p), m(d), m(t)),
+                mean_diameter_pressure(pa(p), m(d), m(t)),
+            ].into_iter().flatten() {
+                prop_assert!(found.get::<pascal>().is_finite());
+            }
+        }
+    }
+}

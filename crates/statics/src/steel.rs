@@ -182,3 +182,133 @@ fn share(value: f64) -> Result<f64, WallError> {
     check::positive(Input::DesignFactor, value)
         .and_then(|value| check::between(Input::DesignFactor, value, 0.0, 1.0))
 }
+
+#[cfg(test)]
+mod tests {
+    use proptest::prelude::*;
+    use uom::si::length::millimeter;
+    use uom::si::pressure::megapascal;
+
+    use super::*;
+
+    const SHARES: StressShares = StressShares {
+        of_yield: 2.0 / 3.0,
+        of_tensile: Some(1.0 / 3.0),
+    };
+
+    fn wall() -> SteelWall {
+        SteelWall {
+            outside_diameter: Length::new::<millimeter>(219.1),
+            nominal_wall: Length::new::<millimeter>(4.5),
+            mill_tolerance: 0.125,
+            corrosion: Length::new::<millimeter>(1.0),
+            thread_depth: Length::new::<millimeter>(0.0),
+            yield_strength: Pressure::new::<megapascal>(235.0),
+            tensile_strength: Pressure::new::<megapascal>(360.0),
+            joint_factor: 0.85,
+        }
+    }
+
+    #[test]
+    fn by_hand() {
+        // t = 4.5 x 0.875 - 1 = 2.9375 mm; S = 360/3 = 120 MPa; p = 2 x 120 x 0.85 x 2.9375 / 219.1.
+        let found = allowable_pressure(&wall(), &SHARES).unwrap();
+        assert!((found.net_wall.get::<millimeter>() - 2.9375).abs() < 1e-9);
+        assert!((found.pressure.get::<megapascal>() - 204.0 * 2.9375 / 219.1).abs() < 1e-9);
+        assert_eq!(found.governing, Governing::Tensile);
+        let by_yield = StressShares {
+            of_yield: 0.5,
+            of_tensile: None,
+        };
+        let found = allowable_pressure(&wall(), &by_yield).unwrap();
+        assert_eq!(found.governing, Governing::Yield);
+        assert!((found.stress.get::<megapascal>() - 117.5).abs() < 1e-9);
+    }
+
+    #[test]
+    fn impossible_walls_are_named() {
+        type Change = fn(&mut SteelWall);
+        let cases: [(Change, Input); 6] = [
+            (|wall| wall.mill_tolerance = 1.1, Input::MillTolerance),
+            (
+                |wall| wall.corrosion = Length::new::<millimeter>(-1.0),
+                Input::Corrosion,
+            ),
+            (
+                |wall| wall.thread_depth = Length::new::<millimeter>(-1.0),
+                Input::ThreadDepth,
+            ),
+            (|wall| wall.joint_factor = 0.0, Input::JointFactor),
+            (|wall| wall.joint_factor = 1.01, Input::JointFactor),
+            (
+                |wall| wall.tensile_strength = Pressure::new::<megapascal>(200.0),
+                Input::TensileStrength,
+            ),
+        ];
+        for (change, input) in cases {
+            let mut bad = wall();
+            change(&mut bad);
+            let Err(WallError::OutOfRange { input: named, .. }) = allowable_pressure(&bad, &SHARES)
+            else {
+                panic!("{input:?} should be refused");
+            };
+            assert_eq!(named, input);
+        }
+        let mut thin = wall();
+        thin.thread_depth = Length::new::<millimeter>(3.0);
+        assert!(matches!(
+            net_wall(&thin),
+            Err(WallError::NothingLeft { .. })
+        ));
+        let none = StressShares {
+            of_yield: 0.0,
+            of_tensile: None,
+        };
+        assert!(allowable_pressure(&wall(), &none).is_err());
+        let over = StressShares {
+            of_yield: 0.5,
+            of_tensile: Some(1.5),
+        };
+        assert!(allowable_pressure(&wall(), &over).is_err());
+    }
+
+    #[test]
+    fn the_handling_wall_in_both_unit_systems() {
+        // (D + 20 in) / 400: 20 in give 0.1 in.
+        let wall = handling_wall(Length::new::<millimeter>(508.0)).unwrap();
+        assert!((wall.get::<millimeter>() - 2.54).abs() < 1e-12);
+        assert!(handling_wall(Length::new::<millimeter>(0.0)).is_err());
+    }
+
+    proptest! {
+        #[test]
+        fn less_wall_never_carries_more(
+            mill in 0.0..0.2_f64, corrosion in 0.0..1.5_f64, thread in 0.0..1.5_f64,
+            joint in 0.5..1.0_f64, of_yield in 0.3..0.7_f64,
+        ) {
+            let shares = StressShares { of_yield, of_tensile: Some(0.4) };
+            let mut one = wall();
+            one.mill_tolerance = mill;
+            one.corrosion = Length::new::<millimeter>(corrosion);
+            one.thread_depth = Length::new::<millimeter>(thread);
+            one.joint_factor = joint;
+            let base = allowable_pressure(&one, &shares).unwrap().pressure;
+            let changes: [fn(&mut SteelWall); 4] = [
+                |wall| wall.mill_tolerance += 0.01,
+                |wall| wall.corrosion += Length::new::<millimeter>(0.01),
+                |wall| wall.thread_depth += Length::new::<millimeter>(0.01),
+                |wall| wall.joint_factor -= 0.01,
+            ];
+            for change in changes {
+                let mut less = one;
+                change(&mut less);
+                prop_assert!(allowable_pressure(&less, &shares).unwrap().pressure < base);
+            }
+            // A wall loaded by what it is allowed is stressed by S E, counted on its net wall.
+            let found = allowable_pressure(&one, &shares).unwrap();
+            let back = crate::hoop::barlow_stress(found.pressure, one.outside_diameter, found.net_wall).unwrap();
+            let due = found.stress.get::<pascal>() * joint;
+            prop_assert!((back.get::<pascal>() / due - 1.0).abs() < 1e-12);
+        }
+    }
+}
