@@ -101,7 +101,7 @@ macro_rules! entries {
         pub struct $name {
             $(
                 $(#[$field_meta])*
-                #[serde(skip_serializing_if = "Entry::is_empty")]
+                #[serde(skip_serializing_if = "Entry::is_untouched")]
                 pub $field: Entry,
             )+
         }
@@ -200,10 +200,10 @@ pub struct Station {
     #[serde(default, skip_serializing_if = "String::is_empty")]
     pub name: String,
     /// Distance, of the line's [`DistanceKind`] and [`Reckoning`], m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub distance_m: Entry,
     /// Level, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub level_m: Entry,
 }
 
@@ -235,7 +235,7 @@ pub struct StretchEntry {
     #[serde(default)]
     pub laying: Laying,
     /// Cover over a buried pipe, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub cover_m: Entry,
 }
 
@@ -294,22 +294,22 @@ pub struct FittingEntry {
     /// What it is.
     pub kind: FittingKind,
     /// How many of them in a row.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub count_number: Entry,
     /// Deflection of a bend or mitre, degree.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub angle_deg: Entry,
     /// Bend radius over bore.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub radius_ratio_number: Entry,
     /// Opening of a valve, as a share of full.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub opening_share: Entry,
     /// The user's own loss coefficient K, on the velocity in the pipe there.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub k_number: Entry,
     /// Its pressure rating, Pa.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub rating_pa: Entry,
     /// What it is called on the order.
     #[serde(default, skip_serializing_if = "String::is_empty")]
@@ -366,46 +366,46 @@ pub struct OwnPipeEntry {
     #[serde(default)]
     pub rated: OwnRating,
     /// Outside diameter, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub outside_diameter_m: Entry,
     /// Smallest wall, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub wall_m: Entry,
     /// Pressure rating, Pa.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub rating_pa: Entry,
     /// Highest wall temperature the rating stands at, degC.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub rating_degc: Entry,
     /// Yield strength of a steel wall, Pa.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub yield_pa: Entry,
     /// Tensile strength of a steel wall, Pa.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub tensile_pa: Entry,
     /// Joint factor of the weld, a share.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub joint_share: Entry,
     /// Corrosion allowance, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub corrosion_m: Entry,
     /// Mill tolerance on the wall, a share.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub mill_tolerance_share: Entry,
     /// Roughness of the new pipe, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub roughness_new_m: Entry,
     /// Roughness of the aged pipe, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub roughness_aged_m: Entry,
     /// Short-term modulus, Pa.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub modulus_short_pa: Entry,
     /// Long-term modulus, Pa.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub modulus_long_pa: Entry,
     /// Supply length, m.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub supply_length_m: Entry,
 }
 
@@ -440,25 +440,25 @@ pub struct Jets {
     /// Fixed or needle.
     pub kind: NozzleKind,
     /// How many equal nozzles.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub count_number: Entry,
     /// Outlet bore of each, where given, m.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub bore_m: Entry,
     /// Velocity coefficient Cv.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub velocity_coefficient_number: Entry,
     /// Contraction coefficient: jet area over outlet area.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub contraction_number: Entry,
     /// Loss coefficient of each branch with its valve, on the branch velocity.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub branch_k_number: Entry,
     /// Bore of each branch, m. Where none is entered, the last stretch's bore.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub branch_bore_m: Entry,
     /// Pressure rating of manifold, valve and nozzle, Pa.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub rating_pa: Entry,
 }
 
@@ -479,7 +479,7 @@ pub struct Price {
     /// The pipe's catalogue id, or `own/<id>`.
     pub pipe: String,
     /// Price per metre, in the book's currency.
-    #[serde(default, skip_serializing_if = "Entry::is_empty")]
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub price_per_m: Entry,
 }
 
@@ -501,19 +501,19 @@ pub struct Limits {
     /// Aged or new.
     pub roughness: RoughnessAge,
     /// A margin under this share of what is allowed is tight.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub tight_margin_share: Entry,
     /// Most head that may be lost, as a share of gross head.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub loss_cap_share: Entry,
     /// Velocity above which a caution is given, m/s.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub velocity_high_m_s: Entry,
     /// Safety factor on collapse.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub collapse_safety_number: Entry,
     /// Spare pipe to order, as a share of the length.
-    #[serde(skip_serializing_if = "Entry::is_empty")]
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub spare_share: Entry,
 }
 

@@ -91,6 +91,13 @@ impl Entry {
         self.text.trim().is_empty()
     }
 
+    /// Whether there is nothing to keep, not even a unit chosen: left out of
+    /// the file.
+    #[must_use]
+    pub fn is_untouched(&self) -> bool {
+        *self == Entry::default()
+    }
+
     /// The value in the base unit, if there is one.
     ///
     /// # Errors

@@ -2,6 +2,7 @@
 
 pub mod book;
 pub mod caution;
+pub mod demo;
 pub mod entry;
 pub mod evaluate;
 pub mod field;
