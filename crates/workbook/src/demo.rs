@@ -30,8 +30,10 @@ const STATIONS: [(&str, &str, &str); 15] = [
 ];
 
 /// Pipes of the invented line: from which station, and the catalogue's pipe.
-const STRETCHES: [(u32, &str); 2] =
-    [(1, "pe100-iso4427/225/sdr17"), (10, "pe100-iso4427/225/sdr11")];
+const STRETCHES: [(u32, &str); 2] = [
+    (1, "pe100-iso4427/225/sdr17"),
+    (10, "pe100-iso4427/225/sdr11"),
+];
 
 /// The demo book under this key.
 #[must_use]

@@ -171,7 +171,11 @@ fn rating_temperature(pipe: &Pipe) -> ThermodynamicTemperature {
     }
 }
 
-fn allowable_at(stretch: &Stretch, pipe: &Pipe, wall: ThermodynamicTemperature) -> Figure<Allowable> {
+fn allowable_at(
+    stretch: &Stretch,
+    pipe: &Pipe,
+    wall: ThermodynamicTemperature,
+) -> Figure<Allowable> {
     pipe.allowable(wall).map_err(|why| {
         Gap::Wrong(Trouble::Rating {
             stretch: stretch.id,
