@@ -9,6 +9,7 @@
 mod log;
 
 pub use log::ln_positive_normal;
+pub(crate) use log::{add_ln, coarse_ln};
 
 /// Circle constant, re-exported so that callers need one import.
 pub use core::f64::consts::PI;

@@ -4,9 +4,10 @@
 //! nozzle, above the jet axis. The jet leaves at Cv sqrt(2 g Hn) and contracts
 //! to Cc times the area of the bore, so the flow is Cc Cv A sqrt(2 g Hn).
 
+use crate::friction::DarcyFactor;
 use crate::math;
 use crate::quantity::{
-    Acceleration, Angle, Area, Head, Length, MassDensity, Power, Velocity, VolumeRate,
+    Acceleration, Angle, Area, Head, Length, MassDensity, PipeLength, Power, Velocity, VolumeRate,
 };
 use uom::si::acceleration::meter_per_second_squared;
 use uom::si::angle::radian;
@@ -247,6 +248,32 @@ pub fn bore_for_flow(
     }
     let area = q / (velocity_coefficient * contraction_coefficient * spouting);
     Ok(Length::new::<meter>((4.0 * area / math::PI).sqrt()))
+}
+
+/// Bore of the nozzle that draws the greatest power from a uniform pipe.
+///
+/// # Equation
+/// d = D / (2 f L/D)^(1/4): one third of the head lost, f held constant, no
+/// loss but friction, no contraction (textbook form, for instance Munson, Young
+/// and Okiishi, Fundamentals of Fluid Mechanics, problem 12.56). A limit to
+/// stay away from, not a target.
+///
+/// # Errors
+/// [`NozzleError::Bore`] when bore or length is not positive.
+pub fn greatest_power_bore(
+    pipe_bore: Length,
+    length: PipeLength,
+    friction: DarcyFactor,
+) -> Result<Length, NozzleError> {
+    let d = pipe_bore.get::<meter>();
+    for value in [pipe_bore, length.get()] {
+        let metres = value.get::<meter>();
+        if !(metres > 0.0 && metres.is_finite()) {
+            return Err(NozzleError::Bore(value));
+        }
+    }
+    let resistance = 2.0 * friction.get() * length.m() / d;
+    Ok(Length::new::<meter>(d / resistance.sqrt().sqrt()))
 }
 
 /// Jet diameter over runner pitch diameter. Impulse wheels lie near 1/9 to

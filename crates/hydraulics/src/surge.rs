@@ -10,7 +10,8 @@ mod series;
 mod wave;
 
 pub use allievi::{
-    AllieviClosure, AllieviError, allievi_limit, allievi_linear_closure, pipe_parameter,
+    AllieviClosure, AllieviError, GREATEST_PHASES, allievi, allievi_limit, allievi_linear_closure,
+    pipe_parameter,
 };
 pub use quick::{SurgeError, joukowsky, michaud, pipe_period, water_starting_time};
 pub use series::{StretchWave, WaveSeries, series};

@@ -161,3 +161,47 @@ pub fn water_starting_time(
     )?;
     Ok(Time::new::<second>(l * v / (g * h)))
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::constants::standard_gravity;
+    use proptest::prelude::*;
+
+    fn m_s(value: f64) -> Velocity {
+        Velocity::new::<meter_per_second>(value)
+    }
+
+    fn s(value: f64) -> Time {
+        Time::new::<second>(value)
+    }
+
+    #[test]
+    fn nonsense_is_refused() {
+        let g = standard_gravity();
+        let l = PipeLength::from_m(100.0);
+        assert!(joukowsky(m_s(0.0), m_s(1.0), g).is_err());
+        assert!(joukowsky(m_s(1000.0), m_s(-1.0), g).is_err());
+        assert!(joukowsky(m_s(1000.0), m_s(f64::NAN), g).is_err());
+        assert!(michaud(l, m_s(1000.0), m_s(1.0), s(-1.0), g).is_err());
+        assert!(pipe_period(PipeLength::from_m(0.0), m_s(1000.0)).is_err());
+        assert!(water_starting_time(l, m_s(1.0), Head::from_m(0.0), g).is_err());
+    }
+
+    proptest! {
+        #[test]
+        fn michaud_meets_joukowsky_at_one_period_and_falls_beyond(
+            length in 10.0..3000.0_f64, a in 200.0..1400.0_f64, v in 0.1..5.0_f64,
+        ) {
+            let g = standard_gravity();
+            let l = PipeLength::from_m(length);
+            let period = pipe_period(l, m_s(a)).unwrap().get::<second>();
+            let sudden = joukowsky(m_s(a), m_s(v), g).unwrap();
+            let of = |t| michaud(l, m_s(a), m_s(v), s(t), g).unwrap().m();
+            prop_assert!((of(period * 0.5) - sudden.m()).abs() < 1e-12 * sudden.m());
+            prop_assert!((of(period * (1.0 + 1e-12)) / sudden.m() - 1.0).abs() < 1e-10);
+            let slow = 3.0 * period;
+            prop_assert!((of(slow) - 2.0 * length * v / (9.80665 * slow)).abs() < 1e-9 * of(slow));
+        }
+    }
+}

@@ -64,3 +64,33 @@ pub fn series(stretches: &[StretchWave]) -> Result<WaveSeries, SurgeError> {
         period: Time::new::<second>(2.0 * travel),
     })
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn stretch(length: f64, wave_speed: f64, velocity: f64) -> StretchWave {
+        StretchWave {
+            length: PipeLength::from_m(length),
+            wave_speed: Velocity::new::<meter_per_second>(wave_speed),
+            velocity: Velocity::new::<meter_per_second>(velocity),
+        }
+    }
+
+    #[test]
+    fn travel_time_and_momentum_are_kept() {
+        let one = series(&[stretch(300.0, 300.0, 2.0), stretch(100.0, 1000.0, 4.0)]).unwrap();
+        assert!((one.length.m() - 400.0).abs() < 1e-12);
+        assert!((one.period.get::<second>() - 2.2).abs() < 1e-12);
+        assert!((one.wave_speed.get::<meter_per_second>() - 400.0 / 1.1).abs() < 1e-9);
+        assert!((one.velocity.get::<meter_per_second>() - 2.5).abs() < 1e-12);
+    }
+
+    #[test]
+    fn like_stretches_are_one_pipe() {
+        let one = series(&[stretch(30.0, 350.0, 2.0), stretch(70.0, 350.0, 2.0)]).unwrap();
+        assert!((one.wave_speed.get::<meter_per_second>() - 350.0).abs() < 1e-9);
+        assert!(series(&[]).is_err());
+        assert!(series(&[stretch(30.0, 0.0, 2.0)]).is_err());
+    }
+}
