@@ -22,6 +22,7 @@ pub mod transient;
 pub mod units;
 pub mod verdict;
 pub mod walls;
+pub mod working;
 
 pub use book::Book;
 pub use entry::{Entry, EntryTrouble};
