@@ -56,11 +56,12 @@ pub fn normal_gravity(latitude: Angle, altitude: Length) -> Result<Acceleration,
     const CENTRIFUGAL: f64 = 0.003_449_786_506_84;
 
     let phi = latitude.get::<radian>();
-    if !(phi.abs() <= math::PI / 2.0 + 1e-12) {
+    let pole = math::PI / 2.0 + 1e-12;
+    if !(-pole..=pole).contains(&phi) {
         return Err(GravityError::Latitude(latitude));
     }
     let h = altitude.get::<meter>();
-    if !(h.abs() <= GREATEST_ALTITUDE_M) {
+    if !(-GREATEST_ALTITUDE_M..=GREATEST_ALTITUDE_M).contains(&h) {
         return Err(GravityError::Altitude(altitude));
     }
     let sin = math::sin(phi);

@@ -38,3 +38,4 @@ pub mod quantity;
 pub mod solve;
 pub mod surge;
 pub mod water;
+pub mod wheel;

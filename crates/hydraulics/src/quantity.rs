@@ -16,17 +16,18 @@
 use core::ops::{Add, AddAssign, Mul, Neg, Sub};
 
 pub use uom::si::f64::{
-    Acceleration, Angle, Area, DynamicViscosity, Energy, Force, KinematicViscosity, Length, Mass,
-    MassConcentration, MassDensity, Power, Pressure, Ratio, TemperatureInterval,
-    ThermodynamicTemperature, Time, Velocity, Volume, VolumeRate,
+    Acceleration, Angle, AngularVelocity, Area, DynamicViscosity, Energy, Force,
+    KinematicViscosity, Length, Mass, MassConcentration, MassDensity, Power, Pressure, Ratio,
+    TemperatureInterval, ThermodynamicTemperature, Time, Velocity, Volume, VolumeRate,
 };
 
 /// The unit modules of `uom` for the quantities above.
 pub mod unit {
     pub use uom::si::{
-        acceleration, angle, area, dynamic_viscosity, energy, force, kinematic_viscosity, length,
-        mass, mass_concentration, mass_density, power, pressure, ratio, temperature_interval,
-        thermodynamic_temperature, time, velocity, volume, volume_rate,
+        acceleration, angle, angular_velocity, area, dynamic_viscosity, energy, force,
+        kinematic_viscosity, length, mass, mass_concentration, mass_density, power, pressure,
+        ratio, temperature_interval, thermodynamic_temperature, time, velocity, volume,
+        volume_rate,
     };
 }
 

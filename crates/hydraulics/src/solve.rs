@@ -263,7 +263,7 @@ mod tests {
             (solve(0.0, 3.0, |x| math::powi(x, 20) - 1.0), 1.0),
             (
                 solve(-1.0, 30.0, |x| math::exp(-x) - 0.5),
-                0.693_147_180_559_945_3,
+                core::f64::consts::LN_2,
             ),
         ] {
             assert!(found.iterations < 130, "{found:?}");

@@ -16,5 +16,6 @@ pub use allievi::{
 pub use quick::{SurgeError, joukowsky, michaud, pipe_period, water_starting_time};
 pub use series::{StretchWave, WaveSeries, series};
 pub use wave::{
-    EntrainedAir, PipeWall, Restraint, WaveError, restraint_factor, wave_speed, wave_speed_with_air,
+    EntrainedAir, PipeWall, Restraint, WaveError, korteweg, restraint_factor, wave_speed,
+    wave_speed_with_air,
 };

@@ -2,7 +2,8 @@
 
 use super::colebrook::colebrook_factor;
 use crate::math;
-use crate::quantity::{KinematicViscosity, Length, Velocity};
+use crate::quantity::{Acceleration, Head, KinematicViscosity, Length, PipeLength, Velocity};
+use uom::si::acceleration::meter_per_second_squared;
 use uom::si::kinematic_viscosity::square_meter_per_second;
 use uom::si::length::meter;
 use uom::si::velocity::meter_per_second;
@@ -266,6 +267,31 @@ pub fn reynolds_number(
 #[must_use]
 pub fn laminar(reynolds: ReynoldsNumber) -> DarcyFactor {
     DarcyFactor::computed(64.0 / reynolds.get())
+}
+
+/// Head lost by friction along a pipe.
+///
+/// # Equation
+/// h = f (L/D) V^2/(2 g) (Darcy-Weisbach).
+///
+/// # Errors
+/// A bore that is not positive.
+pub fn darcy_weisbach(
+    factor: DarcyFactor,
+    length: PipeLength,
+    bore: Length,
+    velocity: Velocity,
+    gravity: Acceleration,
+) -> Result<Head, FrictionError> {
+    let d = bore.get::<meter>();
+    if !(d > 0.0 && d.is_finite()) {
+        return Err(FrictionError::Bore(bore));
+    }
+    let v = velocity.get::<meter_per_second>();
+    let g = gravity.get::<meter_per_second_squared>();
+    Ok(Head::from_m(
+        factor.get() * (length.m() / d) * v * v / (2.0 * g),
+    ))
 }
 
 /// The Darcy factor in whatever regime the flow is.

@@ -204,7 +204,7 @@ pub fn equivalent_roughness(
             smooth: colebrook_factor(friction.reynolds, 0.0),
         });
     }
-    if !(ratio <= GREATEST_RELATIVE_ROUGHNESS) {
+    if ratio > GREATEST_RELATIVE_ROUGHNESS {
         return Err(FrictionError::RelativeRoughness(ratio));
     }
     Ok(bore * ratio)
@@ -263,4 +263,127 @@ fn turbulent(
         });
     }
     Ok(friction)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::constants::standard_gravity;
+    use proptest::prelude::*;
+    use uom::si::thermodynamic_temperature::degree_celsius;
+
+    fn water() -> Water {
+        Water::at(crate::quantity::ThermodynamicTemperature::new::<
+            degree_celsius,
+        >(15.0))
+        .unwrap()
+    }
+
+    fn m(value: f64) -> Length {
+        Length::new::<meter>(value)
+    }
+
+    fn flow(value: f64) -> VolumeRate {
+        VolumeRate::new::<cubic_meter_per_second>(value)
+    }
+
+    fn gradient(law: FrictionLaw, q: f64, bore: f64) -> Friction {
+        law.head_gradient(flow(q), m(bore), &water(), standard_gravity())
+            .unwrap()
+    }
+
+    #[test]
+    fn numbers_outside_are_refused_with_the_value() {
+        let check = |law: FrictionLaw| law.check(m(0.1));
+        assert_eq!(
+            check(FrictionLaw::HazenWilliams { coefficient: 15.0 }),
+            Err(FrictionError::HazenWilliams(15.0))
+        );
+        assert_eq!(
+            check(FrictionLaw::Manning { n: 0.1 }),
+            Err(FrictionError::Manning(0.1))
+        );
+        let rough = |metres| FrictionLaw::ColebrookWhite {
+            roughness: m(metres),
+        };
+        assert_eq!(check(rough(-1e-6)), Err(FrictionError::Roughness(m(-1e-6))));
+        assert!(matches!(
+            check(rough(0.011)),
+            Err(FrictionError::RelativeRoughness(_))
+        ));
+        assert!(check(rough(f64::NAN)).is_err());
+        assert!(rough(0.0).check(m(0.0)).is_err());
+        let back = rough(0.0).head_gradient(flow(-1.0), m(0.1), &water(), standard_gravity());
+        assert!(matches!(back, Err(FrictionError::Velocity(_))));
+    }
+
+    #[test]
+    fn still_water_loses_nothing() {
+        for law in [
+            FrictionLaw::ColebrookWhite { roughness: m(1e-4) },
+            FrictionLaw::HazenWilliams { coefficient: 140.0 },
+            FrictionLaw::Manning { n: 0.01 },
+        ] {
+            let friction = gradient(law, 0.0, 0.1);
+            assert_eq!(friction.regime, Regime::Still);
+            assert_eq!(friction.factor, None);
+            assert!(friction.gradient.abs() < f64::MIN_POSITIVE);
+        }
+    }
+
+    #[test]
+    fn hazen_williams_in_its_usual_short_form() {
+        // h/L = 10.67 Q^1.852 / (C^1.852 D^4.87), as handbooks print it.
+        let short =
+            10.67 * math::pow(0.05, 1.852) / (math::pow(140.0, 1.852) * math::pow(0.2, 4.8704));
+        let found = gradient(FrictionLaw::HazenWilliams { coefficient: 140.0 }, 0.05, 0.2).gradient;
+        assert!((found / short - 1.0).abs() < 2e-3, "{found} {short}");
+    }
+
+    #[test]
+    fn smoother_than_smooth_is_an_error() {
+        let law = FrictionLaw::HazenWilliams { coefficient: 160.0 };
+        let found = equivalent_roughness(&law, flow(0.002), m(0.1), &water(), standard_gravity());
+        assert!(
+            matches!(found, Err(FrictionError::SmootherThanSmooth { .. })),
+            "{found:?}"
+        );
+        let slow = equivalent_roughness(&law, flow(1e-4), m(0.1), &water(), standard_gravity());
+        assert!(matches!(slow, Err(FrictionError::NotTurbulent { .. })));
+    }
+
+    proptest! {
+        #[test]
+        fn conversions_there_and_back(q in 0.01..0.5_f64, bore in 0.1..0.8_f64, share in 1e-5..0.05_f64) {
+            let (w, g) = (water(), standard_gravity());
+            let rough = FrictionLaw::ColebrookWhite { roughness: m(share * bore) };
+            let same = gradient(rough, q, bore).gradient;
+            let coefficient = equivalent_hazen_williams(&rough, flow(q), m(bore), &w, g).unwrap();
+            prop_assume!((HAZEN_WILLIAMS_RANGE.0..=HAZEN_WILLIAMS_RANGE.1).contains(&coefficient));
+            let hazen = FrictionLaw::HazenWilliams { coefficient };
+            prop_assert!((gradient(hazen, q, bore).gradient / same - 1.0).abs() < 1e-12);
+            let back = equivalent_roughness(&hazen, flow(q), m(bore), &w, g).unwrap();
+            prop_assert!((back.get::<meter>() / (share * bore) - 1.0).abs() < 1e-6);
+            let n = equivalent_manning(&rough, flow(q), m(bore), &w, g).unwrap();
+            prop_assume!((MANNING_RANGE.0..=MANNING_RANGE.1).contains(&n));
+            let manning = FrictionLaw::Manning { n };
+            prop_assert!((gradient(manning, q, bore).gradient / same - 1.0).abs() < 1e-12);
+            let back = equivalent_roughness(&manning, flow(q), m(bore), &w, g).unwrap();
+            prop_assert!((back.get::<meter>() / (share * bore) - 1.0).abs() < 1e-6);
+        }
+
+        #[test]
+        fn every_law_loses_more_with_flow_and_less_with_bore(
+            q in 0.002..0.5_f64, bore in 0.08..0.8_f64, pick in 0_usize..3,
+        ) {
+            let law = [
+                FrictionLaw::ColebrookWhite { roughness: m(1e-4) },
+                FrictionLaw::HazenWilliams { coefficient: 140.0 },
+                FrictionLaw::Manning { n: 0.01 },
+            ][pick];
+            let here = gradient(law, q, bore).gradient;
+            prop_assert!(gradient(law, q * 1.01, bore).gradient > here);
+            prop_assert!(gradient(law, q, bore * 1.01).gradient < here);
+        }
+    }
 }

@@ -1,8 +1,9 @@
 //! Wave speed.
 
-use crate::quantity::{AbsolutePressure, Length, Pressure, Velocity};
+use crate::quantity::{AbsolutePressure, Length, MassDensity, Pressure, Velocity};
 use crate::water::Water;
 use uom::si::length::meter;
+use uom::si::mass_density::kilogram_per_cubic_meter;
 use uom::si::pressure::pascal;
 use uom::si::velocity::meter_per_second;
 
@@ -52,6 +53,10 @@ pub enum WaveError {
     Modulus(Pressure),
     /// Poisson's ratio lies outside 0..=0.5.
     Poisson(f64),
+    /// The density is not positive.
+    Density(MassDensity),
+    /// The restraint factor is negative or not finite.
+    Factor(f64),
     /// The share of air lies outside 0..=0.02.
     AirShare(f64),
     /// The absolute pressure is not positive.
@@ -72,6 +77,12 @@ impl core::fmt::Display for WaveError {
                 write!(f, "modulus {} Pa is not above 0", value.get::<pascal>())
             }
             Self::Poisson(value) => write!(f, "Poisson's ratio {value} lies outside 0 to 0.5"),
+            Self::Density(value) => write!(
+                f,
+                "density {} kg/m3 is not above 0",
+                value.get::<kilogram_per_cubic_meter>()
+            ),
+            Self::Factor(value) => write!(f, "restraint factor {value} is below 0"),
             Self::AirShare(value) => write!(f, "share of air {value} lies outside 0 to 0.02"),
             Self::AirPressure(value) => {
                 write!(f, "absolute pressure {} Pa is not above 0", value.pa())
@@ -145,11 +156,45 @@ impl Restraint {
 /// # Ok::<(), hydraulics::surge::WaveError>(())
 /// ```
 pub fn wave_speed(water: &Water, wall: &PipeWall) -> Result<Velocity, WaveError> {
-    let density = water.density_si();
-    let bulk = water.bulk_modulus().get::<pascal>();
-    Ok(Velocity::new::<meter_per_second>(f64::sqrt(
-        1.0 / (density * (1.0 / bulk + wall_compliance(wall)?)),
-    )))
+    korteweg(
+        water.density(),
+        water.bulk_modulus(),
+        wall,
+        restraint_factor(wall)?,
+    )
+}
+
+/// Wave speed of any liquid in a pipe, with the factor c given.
+///
+/// # Equation
+/// a = sqrt(K/rho) / sqrt(1 + K D c / (E e)) (Korteweg 1878).
+///
+/// # Errors
+/// A length, modulus, density or bulk modulus that is not positive.
+pub fn korteweg(
+    density: MassDensity,
+    bulk_modulus: Pressure,
+    wall: &PipeWall,
+    factor: f64,
+) -> Result<Velocity, WaveError> {
+    let rho = density.get::<kilogram_per_cubic_meter>();
+    let bulk = bulk_modulus.get::<pascal>();
+    if !(rho > 0.0 && rho.is_finite()) {
+        return Err(WaveError::Density(density));
+    }
+    if !(bulk > 0.0 && bulk.is_finite()) {
+        return Err(WaveError::Modulus(bulk_modulus));
+    }
+    if !(factor >= 0.0 && factor.is_finite()) {
+        return Err(WaveError::Factor(factor));
+    }
+    let give = 1.0 / bulk + factor * thin_compliance(wall)?;
+    Ok(speed(rho, give))
+}
+
+/// Wave speed from density, kg/m3, and give, 1/Pa.
+fn speed(density: f64, give: f64) -> Velocity {
+    Velocity::new::<meter_per_second>((1.0 / (density * give)).sqrt())
 }
 
 /// Wave speed with free air in the water.
@@ -175,22 +220,19 @@ pub fn wave_speed_with_air(
     if !(pressure > 0.0 && pressure.is_finite()) {
         return Err(WaveError::AirPressure(air.pressure));
     }
-    let density = water.density_si();
     let bulk = water.bulk_modulus().get::<pascal>();
-    let give = 1.0 / bulk + wall_compliance(wall)? + air.share / pressure;
-    Ok(Velocity::new::<meter_per_second>(f64::sqrt(
-        1.0 / (density * give),
-    )))
+    let wall_give = restraint_factor(wall)? * thin_compliance(wall)?;
+    let give = 1.0 / bulk + wall_give + air.share / pressure;
+    Ok(speed(water.density_si(), give))
 }
 
-/// D c / (E e), 1/Pa.
-fn wall_compliance(wall: &PipeWall) -> Result<f64, WaveError> {
-    let factor = restraint_factor(wall)?;
+/// D / (E e), 1/Pa.
+fn thin_compliance(wall: &PipeWall) -> Result<f64, WaveError> {
     let modulus = wall.modulus.get::<pascal>();
     if !(modulus > 0.0 && modulus.is_finite()) {
         return Err(WaveError::Modulus(wall.modulus));
     }
-    Ok(positive(wall.bore)? * factor / (modulus * positive(wall.thickness)?))
+    Ok(positive(wall.bore)? / (modulus * positive(wall.thickness)?))
 }
 
 /// A positive length in metres.
@@ -257,7 +299,7 @@ mod tests {
     fn a_thick_wall_tends_to_the_bore_in_rock() {
         // Wylie and Streeter: for a tunnel the give is 2 (1 + mu)/E.
         let thick = wall(1.0, 1e6, 1e10, 0.25);
-        let give = wall_compliance(&thick).unwrap();
+        let give = restraint_factor(&thick).unwrap() * thin_compliance(&thick).unwrap();
         assert!((give * 1e10 / 2.5 - 1.0).abs() < 1e-5);
     }
 
