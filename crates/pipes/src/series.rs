@@ -2,7 +2,7 @@
 
 use uom::si::f64::{Length, Pressure, ThermodynamicTemperature};
 use uom::si::length::{inch, millimeter};
-use uom::si::pressure::{bar, pound_force_per_square_inch};
+use uom::si::pressure::{bar, pascal};
 use uom::si::thermodynamic_temperature::{degree_celsius, degree_fahrenheit};
 
 use crate::shared::Shared;
@@ -23,6 +23,10 @@ const COLUMNS: [&str; 11] = [
     "dimensions",
     "rating",
 ];
+
+/// One pound-force per square inch in Pa: 0.45359237 kg x 9.80665 m/s2 over
+/// (0.0254 m)^2. The units of `uom` 0.38 are off in the eighth figure.
+const PSI: f64 = 0.453_592_37 * 9.806_65 / (0.0254 * 0.0254);
 
 /// The data files, one per series, in catalogue order.
 pub(crate) const FILES: [File; 11] = [
@@ -185,7 +189,7 @@ fn read_class(table: &Table<'_>, row: &Row<'_>) -> Result<Rating, DataError> {
     let value = row.positive("pressure")?;
     let pressure = match table.key("pressure unit")? {
         "bar" => Pressure::new::<bar>(value),
-        "psi" => Pressure::new::<pound_force_per_square_inch>(value),
+        "psi" => Pressure::new::<pascal>(value * PSI),
         other => return Err(row.fail(format!("no pressure unit `{other}`"))),
     };
     let at = match table.key("at")? {
