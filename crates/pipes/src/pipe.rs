@@ -37,7 +37,10 @@ pub struct Supply {
     pub attested: Attested,
 }
 
-/// Where the diameters and walls of a pipe come from.
+/// Where the diameters and walls of a pipe come from. The mark is about the
+/// outside diameter and the least (or nominal) wall, on which limits rest; an
+/// upper tolerance from memory moves the bore only, and the file of the series
+/// says so.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Dimensions {
     /// The source, in words fit for the calculation record.

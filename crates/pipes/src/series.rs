@@ -100,11 +100,7 @@ pub(crate) fn read(
     };
     let mut pipes = Vec::with_capacity(table.rows().len());
     for row in table.rows() {
-        let pipe = read_pipe(&table, row, &series, shared, steel)?;
-        if pipes.iter().any(|known: &Pipe| known.id == pipe.id) {
-            return Err(row.fail(format!("`{}` is there twice", pipe.id)));
-        }
-        pipes.push(pipe);
+        pipes.push(read_pipe(&table, row, &series, shared, steel)?);
     }
     Ok((series, pipes))
 }
