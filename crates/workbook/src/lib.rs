@@ -14,6 +14,7 @@ pub mod next;
 pub mod operation;
 pub mod pipe_copy;
 pub mod reading;
+pub mod report;
 pub mod resolve;
 pub mod schedule;
 pub mod steady;

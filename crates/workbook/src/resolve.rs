@@ -42,7 +42,7 @@ pub enum Assumption {
     BranchBoreOfLastStretch(Length),
     /// No entrance was entered: none is reckoned.
     NoEntrance,
-    /// The warmest water is the coldest entered.
+    /// No warmest water was entered: boiling is judged with the coldest.
     WarmestWaterUnknown,
 }
 
@@ -130,6 +130,18 @@ pub struct Resolved {
     pub assumptions: Vec<Assumption>,
     /// Every entry, station, stretch, fitting and pipe that cannot be used.
     pub troubles: Vec<Trouble>,
+}
+
+impl Resolved {
+    /// Water as warm as it is known to get, which boils first: where no warmest
+    /// was entered, the coldest, and the assumption says so. A wrong entry is
+    /// not stood in for.
+    pub(crate) fn warmest_known_water(&self) -> Figure<Water> {
+        match &self.warm_water {
+            Err(Gap::Unsettled(_)) => self.cold_water.clone(),
+            known => known.clone(),
+        }
+    }
 }
 
 /// Reads entries, keeping note of what is assumed and what is wrong.

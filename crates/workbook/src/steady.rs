@@ -61,6 +61,8 @@ pub struct Steady {
     pub grade: Figure<Grade>,
     /// Line and jets in balance, all jets open.
     pub solved: Figure<Solved>,
+    /// Head lost in the branches.
+    pub branch_loss: Figure<Head>,
     /// Head lost from forebay to nozzle, branches included.
     pub loss: Figure<Head>,
     /// The same as a share of gross head.
@@ -110,7 +112,8 @@ pub fn steady(found: &Resolved) -> Steady {
         })
         .collect();
     let line = parts.clone_gap().and_then(|p| line(found, p, &fittings));
-    let template = template(found, &parts, &mut assumptions);
+    let branch = branch(found, &parts, &mut assumptions);
+    let template = template(found, &branch);
 
     let solved = solve(found, &line, &template, &jets);
     let flow = match &solved {
@@ -129,7 +132,10 @@ pub fn steady(found: &Resolved) -> Steady {
                 .map_err(|why| Gap::Wrong(Trouble::Line(why)))
         }),
     };
-    let loss = loss(&solved, &grade);
+    let branch_loss = branch_loss(&flow, &branch);
+    let loss = grade
+        .clone_gap()
+        .and_then(|g| Ok(line_loss(g) + branch_loss.clone()?));
     let loss_share = loss
         .clone()
         .and_then(|loss| Ok(loss.m() / found.gross_head.clone()?.m()));
@@ -154,6 +160,7 @@ pub fn steady(found: &Resolved) -> Steady {
         flow,
         grade,
         solved,
+        branch_loss,
         loss,
         loss_share,
         stretches,
@@ -340,14 +347,21 @@ fn plain_loss(kind: FittingKind) -> fittings::Loss {
     }
 }
 
-fn template(
+/// The branches that lead to the nozzles.
+#[derive(Debug, Clone, Copy)]
+struct Branch {
+    count: u32,
+    k: f64,
+    bore: Length,
+}
+
+fn branch(
     found: &Resolved,
     parts: &Figure<Parts<'_>>,
     assumptions: &mut Vec<Assumption>,
-) -> Figure<NozzleTemplate> {
+) -> Figure<Branch> {
     let jets = found.jets.clone()?;
-    let axis = found.jet_axis.clone()?;
-    let branch_bore = match jets.branch_bore {
+    let bore = match jets.branch_bore {
         Some(bore) => bore,
         None => {
             let last = parts.clone_gap()?.pipes.last().map(|(_, pipe)| pipe.bore());
@@ -356,13 +370,23 @@ fn template(
             bore
         }
     };
+    Ok(Branch {
+        count: jets.count,
+        k: jets.branch_k,
+        bore,
+    })
+}
+
+fn template(found: &Resolved, branch: &Figure<Branch>) -> Figure<NozzleTemplate> {
+    let jets = found.jets.clone()?;
+    let branch = branch.clone()?;
     Ok(NozzleTemplate {
-        count: jets.count as usize,
+        count: branch.count as usize,
         velocity_coefficient: jets.velocity_coefficient,
         contraction_coefficient: jets.contraction,
-        axis,
-        branch_k: jets.branch_k,
-        branch_bore,
+        axis: found.jet_axis.clone()?,
+        branch_k: branch.k,
+        branch_bore: branch.bore,
     })
 }
 
@@ -410,11 +434,15 @@ pub(crate) fn line_loss(grade: &Grade) -> Head {
     grade.friction_loss + grade.local_loss
 }
 
-fn loss(solved: &Figure<Solved>, grade: &Figure<Grade>) -> Figure<Head> {
-    match solved {
-        Ok(s) => Ok(line_loss(&s.grade) + s.branch_loss),
-        Err(_) => Ok(line_loss(grade.clone_gap()?)),
-    }
+/// Loss of each branch, at its share of the flow: figured apart from the
+/// jets, so that a pipe too narrow for the flow still shows what it would lose.
+fn branch_loss(flow: &Figure<VolumeRate>, branch: &Figure<Branch>) -> Figure<Head> {
+    let branch = branch.clone()?;
+    let area = branch.bore * branch.bore * (std::f64::consts::PI / 4.0);
+    let velocity: Velocity = flow.clone()? / f64::from(branch.count) / area;
+    LossCoefficient::new(branch.k)
+        .map(|k| k.head(velocity, standard_gravity()))
+        .map_err(|_| Gap::needs(Field::BranchK))
 }
 
 fn lowest(grade: &Grade) -> Figure<Lowest> {
@@ -430,11 +458,7 @@ fn lowest(grade: &Grade) -> Figure<Lowest> {
 
 fn vapour(found: &Resolved, grade: &Figure<Grade>) -> Figure<VapourMargin> {
     let atmosphere = found.atmosphere.clone()?;
-    // Water as warm as it gets boils first; unknown, the cold water's own.
-    let water = found
-        .warm_water
-        .clone()
-        .or_else(|_| found.cold_water.clone())?;
+    let water = found.warmest_known_water()?;
     grade
         .clone_gap()?
         .vapour_margin(atmosphere, &water, standard_gravity())

@@ -316,10 +316,7 @@ fn lowest(found: &Resolved, steady: &Steady, index: usize) -> Figure<PressureAt>
 }
 
 fn suction_allowed(found: &Resolved) -> Figure<Pressure> {
-    let water = found
-        .warm_water
-        .clone()
-        .or_else(|_| found.cold_water.clone())?;
+    let water = found.warmest_known_water()?;
     let available = found.atmosphere.clone()?.gauge(water.vapour_pressure());
     Ok(available.get() * SIPHON_SHARE)
 }

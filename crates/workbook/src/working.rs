@@ -388,9 +388,11 @@ impl Findings {
             input("h_f", Term::FrictionLoss, grade.friction_loss),
             input("h_K", Term::LocalLoss, grade.local_loss),
         ];
-        if let Ok(solved) = &self.steady.solved {
-            inputs.push(input("h_b", Term::BranchLoss, solved.branch_loss));
-        }
+        inputs.push(input(
+            "h_b",
+            Term::BranchLoss,
+            self.steady.branch_loss.clone()?,
+        ));
         let sources = vec!["Darcy-Weisbach and local losses, summed along the line".to_owned()];
         if key == FigureKey::Loss {
             return Ok(Working {
