@@ -208,12 +208,28 @@ impl Placer {
     }
 }
 
-/// Places around a point, `gap` pixels off it: right, left, above, below, and
-/// then farther out.
+/// A thin line from `start` pixels off a point to its label, where the label had to
+/// go farther than `near` pixels.
+#[must_use]
+pub fn leader(
+    at: (f64, f64),
+    start: f64,
+    near: f64,
+    label: &Rect,
+) -> Option<((f64, f64), (f64, f64))> {
+    let to = (at.0.clamp(label.x0, label.x1), at.1.clamp(label.y0, label.y1));
+    let (dx, dy) = (to.0 - at.0, to.1 - at.1);
+    let far = (dx * dx + dy * dy).sqrt();
+    (far > near && far > start)
+        .then(|| ((at.0 + dx / far * start, at.1 + dy / far * start), to))
+}
+
+/// Places around a point, `gap` pixels off it: right, left, above, below, then
+/// farther out, and last well aside, where a leader has to lead to it.
 #[must_use]
 pub fn around(x: f64, y: f64, gap: f64, size: f64) -> Vec<Place> {
-    let mut places = Vec::with_capacity(24);
-    for far in [1.0, 1.9, 3.2] {
+    let mut places = Vec::with_capacity(82);
+    for far in [1.0, 1.9, 3.2, 5.0] {
         let g = gap * far;
         let drop = size * 0.35;
         for (dx, dy, anchor) in [
@@ -227,6 +243,13 @@ pub fn around(x: f64, y: f64, gap: f64, size: f64) -> Vec<Place> {
             (0.0, g + size * 0.8, Anchor::Middle),
         ] {
             places.push(Place { x: x + dx, y: y + dy, anchor });
+        }
+    }
+    for aside in [2.0, 4.0, 7.0, 11.0, 16.0] {
+        for rise in [-1.6, 2.4, -3.0, 3.8, 5.4] {
+            let y = y + rise * size;
+            places.push(Place { x: x + aside * size, y, anchor: Anchor::Start });
+            places.push(Place { x: x - aside * size, y, anchor: Anchor::End });
         }
     }
     places

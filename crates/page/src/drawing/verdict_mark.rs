@@ -50,7 +50,7 @@ pub fn verdict_mark(verdict: Verdict, share: Option<f64>) -> String {
             svg.rect("d-bar-over", LIMIT, BASE - 11.0, end - LIMIT, 11.0);
         }
         Verdict::Unsettled => {
-            let end = length(share.unwrap_or(0.6)).clamp(LEFT + 8.0, RIGHT);
+            let end = length(share.unwrap_or(0.6)).clamp(LEFT + 11.0, RIGHT);
             let mut path = Path::new();
             path.move_to((LEFT + 0.8, BASE));
             for at in [(LEFT + 0.8, BASE - 7.0), (end, BASE - 7.0), (end, BASE)] {

@@ -4,6 +4,16 @@
 use super::super::svg::{Path, Svg};
 use super::Glyph;
 
+/// How far a sign reaches above and below its point, in units of its size.
+pub(super) const fn reach(glyph: Glyph) -> (f64, f64) {
+    match glyph {
+        Glyph::Vent => (3.4, 0.6),
+        Glyph::Drain => (0.6, 2.5),
+        Glyph::Anchor => (0.7, 1.5),
+        _ => (1.3, 1.3),
+    }
+}
+
 /// Draws a sign at a point of the line; `s` is about half its size.
 pub(super) fn draw(svg: &mut Svg, glyph: Glyph, at: (f64, f64), s: f64) {
     let (x, y) = at;

@@ -79,13 +79,16 @@ impl Layout {
             let y = Scale::linear((low, high), (floor, roof)).ok_or_else(none)?;
             (x, y, None)
         };
+        // At a usual scale the line may need less height than there is: what is
+        // below moves up, and the drawing is that much lower.
+        let spare = floor - y.pixels().0;
         Ok(Layout {
-            size,
-            field: Rect { x1: x.pixels().1, ..field },
+            size: Size { height: size.height - spare, ..size },
+            field: Rect { x1: x.pixels().1, y1: floor - spare, ..field },
             x,
             y,
-            band: (band_top, band_bottom),
-            chainage_baseline,
+            band: (band_top - spare, band_bottom - spare),
+            chainage_baseline: chainage_baseline - spare,
             ticks,
             print_scale,
         })
@@ -146,14 +149,14 @@ fn levels(section: &LongSection) -> (f64, f64) {
     (low - span * 0.11, low + span * 1.14)
 }
 
-/// Denominators of usual drawing scales: 1, 2, 2.5 and 5 to a power of ten where
+/// Denominators of usual drawing scales: 1, 1.25, 2, 2.5 and 5 to a power of ten where
 /// the unit is metric; whole feet to the inch where it is the foot (common
 /// practice of both trades). The smallest that is at least `least`.
 fn usual_scale(least: f64, unit_mm: f64) -> Option<f64> {
     // 12 times 1, 2, 3, 4, 5, 6 or 10 feet to the inch, times a power of ten.
     let feet = (unit_mm - 304.8).abs() < 1.0;
     let steps: &[f64] =
-        if feet { &[12.0, 24.0, 36.0, 48.0, 60.0, 72.0] } else { &[10.0, 20.0, 25.0, 50.0] };
+        if feet { &[12.0, 24.0, 36.0, 48.0, 60.0, 72.0] } else { &[10.0, 12.5, 20.0, 25.0, 50.0] };
     let mut ten = 1.0;
     for _ in 0..9 {
         for s in steps {
@@ -181,7 +184,7 @@ fn on_paper(
     let width = (along.1 - along.0) * unit_px / horizontal;
     let height = (levels.1 - levels.0) * unit_px / vertical;
     let x = Scale::linear(along, (field.x0, field.x0 + width))?;
-    let y = Scale::linear(levels, (field.y1, field.y1 - height))?;
+    let y = Scale::linear(levels, (field.y0 + height, field.y0))?;
     Some((x, y, Some(PrintScale { horizontal, vertical })))
 }
 

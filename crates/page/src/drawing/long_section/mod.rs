@@ -169,7 +169,7 @@ pub struct LongSection {
 /// The finished long section.
 #[derive(Debug, Clone, PartialEq)]
 pub struct LongSectionDrawing {
-    /// The static part.
+    /// The static part. On paper it may be lower than the room it was given.
     pub picture: Picture,
     /// Heights are drawn this many times larger than lengths.
     pub exaggeration: f64,
@@ -236,8 +236,8 @@ pub fn draw(
     Ok(LongSectionDrawing {
         picture: Picture {
             svg: painted.svg,
-            width: size.width,
-            height: size.height,
+            width: layout.size.width,
+            height: layout.size.height,
             title: section.title.clone(),
             desc: section.desc.clone(),
         },

@@ -1,6 +1,6 @@
 //! The drawing itself, from the back to the front.
 
-use super::super::label::{Placer, Rect, Words, along, around, text_box, text_width};
+use super::super::label::{Placer, Rect, Words, along, around, leader, text_box, text_width};
 use super::super::svg::{Anchor, Path, Svg};
 use super::super::{Verdict, hatch, polyline};
 use super::layout::Layout;
@@ -36,6 +36,7 @@ pub(super) fn paint(section: &LongSection, layout: &Layout) -> Painted {
     };
     painter.grid();
     painter.selection();
+    painter.ordinates();
     painter.ground();
     painter.surge();
     painter.levels();
@@ -79,7 +80,9 @@ impl Painter<'_> {
     /// The selected stretch, from top to band: light enough to read through.
     fn selection(&mut self) {
         let (field, band) = (self.layout.field, self.layout.band);
-        for s in self.section.stretches.iter().filter(|s| s.selected) {
+        // What is selected is no matter of the print.
+        let on_screen = !self.layout.size.print;
+        for s in self.section.stretches.iter().filter(|s| s.selected && on_screen) {
             if let (Some(x0), Some(x1)) = (self.layout.x.px(s.from), self.layout.x.px(s.to)) {
                 self.svg.rect("d-selected", x0, field.y0, x1 - x0, band.0 - field.y0);
             }
@@ -96,6 +99,20 @@ impl Painter<'_> {
         let spacing = if self.layout.size.print { 5.0 } else { self.text * 0.62 };
         let strokes = hatch::between(&self.line, &bottom, spacing);
         self.svg.path("d-hatch", &strokes);
+    }
+
+    /// On paper every station is dropped to the axis, to be measured from.
+    fn ordinates(&mut self) {
+        if !self.layout.size.print {
+            return;
+        }
+        let mut drops = Path::new();
+        for p in self.section.points.iter().filter(|p| p.is_station) {
+            if let Some((x, y)) = self.layout.px((p.x, p.y)) {
+                drops.stroke((x, y), (x, self.layout.band.0));
+            }
+        }
+        self.svg.path("d-ordinate", &drops);
     }
 
     fn surge(&mut self) {
@@ -125,7 +142,6 @@ impl Painter<'_> {
         if let Some(line) = level {
             self.svg.path("d-static", &Path::through(&line));
             self.placer.avoid(&line, 0.5);
-            self.water_sign(line[0]);
         }
         if let Some(grade) = &self.section.grade {
             let line = self.layout.pxs(&grade.points);
@@ -134,18 +150,27 @@ impl Painter<'_> {
         }
     }
 
-    /// The usual sign of a free water surface: a triangle standing on it, two
-    /// short lines under it.
-    fn water_sign(&mut self, at: (f64, f64)) {
+    /// The usual sign of a free water surface, a triangle standing on it, at the
+    /// first free place from the forebay on.
+    fn water_sign(&mut self) {
+        let level = self.section.static_level.as_ref().and_then(|l| self.level_line(l.y));
+        let Some(line) = level else { return };
+        let (from, to, y) = (line[0].0, line[1].0, line[0].1);
         let s = self.text * 0.42;
-        let (x, y) = (at.0 + s * 1.3, at.1);
-        let mut path = Path::new();
-        path.move_to((x, y));
-        path.line_to((x - s, y - s * 1.6));
-        path.line_to((x + s, y - s * 1.6));
-        path.close();
-        self.svg.path("d-mark", &path);
-        self.placer.take(Rect { x0: x - s, y0: y - s * 2.0, x1: x + s, y1: y });
+        for k in 0..8 {
+            let x = from + s * 1.4 + (to - from) * f64::from(k) * 0.06;
+            let rect = Rect { x0: x - s, y0: y - s * 2.0, x1: x + s, y1: y - 0.5 };
+            if self.placer.is_free(&rect) {
+                let mut path = Path::new();
+                path.move_to((x, y));
+                path.line_to((x - s, y - s * 1.6));
+                path.line_to((x + s, y - s * 1.6));
+                path.close();
+                self.svg.path("d-mark", &path);
+                self.placer.take(rect);
+                return;
+            }
+        }
     }
 
     /// Where the pipe rises above the grade line: a comb standing on the pipe,
@@ -168,7 +193,10 @@ impl Painter<'_> {
                 k += 1.0;
             }
             self.svg.path("d-sub", &comb);
-            self.placer.avoid(&top, 3.0);
+            for w in pipe.windows(2) {
+                let y0 = if w[0].1 < w[1].1 { w[0].1 } else { w[1].1 } - tall;
+                self.placer.take(Rect { x0: w[0].0, y0, x1: w[1].0, y1: y0 + tall });
+            }
         }
     }
 
@@ -190,6 +218,14 @@ impl Painter<'_> {
 
     /// A tick across the pipe where one stretch ends and the next begins.
     fn cut(&mut self, chainage: f64, width: f64) {
+        // A sign that sits there says it already.
+        let reach = self.text * 0.8 / self.layout.x.px_per_unit();
+        let sits = |f: &super::FittingMark| {
+            f.glyph == super::Glyph::Reducer && (f.x - chainage).abs() < reach
+        };
+        if self.section.fittings.iter().any(sits) {
+            return;
+        }
         let Some(x) = self.layout.x.px(chainage) else { return };
         let Some(y) = polyline::at(&self.line, x) else { return };
         // Across the chord over a few pixels on either side.
@@ -213,14 +249,16 @@ impl Painter<'_> {
             let y = f.y.or_else(|| polyline::at(&line, f.x));
             let Some(at) = y.and_then(|y| self.layout.px((f.x, y))) else { continue };
             glyph::draw(&mut self.svg, f.glyph, at, s);
-            let (x0, x1) = (at.0 - s * 1.2, at.0 + s * 1.2);
-            self.placer.take(Rect { x0, y0: at.1 - s * 1.2, x1, y1: at.1 + s * 1.2 });
+            let (above, below) = glyph::reach(f.glyph);
+            let (x0, x1) = (at.0 - s * 1.3, at.0 + s * 1.3);
+            self.placer.take(Rect { x0, y0: at.1 - s * above, x1, y1: at.1 + s * below });
         }
         if let Some(at) = self.section.lowest.as_ref().and_then(|l| self.layout.px((l.x, l.y))) {
             let r = self.text * 0.5;
             self.svg.circle("d-mark", at, r);
             self.placer.take(Rect { x0: at.0 - r, y0: at.1 - r, x1: at.0 + r, y1: at.1 + r });
         }
+        self.water_sign();
     }
 
     /// The weightiest words first: they get the best places.
@@ -291,6 +329,12 @@ impl Painter<'_> {
         let words = self.words(text, class);
         let places = around(at.0, at.1, gap, self.text);
         let placed = self.placer.write(&mut self.svg, &words, &places);
+        if let Some(place) = placed {
+            let line = leader(at, self.text * 0.5, gap * 1.6, &text_box(&words, &place));
+            if let Some((from, to)) = line {
+                self.svg.line("d-leader", from, to);
+            }
+        }
         self.tell_if_left_out(text, placed.is_some());
     }
 
@@ -347,10 +391,13 @@ impl Painter<'_> {
                 Verdict::Unsettled => " d-band-unsettled",
                 Verdict::Fails => " d-band-fails",
             });
-            if s.selected {
+            if s.selected && !self.layout.size.print {
                 class.push_str(" d-band-selected");
             }
             self.svg.rect(&class, x0, top, x1 - x0, bottom - top);
+            if s.verdict == Verdict::Fails && x1 > x0 {
+                self.svg.line("d-strike", (x0, bottom), (x1, top));
+            }
             self.band_words(s, (x0, x1));
         }
     }
@@ -359,20 +406,30 @@ impl Painter<'_> {
     fn band_words(&mut self, s: &StretchBand, (x0, x1): (f64, f64)) {
         let (top, bottom) = self.layout.band;
         let fails = s.verdict == Verdict::Fails;
-        let strong = s.selected || fails;
-        let room = x1 - x0 - self.text * 0.5;
-        let fits = |t: &&String| !t.is_empty() && text_width(t, self.text, strong) <= room;
-        let Some(text) = [&s.label, &s.short_label].into_iter().find(fits) else {
+        let strong = fails || (s.selected && !self.layout.size.print);
+        let room = x1 - x0 - self.text * 0.4;
+        // Smaller letters before fewer of them, but never under 10 px.
+        let small = (self.text * 0.84).max(10.0);
+        let choices = [
+            (&s.label, self.text),
+            (&s.label, small),
+            (&s.short_label, self.text),
+            (&s.short_label, small),
+        ];
+        let fits = |(t, size): &(&String, f64)| {
+            !t.is_empty() && text_width(t, *size, strong) <= room
+        };
+        let Some((text, size)) = choices.into_iter().find(fits) else {
             self.left_out.push(s.label.clone());
             return;
         };
         let class = match (fails, strong) {
-            (true, _) => "d-text d-fails-text",
+            (true, _) => "d-text d-fails-text d-halo",
             (false, true) => "d-text d-strong",
             (false, false) => "d-text",
         };
-        let at = (f64::midpoint(x0, x1), f64::midpoint(top, bottom) + self.text * 0.36);
-        self.svg.text(class, at, Anchor::Middle, self.text, text);
+        let at = (f64::midpoint(x0, x1), f64::midpoint(top, bottom) + size * 0.36);
+        self.svg.text(class, at, Anchor::Middle, size, text);
     }
 
     fn chainages(&mut self) {

@@ -81,15 +81,24 @@ pub struct SweepChart {
     pub words: SweepWords,
 }
 
+/// Points that are not in the picture, counted.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub struct NotShown {
+    /// They lose more than all the head.
+    pub above: usize,
+    /// They lose so little that no one decides by it.
+    pub below: usize,
+    /// They have no loss or no bore that could be drawn.
+    pub without: usize,
+}
+
 /// The finished chart.
 #[derive(Debug, Clone, PartialEq)]
 pub struct SweepDrawing {
     /// The static part.
     pub picture: Picture,
-    /// How many points lie above the chart (they lose more than all the head) or
-    /// below it (under a hundredth of a per cent where others lose much more), or
-    /// cannot be drawn (no loss, no bore), so that the page can say so.
-    pub not_shown: usize,
+    /// How many points are not in the picture, so that the page can say so.
+    pub not_shown: NotShown,
     /// Labels that found no room.
     pub left_out: Vec<String>,
     /// Pixels of each point, in the order of the input; `None` when not shown.
@@ -178,7 +187,7 @@ pub fn draw(
             title: chart.words.title.clone(),
             desc: chart.words.desc.clone(),
         },
-        not_shown: pixels.iter().filter(|p| p.is_none()).count(),
+        not_shown: count_not_shown(chart, &pixels),
         left_out: painted.left_out,
         pixels,
         lesser: chart.points.iter().map(|p| p.dominated && !p.chosen).collect(),
@@ -186,13 +195,32 @@ pub fn draw(
     })
 }
 
-fn is_drawable(p: &SweepPoint) -> bool {
-    p.bore > 0.0 && p.bore.is_finite() && p.loss_share >= LEAST_SHARE && p.loss_share <= 1.0
+fn count_not_shown(chart: &SweepChart, pixels: &[Option<(f64, f64)>]) -> NotShown {
+    let mut counts = NotShown::default();
+    for (p, _) in chart.points.iter().zip(pixels).filter(|(_, at)| at.is_none()) {
+        let counted = if !(p.bore > 0.0 && p.bore.is_finite() && p.loss_share >= 0.0) {
+            &mut counts.without
+        } else if p.loss_share > 1.0 {
+            &mut counts.above
+        } else {
+            &mut counts.below
+        };
+        *counted += 1;
+    }
+    counts
 }
 
-/// A loss under this share of the head is nothing anyone decides by; a chart that
-/// ran down to it would have no room for what matters.
-const LEAST_SHARE: f64 = 1e-6;
+fn is_drawable(p: &SweepPoint) -> bool {
+    p.bore > 0.0 && p.bore.is_finite() && p.loss_share > 0.0 && p.loss_share <= 1.0
+}
+
+/// Losses below the cap by more than this factor are not shown: a catalogue runs
+/// to bores where the loss is nothing, and a chart that followed it there would
+/// have no room for what is decided.
+const BELOW_CAP: f64 = 25.0;
+/// What stands in for the cap where there is none: one tenth of the head (common
+/// practice).
+const USUAL_CAP: f64 = 0.1;
 
 /// How many of `most` fit when each takes `each` of `room`.
 fn how_many(room: f64, each: f64, most: usize) -> usize {
@@ -255,11 +283,18 @@ type Ranges = ((f64, f64), (f64, f64));
 /// Bores and losses with a margin, so that no shape is cut by the edge; the
 /// limits are always in.
 fn ranges(chart: &SweepChart) -> Option<Ranges> {
+    let cap = chart.cap.as_ref().map(|c| c.share).filter(|c| *c > 0.0 && *c <= 1.0);
+    let least = cap.unwrap_or(USUAL_CAP) / BELOW_CAP;
+    // Unless all lie below, or the chosen one does.
+    let all_below = chart.points.iter().filter(|p| is_drawable(p)).all(|p| p.loss_share < least);
+    let counts = |p: &&SweepPoint| {
+        is_drawable(p) && (all_below || p.loss_share >= least || p.chosen)
+    };
     let (mut bores, mut losses) = ((f64::MAX, 0.0_f64), (f64::MAX, 0.0_f64));
     let widen = |range: &mut (f64, f64), v: f64| {
         *range = (if v < range.0 { v } else { range.0 }, if v > range.1 { v } else { range.1 });
     };
-    for p in chart.points.iter().filter(|p| is_drawable(p)) {
+    for p in chart.points.iter().filter(counts) {
         widen(&mut bores, p.bore);
         widen(&mut losses, p.loss_share);
     }
@@ -267,13 +302,9 @@ fn ranges(chart: &SweepChart) -> Option<Ranges> {
         return None;
     }
     for limit in chart.cap.iter().chain(&chart.greatest_power) {
-        if limit.share >= LEAST_SHARE && limit.share <= 1.0 {
+        if limit.share > 0.0 && limit.share <= 1.0 {
             widen(&mut losses, limit.share);
         }
-    }
-    // A loss of less than a hundredth of a per cent is read from the table.
-    if losses.1 > 1e-3 && losses.0 < 1e-4 {
-        losses.0 = 1.35e-4;
     }
     let top = (losses.1 * 1.35).min(1.0);
     Some(((bores.0 / 1.07, bores.1 * 1.07), (losses.0 / 1.35, if top > losses.0 { top } else { losses.0 * 1.35 })))

@@ -1,7 +1,7 @@
 //! The chart itself, from the back to the front.
 
 use super::super::Verdict;
-use super::super::label::{Place, Placer, Rect, Words, around, text_box, text_width};
+use super::super::label::{Place, Placer, Rect, Words, around, leader, text_box, text_width};
 use super::super::shape::Shape;
 use super::super::svg::{Anchor, Path, Svg};
 use super::key::Sign;
@@ -51,11 +51,18 @@ pub(super) fn paint(
 impl Painter<'_> {
     /// Radius of a full point and of a light one.
     fn radii(&self) -> (f64, f64) {
-        let crowd = self.chart.points.iter().filter(|p| !p.dominated).count();
+        let shown = |(p, at): &(&SweepPoint, &Option<(f64, f64)>)| !p.dominated && at.is_some();
+        let crowd = self.chart.points.iter().zip(self.pixels).filter(shown).count();
         // A crowd of full points gets smaller ones.
-        let full = if crowd > 150 { 3.6 } else if crowd > 60 { 4.2 } else { 5.0 };
+        let full = if crowd > 120 {
+            3.2
+        } else if crowd > 50 {
+            3.9
+        } else {
+            4.8
+        };
         let scale = self.text / 12.0;
-        (full * scale, 2.1 * scale)
+        (full * scale, 2.0 * scale)
     }
 
     /// Beyond the cap lies a light veil.
@@ -187,7 +194,8 @@ impl Painter<'_> {
         shape.outline(&mut path, at, r);
         let class = match verdict {
             Verdict::Unsettled => "d-shape d-shape-unsettled",
-            _ => "d-shape",
+            Verdict::Fails => "d-shape d-shape-fails",
+            Verdict::Holds | Verdict::Tight => "d-shape",
         };
         self.svg.path(class, &path);
         if verdict == Verdict::Tight {
@@ -198,7 +206,7 @@ impl Painter<'_> {
         }
         if verdict == Verdict::Fails {
             let mut line = Path::new();
-            strike(&mut line, at, r * 1.45);
+            strike(&mut line, at, r * 1.2);
             self.svg.path("d-strike", &line);
         }
     }
@@ -237,7 +245,12 @@ impl Painter<'_> {
             let w = Words { text: &words.chosen, size: self.text, strong: true, class };
             let mut places = around(at.0, at.1, self.text * 1.5, self.text);
             places.extend(around(at.0, at.1, self.text * 3.0, self.text));
-            self.write(&w, &places);
+            if let Some(place) = self.write(&w, &places) {
+                let label = text_box(&w, &place);
+                if let Some((from, to)) = leader(at, self.text * 1.05, self.text * 2.2, &label) {
+                    self.svg.line("d-leader", from, to);
+                }
+            }
         }
         if let Some(cap) = &self.chart.cap {
             self.limit_label(cap, "d-text d-strong d-halo", true);
@@ -247,11 +260,12 @@ impl Painter<'_> {
         }
     }
 
-    fn write(&mut self, words: &Words<'_>, places: &[Place]) {
+    fn write(&mut self, words: &Words<'_>, places: &[Place]) -> Option<Place> {
         let placed = self.placer.write(&mut self.svg, words, places);
         if placed.is_none() && !words.text.is_empty() {
             self.left_out.push(words.text.to_owned());
         }
+        placed
     }
 
     /// At the line's right end if it can be, else along it; over it or under it.
