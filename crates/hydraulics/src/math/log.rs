@@ -16,8 +16,22 @@ const ROUNDER: f64 = 6_755_399_441_055_744.0;
 /// argument lies in sqrt(1/2)..sqrt(2).
 const HALF_ROOT_BITS: u64 = 0x3FE6_A09E_0000_0000;
 
+/// Coefficients of R, lowest power first.
+const LG: [f64; 7] = [
+    0.6666666666666735,
+    0.3999999999940942,
+    0.2857142874366239,
+    0.22222198432149784,
+    0.1818357216161805,
+    0.15313837699209373,
+    0.14798198605116586,
+];
+
+/// The bits of an f64 below its exponent.
+const FRACTION_BITS: u64 = (1 << 52) - 1;
+
 /// Natural logarithm of a positive normal number, within one unit in the last
-/// place. See [`add_ln`] for the method.
+/// place. The method is that of FreeBSD msun `e_log.c`.
 ///
 /// # Valid for
 /// Positive, finite and not subnormal `x`. Anything else gives a meaningless
@@ -47,16 +61,6 @@ pub fn ln_positive_normal(x: f64) -> f64 {
     reason = "the loop around it vectorises only when it is inlined"
 )]
 pub(crate) fn add_ln(start: f64, x: f64) -> f64 {
-    const LG: [f64; 7] = [
-        0.6666666666666735,
-        0.3999999999940942,
-        0.2857142874366239,
-        0.22222198432149784,
-        0.1818357216161805,
-        0.15313837699209373,
-        0.14798198605116586,
-    ];
-    const FRACTION_BITS: u64 = (1 << 52) - 1;
     let shifted = x
         .to_bits()
         .wrapping_sub(HALF_ROOT_BITS)
