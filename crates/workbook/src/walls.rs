@@ -271,7 +271,7 @@ fn collapse(found: &Resolved, stretch: &Stretch) -> Figure<CollapseFigures> {
             outside_diameter: pipe.outside_diameter,
             wall: pipe.wall_against_collapse(),
             modulus,
-            poisson: pipe.poisson.value,
+            poisson: pipe.poisson_for_collapse().value,
             ovality: OVALITY,
         })
         .map_err(wrong)

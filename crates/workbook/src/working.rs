@@ -638,7 +638,7 @@ impl Findings {
             inputs: vec![
                 input("E", Term::ModulusShort, stress(pipe.modulus_short.value)),
                 input("E_long", Term::ModulusLong, stress(pipe.modulus_long.value)),
-                number("ν", Term::Poisson, pipe.poisson.value),
+                number("ν", Term::Poisson, pipe.poisson_for_collapse().value),
                 input("e", Term::WallLeast, Measure::bore(pipe.wall_against_collapse())),
                 input("D_o", Term::OutsideDiameter, Measure::bore(pipe.outside_diameter)),
                 input("q", Term::Ovality, Measure::share(crate::walls::OVALITY)),
