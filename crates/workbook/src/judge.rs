@@ -8,7 +8,7 @@
 
 use crate::book::{Id, Laying};
 use crate::caution::Caution;
-use crate::figure::{Figure, Gap, Lack};
+use crate::figure::{Figure, Gap, Lack, Trouble};
 use crate::measure::Measure;
 use crate::operation::Operation;
 use crate::resolve::Resolved;
@@ -16,7 +16,7 @@ use crate::steady::Steady;
 use crate::transient::Transient;
 use crate::verdict::{Check, CheckKind, StretchVerdict, Verdict};
 use crate::walls::{StretchWalls, Walls};
-use hydraulics::line::LineCaution;
+use hydraulics::line::{LineCaution, LineError};
 use uom::si::f64::Pressure;
 
 /// A flow above this share of the flow of greatest power draws a caution.
@@ -44,7 +44,7 @@ pub fn judge(
     walls: &Walls,
     invented: bool,
 ) -> Judged {
-    let stretches = verdicts(found, transient, walls);
+    let stretches = verdicts(found, steady, transient, walls);
     let worst = stretches
         .iter()
         .map(|s| s.verdict)
@@ -66,7 +66,12 @@ pub fn judge(
 
 /// The verdict of every stretch.
 #[must_use]
-pub fn verdicts(found: &Resolved, transient: &Transient, walls: &Walls) -> Vec<StretchVerdict> {
+pub fn verdicts(
+    found: &Resolved,
+    steady: &Steady,
+    transient: &Transient,
+    walls: &Walls,
+) -> Vec<StretchVerdict> {
     let margin = found
         .limits
         .as_ref()
@@ -77,6 +82,7 @@ pub fn verdicts(found: &Resolved, transient: &Transient, walls: &Walls) -> Vec<S
         .iter()
         .filter_map(|wall| {
             let checks = vec![
+                passes_flow(found, steady),
                 standing(wall, &margin),
                 surge(transient),
                 lowest(wall),
@@ -85,6 +91,26 @@ pub fn verdicts(found: &Resolved, transient: &Transient, walls: &Walls) -> Vec<S
             StretchVerdict::of(wall.stretch, checks)
         })
         .collect()
+}
+
+fn passes_flow(found: &Resolved, steady: &Steady) -> Check {
+    const KIND: CheckKind = CheckKind::PassesFlow;
+    let attempt = || -> Figure<Check> {
+        let loss = steady.loss.clone()?;
+        let gross = found.gross_head.clone()?;
+        let check = Check::against(KIND, loss.into(), gross.into(), 0.0);
+        match &steady.solved {
+            // What the solver refused fails, even where rounding would not.
+            Err(gap @ Gap::Wrong(Trouble::Line(LineError::FlowTooGreat { .. }))) => Ok(Check {
+                verdict: Verdict::Fails,
+                gap: Some(gap.clone()),
+                ..check
+            }),
+            Err(gap) if check.verdict != Verdict::Fails => Err(gap.clone()),
+            _ => Ok(check),
+        }
+    };
+    attempt().unwrap_or_else(|gap| Check::unsettled(KIND, gap))
 }
 
 fn standing(wall: &StretchWalls, margin: &Figure<f64>) -> Check {

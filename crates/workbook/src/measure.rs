@@ -5,7 +5,9 @@ use crate::units::Kind;
 use hydraulics::quantity::{
     AbsolutePressure, GaugePressure, Head, HorizontalDistance, Level, PipeLength,
 };
-use uom::si::f64::{Power, Pressure, ThermodynamicTemperature, Time, Velocity, VolumeRate};
+use uom::si::f64::{
+    LinearMassDensity, Mass, Power, Pressure, ThermodynamicTemperature, Time, Velocity, VolumeRate,
+};
 use uom::si::thermodynamic_temperature::degree_celsius;
 
 /// A value in its kind's base unit.
@@ -67,4 +69,8 @@ measures! {
     Power => Power, |x| x.get::<uom::si::power::watt>();
     Time => Time, |x| x.get::<uom::si::time::second>();
     ThermodynamicTemperature => Temperature, |x| x.get::<degree_celsius>();
+    Mass => Mass, |x| x.get::<uom::si::mass::kilogram>();
+    LinearMassDensity => MassPerLength, |x| {
+        x.get::<uom::si::linear_mass_density::kilogram_per_meter>()
+    };
 }

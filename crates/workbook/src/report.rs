@@ -10,6 +10,7 @@ use crate::evaluate::Findings;
 use crate::figure::{Figure, Gap};
 use crate::measure::Measure;
 use crate::schedule::schedule;
+use crate::units::Kind;
 use crate::verdict::{Check, CheckKind, Verdict, Weakest};
 use hydraulics::quantity::PipeLength;
 use schemars::JsonSchema;
@@ -196,10 +197,14 @@ pub struct CheckReport {
     pub check: &'static str,
     /// What it comes to.
     pub verdict: VerdictName,
-    /// The pressure that decides.
+    /// The pressure that decides; for `passes_flow` there is none, but a head.
     pub found_pa: Option<f64>,
     /// The pressure allowed.
     pub allowed_pa: Option<f64>,
+    /// The head that decides, for `passes_flow`.
+    pub found_m: Option<f64>,
+    /// The head there is, for `passes_flow`.
+    pub allowed_m: Option<f64>,
     /// The first over the second.
     pub share: Option<f64>,
     /// Where, along the pipe.
@@ -455,14 +460,17 @@ fn stretch(
 fn check(check: &Check, n: &Noting<'_>) -> CheckReport {
     CheckReport {
         check: match check.kind {
+            CheckKind::PassesFlow => "passes_flow",
             CheckKind::StandingPressure => "standing_pressure",
             CheckKind::SurgePressure => "surge_pressure",
             CheckKind::LowestPressure => "lowest_pressure",
             CheckKind::Collapse => "collapse",
         },
         verdict: check.verdict.into(),
-        found_pa: check.found.map(|m| m.value),
-        allowed_pa: check.allowed.map(|m| m.value),
+        found_pa: of_kind(check.found, Kind::Pressure),
+        allowed_pa: of_kind(check.allowed, Kind::Pressure),
+        found_m: of_kind(check.found, Kind::Head),
+        allowed_m: of_kind(check.allowed, Kind::Head),
         share: check.share,
         at_m: check.at.map(PipeLength::m),
         weakest: check.weakest.map(|w| match w {
@@ -472,6 +480,10 @@ fn check(check: &Check, n: &Noting<'_>) -> CheckReport {
         }),
         why: check.gap.as_ref().map(|gap| (n.say.gap)(gap)),
     }
+}
+
+fn of_kind(measure: Option<Measure>, kind: Kind) -> Option<f64> {
+    measure.filter(|m| m.kind == kind).map(|m| m.value)
 }
 
 /// The JSON Schema of a report, as shipped.

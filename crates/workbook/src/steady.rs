@@ -18,8 +18,8 @@ use hydraulics::friction::{
     DarcyFactor, FrictionLaw, RelativeRoughness, ReynoldsNumber, darcy_factor, reynolds_number,
 };
 use hydraulics::line::{
-    Grade, Line, LineSpec, LocalLoss, NozzleSet, NozzleTemplate, Point, Run, RunLoss, Solved,
-    SuctionStretch, VapourMargin,
+    Grade, Line, LineError, LineSpec, LocalLoss, NozzleSet, NozzleTemplate, Point, Run, RunLoss,
+    Solved, SuctionStretch, VapourMargin,
 };
 use hydraulics::nozzle::Nozzle;
 use hydraulics::quantity::{GaugePressure, Head, PipeLength};
@@ -153,9 +153,14 @@ pub fn steady(found: &Resolved) -> Steady {
             (s.id, run)
         })
         .collect();
-    let lowest = grade.clone_gap().and_then(lowest);
-    let suction = grade.clone().map(|g| g.below_atmosphere());
-    let vapour = vapour(found, &grade);
+    // Of a line that cannot pass the flow, the grade line is arithmetic only.
+    let running = match &solved {
+        Err(gap @ Gap::Wrong(Trouble::Line(LineError::FlowTooGreat { .. }))) => Err(gap.clone()),
+        _ => grade.clone(),
+    };
+    let lowest = running.clone_gap().and_then(lowest);
+    let suction = running.clone().map(|g| g.below_atmosphere());
+    let vapour = vapour(found, &running);
     Steady {
         flow,
         grade,

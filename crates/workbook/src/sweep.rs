@@ -128,7 +128,7 @@ impl Sweep {
         let steady = steady(found);
         let transient = transient(found, &steady);
         let walls = walls(found, &steady, &transient);
-        let verdict = verdicts(found, &transient, &walls).pop()?;
+        let verdict = verdicts(found, &steady, &transient, &walls).pop()?;
         let wall = walls.stretches.into_iter().next()?;
         let seen = wall.at_rating.as_ref().is_ok_and(|a| a.attested.is_seen())
             && pipe.dimensions.attested == Attested::Seen
@@ -202,7 +202,7 @@ mod tests {
     use crate::evaluate::evaluate;
     use crate::pipe_copy::PipeCopy;
     use crate::reading::DecimalMark;
-    use crate::verdict::Verdict;
+    use crate::verdict::{CheckKind, Verdict};
 
     fn all(book: &Book) -> Vec<Row> {
         let mut sweep = Sweep::new(book);
@@ -247,6 +247,11 @@ mod tests {
             .find(|r| r.loss_share.as_ref().is_ok_and(|s| *s > 1.0))
             .expect("some catalogue pipe is too narrow for the demo");
         assert!(narrow.net_head.is_err());
+        assert_eq!(narrow.verdict.verdict, Verdict::Fails);
+        assert_eq!(
+            narrow.verdict.deciding_check().unwrap().kind,
+            CheckKind::PassesFlow
+        );
         assert!(narrow.velocity.is_ok());
     }
 

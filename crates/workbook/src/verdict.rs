@@ -22,6 +22,9 @@ pub enum Verdict {
 /// What is checked.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
 pub enum CheckKind {
+    /// The head that the flow to pass would lose, against the gross head:
+    /// beyond it the line cannot pass that flow at all.
+    PassesFlow,
     /// Standing water from the highest forebay level, against the lasting
     /// pressure allowed at the warmest wall, of the weakest part.
     StandingPressure,

@@ -287,6 +287,7 @@ fn collapse(found: &Resolved, stretch: &Stretch) -> Figure<CollapseFigures> {
 }
 
 fn lowest(found: &Resolved, steady: &Steady, index: usize) -> Figure<PressureAt> {
+    steady.lowest.clone()?;
     let water = found.cold_water.clone()?;
     let normal = found.forebay.normal.clone()?;
     let drop = match found.forebay.lowest.clone()? {
