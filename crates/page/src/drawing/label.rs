@@ -136,19 +136,29 @@ pub fn text_box(words: &Words<'_>, place: &Place) -> Rect {
     }
 }
 
+/// A piece of line that labels keep off, and what each pixel of it costs.
+#[derive(Debug, Clone, Copy)]
+struct Ink {
+    from: (f64, f64),
+    to: (f64, f64),
+    cost: f64,
+}
+
 /// Keeps what is taken.
 #[derive(Debug, Clone)]
 pub struct Placer {
     frame: Rect,
     taken: Vec<Rect>,
-    ink: Vec<((f64, f64), (f64, f64), f64)>,
+    /// Those of `taken` that are words, which a leader must not strike through.
+    words: Vec<Rect>,
+    ink: Vec<Ink>,
 }
 
 impl Placer {
     /// An empty frame no label may leave.
     #[must_use]
     pub const fn new(frame: Rect) -> Placer {
-        Placer { frame, taken: Vec::new(), ink: Vec::new() }
+        Placer { frame, taken: Vec::new(), words: Vec::new(), ink: Vec::new() }
     }
 
     /// Takes a box that no label may touch.
@@ -160,7 +170,7 @@ impl Placer {
     /// under a label costs `cost`.
     pub fn avoid(&mut self, points: &[(f64, f64)], cost: f64) {
         for w in points.windows(2) {
-            self.ink.push((w[0], w[1], cost));
+            self.ink.push(Ink { from: w[0], to: w[1], cost });
         }
     }
 
@@ -178,6 +188,17 @@ impl Placer {
 
     /// Gives the text the best of its places and takes it, or `None`.
     pub fn place(&mut self, words: &Words<'_>, places: &[Place]) -> Option<Place> {
+        self.place_led(words, places, None)
+    }
+
+    /// The same for a text that may be led to: `led` is a point, the pixels a leader
+    /// keeps off it, and the distance up to which none is needed.
+    fn place_led(
+        &mut self,
+        words: &Words<'_>,
+        places: &[Place],
+        led: Option<((f64, f64), f64, f64)>,
+    ) -> Option<Place> {
         if words.text.is_empty() {
             return None;
         }
@@ -188,15 +209,38 @@ impl Placer {
                 continue;
             }
             let crossed: f64 =
-                self.ink.iter().map(|(a, b, cost)| rect.length_inside(*a, *b) * cost).sum();
+                self.ink.iter().map(|i| rect.length_inside(i.from, i.to) * i.cost).sum();
+            // A leader through other words is worse than a long way.
+            let struck: f64 = led
+                .and_then(|(at, start, near)| leader(at, start, near, &rect))
+                .map_or(0.0, |(a, b)| self.words.iter().map(|w| w.length_inside(a, b)).sum());
             // A later place is a little worse, so that the first good one wins.
-            let cost = crossed + order as f64 * 0.5;
+            let cost = crossed + struck * 10.0 + order as f64 * 0.5;
             if best.as_ref().is_none_or(|(least, ..)| cost < *least) {
                 best = Some((cost, *place, rect));
             }
         }
         let (_, place, rect) = best?;
         self.taken.push(rect);
+        self.words.push(rect);
+        Some(place)
+    }
+
+    /// Places and writes a text about a point, with a leader (class `d-leader`)
+    /// where it had to go farther than `near`.
+    pub fn write_led(
+        &mut self,
+        svg: &mut Svg,
+        words: &Words<'_>,
+        places: &[Place],
+        (at, start, near): ((f64, f64), f64, f64),
+    ) -> Option<Place> {
+        let place = self.place_led(words, places, Some((at, start, near)))?;
+        if let Some((from, to)) = leader(at, start, near, &text_box(words, &place)) {
+            svg.line("d-leader", from, to);
+            self.avoid(&[from, to], 3.0);
+        }
+        svg.text(words.class, (place.x, place.y), place.anchor, words.size, words.text);
         Some(place)
     }
 
@@ -335,10 +379,15 @@ mod tests {
 
     #[test]
     fn a_line_is_measured_inside_a_box() {
-        assert_eq!(FRAME.length_inside((-50.0, 50.0), (50.0, 50.0)), 50.0);
-        assert_eq!(FRAME.length_inside((0.0, 150.0), (200.0, 150.0)), 0.0);
-        assert_eq!(FRAME.length_inside((10.0, -10.0), (10.0, 200.0)), 100.0);
-        assert_eq!(FRAME.length_inside((10.0, 10.0), (13.0, 14.0)), 5.0);
+        let cases = [
+            ((-50.0, 50.0), (50.0, 50.0), 50.0),
+            ((0.0, 150.0), (200.0, 150.0), 0.0),
+            ((10.0, -10.0), (10.0, 200.0), 100.0),
+            ((10.0, 10.0), (13.0, 14.0), 5.0),
+        ];
+        for (a, b, length) in cases {
+            assert!((FRAME.length_inside(a, b) - length).abs() < 1e-9, "{a:?} {b:?}");
+        }
     }
 
     #[test]
@@ -346,8 +395,22 @@ mod tests {
         let line = [(0.0, 50.0), (200.0, 30.0)];
         for place in along(&line, &words("grade line"), 3.0, &[0.0, 0.5, 1.0], false) {
             let rect = text_box(&words("grade line"), &place);
-            assert_eq!(rect.length_inside(line[0], line[1]), 0.0);
+            assert!(rect.length_inside(line[0], line[1]) < 1e-9);
         }
+    }
+
+    #[test]
+    fn a_leader_goes_round_other_words() {
+        let mut placer = Placer::new(FRAME);
+        let first = Place { x: 60.0, y: 50.0, anchor: Anchor::Start };
+        placer.place(&words("in between"), &[first]);
+        let behind = Place { x: 150.0, y: 50.0, anchor: Anchor::Start };
+        let above = Place { x: 60.0, y: 20.0, anchor: Anchor::Start };
+        let mut svg = Svg::new();
+        let led = ((10.0, 46.0), 4.0, 20.0);
+        let got = placer.write_led(&mut svg, &words("far"), &[behind, above], led);
+        assert_eq!(got, Some(above));
+        assert!(svg.finish().contains("d-leader"));
     }
 
     proptest! {

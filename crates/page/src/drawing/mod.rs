@@ -93,6 +93,11 @@ impl Size {
     }
 }
 
+/// Whether a length is under `least`, or no number at all.
+fn under(length: f64, least: f64) -> bool {
+    length.is_nan() || length < least
+}
+
 /// What a check came to, as a drawing needs to know it.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default)]
 pub enum Verdict {

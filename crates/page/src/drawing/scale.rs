@@ -92,7 +92,7 @@ mod tests {
         assert_eq!(s.px(20.0), Some(200.0));
         assert_eq!(s.px(120.0), Some(10.0));
         assert_eq!(s.px(70.0), Some(105.0));
-        assert_eq!(s.px_per_unit(), 1.9);
+        assert!((s.px_per_unit() - 1.9).abs() < 1e-12);
     }
 
     #[test]

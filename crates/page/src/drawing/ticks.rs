@@ -48,7 +48,7 @@ pub fn linear_ticks(from: f64, to: f64, most: usize, factor: f64) -> Vec<Tick> {
     let (low, high) = if from <= to { (from, to) } else { (to, from) };
     let (low, high) = (low * factor, high * factor);
     let span = high - low;
-    if most == 0 || !(factor > 0.0) || !(span > 0.0 && span.is_finite()) {
+    if most == 0 || factor.is_nan() || factor <= 0.0 || !(span > 0.0 && span.is_finite()) {
         return Vec::new();
     }
     // Too fine for the numbers themselves: 1e12 +- 1e-6.

@@ -3,7 +3,7 @@
 use super::super::label::{Rect, text_width};
 use super::super::scale::Scale;
 use super::super::ticks::{Tick, linear_ticks};
-use super::super::{DrawingError, NumberFormat, PX_PER_MM, Size};
+use super::super::{DrawingError, NumberFormat, PX_PER_MM, Size, under};
 use super::{LongSection, plain};
 
 /// The scale of a print: 1 to these numbers.
@@ -53,7 +53,7 @@ impl Layout {
         let band_top = band_bottom - band_height;
         let floor = band_top - text * 0.6;
         let roof = text * if section.level_unit.is_empty() { 0.8 } else { 1.7 };
-        if !(floor - roof > text * 3.0) {
+        if under(floor - roof, text * 3.0) {
             return Err(no_room);
         }
 
@@ -66,7 +66,7 @@ impl Layout {
         let widest = ticks.iter().map(|t| text_width(&t.1, text, false)).fold(text, f64::max);
         let left = widest + text * 1.0;
         let right = size.width - text * 0.9;
-        if !(right - left > text * 6.0) {
+        if under(right - left, text * 6.0) {
             return Err(no_room);
         }
 

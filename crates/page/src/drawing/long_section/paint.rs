@@ -1,8 +1,8 @@
 //! The drawing itself, from the back to the front.
 
-use super::super::label::{Placer, Rect, Words, along, around, leader, text_box, text_width};
+use super::super::label::{Placer, Rect, Words, along, around, text_box, text_width};
 use super::super::svg::{Anchor, Path, Svg};
-use super::super::{Verdict, hatch, polyline};
+use super::super::{Verdict, hatch, polyline, under};
 use super::layout::Layout;
 use super::{LongSection, StretchBand, glyph, plain};
 
@@ -67,6 +67,7 @@ impl Painter<'_> {
                 continue;
             }
             self.svg.line("d-grid", (field.x0, y), (field.x1, y));
+            self.placer.avoid(&[(field.x0, y), (field.x1, y)], 0.02);
             let at = (field.x0 - text * 0.5, y + text * 0.36);
             self.svg.text("d-text d-soft", at, Anchor::End, text, label);
         }
@@ -234,7 +235,7 @@ impl Painter<'_> {
         let b = side(4.0).unwrap_or((x, y));
         let (dx, dy) = (b.0 - a.0, b.1 - a.1);
         let length = (dx * dx + dy * dy).sqrt();
-        if !(length > 0.0) {
+        if under(length, 1e-6) {
             return;
         }
         let half = width / 2.0 + self.text * 0.55;
@@ -273,10 +274,10 @@ impl Painter<'_> {
             x1: size.width,
             y1: size.height,
         });
-        if let Some(lowest) = &section.lowest {
-            if let Some(at) = self.layout.px((lowest.x, lowest.y)) {
-                self.point_label(&lowest.label, "d-text d-halo", at, self.text);
-            }
+        if let Some(lowest) = &section.lowest
+            && let Some(at) = self.layout.px((lowest.x, lowest.y))
+        {
+            self.point_label(&lowest.label, "d-text d-halo", at, self.text);
         }
         self.sub_atmospheric_label();
         if let Some(grade) = &section.grade {
@@ -328,13 +329,8 @@ impl Painter<'_> {
     fn point_label(&mut self, text: &str, class: &str, at: (f64, f64), gap: f64) {
         let words = self.words(text, class);
         let places = around(at.0, at.1, gap, self.text);
-        let placed = self.placer.write(&mut self.svg, &words, &places);
-        if let Some(place) = placed {
-            let line = leader(at, self.text * 0.5, gap * 1.6, &text_box(&words, &place));
-            if let Some((from, to)) = line {
-                self.svg.line("d-leader", from, to);
-            }
-        }
+        let led = (at, self.text * 0.5, gap * 1.6);
+        let placed = self.placer.write_led(&mut self.svg, &words, &places, led);
         self.tell_if_left_out(text, placed.is_some());
     }
 
@@ -347,9 +343,14 @@ impl Painter<'_> {
         shares: &[f64],
     ) {
         let words = self.words(text, class);
-        let mut places = along(line, &words, 2.0, shares, below_first);
-        places.extend(along(line, &words, self.text, shares, below_first));
-        let placed = self.placer.write(&mut self.svg, &words, &places);
+        // Farther off only when there is no room at the line itself: a label must
+        // not seem to name the next line.
+        let near = along(line, &words, 2.0, shares, below_first);
+        let far = along(line, &words, self.text * 0.7, shares, below_first);
+        let placed = self
+            .placer
+            .write(&mut self.svg, &words, &near)
+            .or_else(|| self.placer.write(&mut self.svg, &words, &far));
         self.tell_if_left_out(text, placed.is_some());
     }
 

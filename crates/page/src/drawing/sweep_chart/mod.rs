@@ -14,7 +14,7 @@ mod paint;
 use super::label::Rect;
 use super::scale::Scale;
 use super::ticks::{Tick, logarithmic_ticks};
-use super::{DrawingError, NumberFormat, Picture, Size, Verdict};
+use super::{DrawingError, NumberFormat, Picture, Size, Verdict, under};
 
 /// One pipe.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -243,7 +243,7 @@ impl Layout {
         let roof = text * if chart.words.loss.is_empty() { 1.0 } else { 2.1 };
         let bore_baseline = size.height - key.height - text * 0.5;
         let floor = bore_baseline - text * 1.25;
-        if !(floor - roof > text * 4.0) {
+        if under(floor - roof, text * 4.0) {
             return Err(no_room);
         }
         let most = how_many(floor - roof, text * 2.2, 10).max(2);
@@ -256,7 +256,7 @@ impl Layout {
             .map(|t| super::label::text_width(&t.1, text, false))
             .fold(text, f64::max);
         let left = widest + text;
-        if !(right - left > text * 8.0) {
+        if under(right - left, text * 8.0) {
             return Err(no_room);
         }
         let most = how_many(right - left, text * 3.0, 14).max(2);
@@ -298,7 +298,7 @@ fn ranges(chart: &SweepChart) -> Option<Ranges> {
         widen(&mut bores, p.bore);
         widen(&mut losses, p.loss_share);
     }
-    if !(bores.1 > 0.0) {
+    if bores.1 <= 0.0 {
         return None;
     }
     for limit in chart.cap.iter().chain(&chart.greatest_power) {

@@ -1,7 +1,7 @@
 //! The chart itself, from the back to the front.
 
 use super::super::Verdict;
-use super::super::label::{Place, Placer, Rect, Words, around, leader, text_box, text_width};
+use super::super::label::{Place, Placer, Rect, Words, around, text_box, text_width};
 use super::super::shape::Shape;
 use super::super::svg::{Anchor, Path, Svg};
 use super::key::Sign;
@@ -245,12 +245,9 @@ impl Painter<'_> {
             let w = Words { text: &words.chosen, size: self.text, strong: true, class };
             let mut places = around(at.0, at.1, self.text * 1.5, self.text);
             places.extend(around(at.0, at.1, self.text * 3.0, self.text));
-            if let Some(place) = self.write(&w, &places) {
-                let label = text_box(&w, &place);
-                if let Some((from, to)) = leader(at, self.text * 1.05, self.text * 2.2, &label) {
-                    self.svg.line("d-leader", from, to);
-                }
-            }
+            let led = (at, self.text * 1.05, self.text * 2.2);
+            let placed = self.placer.write_led(&mut self.svg, &w, &places, led);
+            self.tell_if_left_out(&w, placed);
         }
         if let Some(cap) = &self.chart.cap {
             self.limit_label(cap, "d-text d-strong d-halo", true);
@@ -260,12 +257,15 @@ impl Painter<'_> {
         }
     }
 
-    fn write(&mut self, words: &Words<'_>, places: &[Place]) -> Option<Place> {
+    fn write(&mut self, words: &Words<'_>, places: &[Place]) {
         let placed = self.placer.write(&mut self.svg, words, places);
+        self.tell_if_left_out(words, placed);
+    }
+
+    fn tell_if_left_out(&mut self, words: &Words<'_>, placed: Option<Place>) {
         if placed.is_none() && !words.text.is_empty() {
             self.left_out.push(words.text.to_owned());
         }
-        placed
     }
 
     /// At the line's right end if it can be, else along it; over it or under it.
