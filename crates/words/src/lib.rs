@@ -10,11 +10,23 @@
 //! The messages stand in `messages/`, one file per language; the build checks
 //! them against one another and turns them into [`Key`] and [`text`].
 
+mod about;
+mod caution;
+mod field;
+mod file;
 pub mod language;
+mod name;
 mod number;
 pub mod text;
+mod trouble;
+mod verdict;
+mod why;
+mod working;
 
+pub use about::About;
+pub use caution::CautionText;
 pub use language::{Language, decimal_mark};
+pub use name::{Named, capital};
 pub use text::Key;
 
 use workbook::reading::DecimalMark;

@@ -1,0 +1,148 @@
+//! Entries in words: label, what to enter, and why one cannot be used.
+
+use crate::Words;
+use crate::text::{self, Key};
+use workbook::entry::EntryTrouble;
+use workbook::field::{Field, OwnField};
+use workbook::measure::Measure;
+use workbook::reading::Unreadable;
+use workbook::units::Kind;
+
+/// Label, and what to enter where no figure is filled in.
+fn keys(field: Field) -> (Key, Option<Key>) {
+    let (label, hint) = match field {
+        Field::DesignFlow => (Key::FIELD_DESIGN_FLOW, Key::HINT_DESIGN_FLOW),
+        Field::ForebayHighest => (Key::FIELD_FOREBAY_HIGHEST, Key::HINT_FOREBAY_HIGHEST),
+        Field::ForebayNormal => (Key::FIELD_FOREBAY_NORMAL, Key::HINT_FOREBAY_NORMAL),
+        Field::ForebayLowest => (Key::FIELD_FOREBAY_LOWEST, Key::HINT_FOREBAY_LOWEST),
+        Field::JetAxis => (Key::FIELD_JET_AXIS, Key::HINT_JET_AXIS),
+        Field::TailLevel => (Key::FIELD_TAIL, Key::HINT_TAIL),
+        Field::GaugeLevel => (Key::FIELD_GAUGE, Key::HINT_GAUGE),
+        Field::Altitude => (Key::FIELD_ALTITUDE, Key::HINT_ALTITUDE),
+        Field::ColdestWater => (Key::FIELD_COLDEST_WATER, Key::HINT_COLDEST_WATER),
+        Field::WarmestWater => (Key::FIELD_WARMEST_WATER, Key::HINT_WARMEST_WATER),
+        Field::ColdestWall => (Key::FIELD_COLDEST_WALL, Key::HINT_COLDEST_WALL),
+        Field::WarmestWall => (Key::FIELD_WARMEST_WALL, Key::HINT_WARMEST_WALL),
+        Field::StationDistance(_) => (Key::FIELD_STATION_DISTANCE, Key::HINT_STATION_DISTANCE),
+        Field::StationLevel(_) => (Key::FIELD_STATION_LEVEL, Key::HINT_STATION_LEVEL),
+        Field::StretchCover(_) => (Key::FIELD_STRETCH_COVER, Key::HINT_STRETCH_COVER),
+        Field::FittingCount(_) => (Key::FIELD_FITTING_COUNT, Key::HINT_FITTING_COUNT),
+        Field::FittingAngle(_) => (Key::FIELD_FITTING_ANGLE, Key::HINT_FITTING_ANGLE),
+        Field::FittingRadius(_) => (Key::FIELD_FITTING_RADIUS, Key::HINT_FITTING_RADIUS),
+        Field::FittingOpening(_) => (Key::FIELD_FITTING_OPENING, Key::HINT_FITTING_OPENING),
+        Field::FittingK(_) => (Key::FIELD_FITTING_K, Key::HINT_FITTING_K),
+        Field::FittingRating(_) => (Key::FIELD_FITTING_RATING, Key::HINT_FITTING_RATING),
+        Field::Own(_, own) => own_keys(own),
+        Field::JetCount => (Key::FIELD_JET_COUNT, Key::HINT_JET_COUNT),
+        Field::JetBore => (Key::FIELD_JET_BORE, Key::HINT_JET_BORE),
+        Field::JetVelocityCoefficient => return (Key::FIELD_JET_CV, None),
+        Field::JetContraction => return (Key::FIELD_JET_CONTRACTION, None),
+        Field::BranchK => (Key::FIELD_BRANCH_K, Key::HINT_BRANCH_K),
+        Field::BranchBore => (Key::FIELD_BRANCH_BORE, Key::HINT_BRANCH_BORE),
+        Field::JetRating => (Key::FIELD_JET_RATING, Key::HINT_JET_RATING),
+        Field::Price(_) => (Key::FIELD_PRICE, Key::HINT_PRICE),
+        Field::TightMargin => (Key::FIELD_TIGHT_MARGIN, Key::HINT_TIGHT_MARGIN),
+        Field::LossCap => (Key::FIELD_LOSS_CAP, Key::HINT_LOSS_CAP),
+        Field::VelocityHigh => (Key::FIELD_VELOCITY_HIGH, Key::HINT_VELOCITY_HIGH),
+        Field::CollapseSafety => (Key::FIELD_COLLAPSE_SAFETY, Key::HINT_COLLAPSE_SAFETY),
+        Field::Spare => (Key::FIELD_SPARE, Key::HINT_SPARE),
+    };
+    (label, Some(hint))
+}
+
+fn own_keys(own: OwnField) -> (Key, Key) {
+    match own {
+        OwnField::OutsideDiameter => (Key::FIELD_OWN_OUTSIDE, Key::HINT_OWN_OUTSIDE),
+        OwnField::Wall => (Key::FIELD_OWN_WALL, Key::HINT_OWN_WALL),
+        OwnField::Rating => (Key::FIELD_OWN_RATING, Key::HINT_OWN_RATING),
+        OwnField::RatingTemperature => (
+            Key::FIELD_OWN_RATING_TEMPERATURE,
+            Key::HINT_OWN_RATING_TEMPERATURE,
+        ),
+        OwnField::Yield => (Key::FIELD_OWN_YIELD, Key::HINT_OWN_YIELD),
+        OwnField::Tensile => (Key::FIELD_OWN_TENSILE, Key::HINT_OWN_TENSILE),
+        OwnField::JointFactor => (Key::FIELD_OWN_JOINT, Key::HINT_OWN_JOINT),
+        OwnField::Corrosion => (Key::FIELD_OWN_CORROSION, Key::HINT_OWN_CORROSION),
+        OwnField::MillTolerance => (Key::FIELD_OWN_MILL, Key::HINT_OWN_MILL),
+        OwnField::RoughnessNew => (Key::FIELD_OWN_ROUGHNESS_NEW, Key::HINT_OWN_ROUGHNESS_NEW),
+        OwnField::RoughnessAged => (Key::FIELD_OWN_ROUGHNESS_AGED, Key::HINT_OWN_ROUGHNESS_AGED),
+        OwnField::ModulusShort => (Key::FIELD_OWN_MODULUS_SHORT, Key::HINT_OWN_MODULUS_SHORT),
+        OwnField::ModulusLong => (Key::FIELD_OWN_MODULUS_LONG, Key::HINT_OWN_MODULUS_LONG),
+        OwnField::SupplyLength => (Key::FIELD_OWN_SUPPLY, Key::HINT_OWN_SUPPLY),
+    }
+}
+
+impl Words {
+    /// The label above a field: short, without its place.
+    #[must_use]
+    pub fn field_label(self, field: Field) -> &'static str {
+        self.say(keys(field).0)
+    }
+
+    /// What to enter there, in a sentence or two.
+    #[must_use]
+    pub fn field_hint(self, field: Field) -> String {
+        let number = |x: f64| self.figure(Measure::number(x));
+        match (field, keys(field).1) {
+            (_, Some(hint)) => self.say(hint).to_owned(),
+            (Field::JetContraction, None) => text::hint_jet_contraction(self, &number(0.6)),
+            (_, None) => text::hint_jet_cv(self, &number(0.97), &number(0.98)),
+        }
+    }
+
+    /// What stands in while a field is empty: "Left empty: 5 °C (common
+    /// practice)."; none where nothing does.
+    #[must_use]
+    pub fn field_preset(self, field: Field) -> Option<String> {
+        let preset = field.preset()?;
+        let value = self.full(Measure::new(preset.value, field.kind()));
+        Some(text::hint_preset(self, &value, &self.source(preset.source)))
+    }
+
+    /// Why an entry cannot be used, and what to type instead.
+    #[must_use]
+    pub fn entry_trouble(self, field: Field, trouble: &EntryTrouble) -> String {
+        let kind = field.kind();
+        let full = |x: f64| self.full(Measure::new(x, kind));
+        match trouble {
+            EntryTrouble::Unreadable(why) => self.unreadable(kind, why),
+            EntryTrouble::Unit { unit } => text::entry_unit(self, unit, self.name(kind)),
+            EntryTrouble::Disagrees { text, kept } => {
+                text::entry_disagrees(self, &full(*text), &full(*kept))
+            }
+            EntryTrouble::OutOfRange { value, least, most } => {
+                text::entry_out_of_range(self, &full(*value), &full(*least), &full(*most))
+            }
+            EntryTrouble::NotWhole { value } => text::entry_not_whole(self, &full(*value)),
+            _ => self.say(Key::ENTRY_UNUSABLE).to_owned(),
+        }
+    }
+
+    /// Why a text does not read as a number of its kind.
+    #[must_use]
+    pub fn unreadable(self, kind: Kind, why: &Unreadable) -> String {
+        let number = |x: f64| self.figure(Measure::number(x));
+        match why {
+            Unreadable::NotANumber => text::entry_not_a_number(self, &number(12.5)),
+            Unreadable::UnknownUnit { unit } => {
+                let known: Vec<&str> = kind
+                    .units()
+                    .iter()
+                    .map(|u| u.symbol)
+                    .filter(|s| !s.is_empty())
+                    .collect();
+                if known.is_empty() {
+                    text::entry_no_unit(self, unit)
+                } else {
+                    text::entry_unknown_unit(self, unit, self.name(kind), &known.join(", "))
+                }
+            }
+            // Without grouping, as it is to be typed.
+            Unreadable::Marks => text::entry_marks(self, &self.ungrouped(1234.5)),
+            Unreadable::OutOfRange => self.say(Key::ENTRY_TOO_LARGE).to_owned(),
+            Unreadable::Negative => self.say(Key::ENTRY_NEGATIVE).to_owned(),
+            Unreadable::PlusMinus => text::entry_plus_minus(self, &number(0.5)),
+            _ => self.say(Key::ENTRY_UNUSABLE).to_owned(),
+        }
+    }
+}
