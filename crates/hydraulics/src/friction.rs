@@ -23,6 +23,6 @@ pub use factor::{
     factor_si, laminar, reynolds_number,
 };
 pub use law::{
-    Friction, FrictionLaw, HAZEN_WILLIAMS_RANGE, MANNING_RANGE, equivalent_hazen_williams,
-    equivalent_manning, equivalent_roughness,
+    BORE_RANGE_M, Friction, FrictionLaw, HAZEN_WILLIAMS_RANGE, MANNING_RANGE,
+    equivalent_hazen_williams, equivalent_manning, equivalent_roughness,
 };

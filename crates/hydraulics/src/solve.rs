@@ -39,6 +39,9 @@ pub enum Stop {
     Narrow,
     /// The evaluations ran out: the root lies in the bracket, less closely.
     Evaluations,
+    /// The function gave a value that is not finite: the root lies in the
+    /// bracket, no nearer than the best point before.
+    NotFinite,
     /// The answer has a closed form: nothing was searched.
     ClosedForm,
 }
@@ -148,8 +151,8 @@ impl Bracket {
     /// Chandrupatla 1997 (Advances in Engineering Software 28, 145-149):
     /// inverse quadratic interpolation where the last three points promise it,
     /// bisection otherwise. The change of sign is an invariant, so the root
-    /// never leaves the bracket. A value that is not finite counts as a sign
-    /// to bisect towards the end that is finite.
+    /// never leaves the bracket. A value that is not finite ends the search
+    /// ([`Stop::NotFinite`]).
     ///
     /// # Example
     /// ```
@@ -170,23 +173,23 @@ impl Bracket {
             } else {
                 (b, fb)
             };
-            let done = |stop| Solution {
+            let done = |stop, iterations| Solution {
                 root,
                 residual,
                 iterations,
                 stop,
             };
             if residual.abs() <= 0.0 {
-                return done(Stop::Exact);
+                return done(Stop::Exact, iterations);
             }
             let width = (b - a).abs();
             let allowed = tolerance.relative * root.abs() + tolerance.absolute;
             // Below two units in the last place nothing lies between.
             if width <= allowed.max(2.0 * f64::EPSILON * root.abs()) {
-                return done(Stop::Narrow);
+                return done(Stop::Narrow, iterations);
             }
             if iterations >= tolerance.evaluations {
-                return done(Stop::Evaluations);
+                return done(Stop::Evaluations, iterations);
             }
             let least = (0.5 * allowed / width).min(0.5);
             let step = share.clamp(least, 1.0 - least);
@@ -194,15 +197,7 @@ impl Bracket {
             let fx = function(x);
             iterations += 1;
             if !fx.is_finite() {
-                // Cannot be interpolated: give it the sign of the end that
-                // lies nearer, and bisect.
-                share = 0.5;
-                if step < 0.5 {
-                    a = x;
-                } else {
-                    b = x;
-                }
-                continue;
+                return done(Stop::NotFinite, iterations);
             }
             let (c, fc);
             if (fx > 0.0) == (fa > 0.0) {
@@ -270,6 +265,13 @@ mod tests {
             assert!((found.root - root).abs() < 1e-5, "{found:?}");
             assert_ne!(found.stop, Stop::Evaluations);
         }
+    }
+
+    #[test]
+    fn a_value_that_is_not_finite_ends_the_search() {
+        let found = solve(-1.0, 2.0, |x| if x.abs() < 0.9 { f64::NAN } else { x });
+        assert_eq!(found.stop, Stop::NotFinite);
+        assert!(found.root.is_finite() && found.residual.is_finite());
     }
 
     proptest! {

@@ -22,14 +22,16 @@ pub const GREATEST_REYNOLDS: f64 = 1e9;
 #[derive(Debug, Clone, Copy, PartialEq)]
 #[non_exhaustive]
 pub enum FrictionError {
-    /// The Reynolds number is not above 0 (or above zero and at most 1e9).
+    /// The Reynolds number is not above 0 and at most 1e9
+    /// ([`GREATEST_REYNOLDS`]).
     Reynolds(f64),
     /// The relative roughness lies outside 0..=0.1
     /// ([`GREATEST_RELATIVE_ROUGHNESS`]).
     RelativeRoughness(f64),
     /// The Darcy factor is not a positive number.
     Factor(f64),
-    /// The bore is not a positive length.
+    /// The bore is not a positive length, or (for a friction law) lies outside
+    /// [`super::BORE_RANGE_M`].
     Bore(Length),
     /// The velocity is not a speed from zero up.
     Velocity(Velocity),
@@ -70,7 +72,7 @@ impl core::fmt::Display for FrictionError {
                 "relative roughness {value} lies outside 0 to {GREATEST_RELATIVE_ROUGHNESS}"
             ),
             Self::Factor(value) => write!(f, "friction factor {value} is not above 0"),
-            Self::Bore(bore) => write!(f, "bore {} m is not above 0", bore.get::<meter>()),
+            Self::Bore(bore) => write!(f, "bore {} m is out of range", bore.get::<meter>()),
             Self::Velocity(value) => {
                 write!(
                     f,

@@ -20,6 +20,11 @@ pub const HAZEN_WILLIAMS_RANGE: (f64, f64) = (40.0, 160.0);
 /// (Chow, Open-Channel Hydraulics, 1959, Table 5-6: 0.008 to 0.030).
 pub const MANNING_RANGE: (f64, f64) = (0.007, 0.035);
 
+/// Bores accepted, m: from a hair to a tunnel.
+pub const BORE_RANGE_M: (f64, f64) = (1e-6, 100.0);
+/// Reynolds number below which water stands still, so that nothing underflows.
+const STILL: f64 = 1e-100;
+
 /// Factor of the Hazen-Williams formula in SI units: 1.318 x 0.3048^0.37 of
 /// its first form in feet (Williams and Hazen, Hydraulic Tables, 1905).
 const HAZEN_WILLIAMS_SI: f64 = 0.849_1;
@@ -68,7 +73,7 @@ impl FrictionLaw {
     /// The number that lies outside its range.
     pub fn check(&self, bore: Length) -> Result<(), FrictionError> {
         let d = bore.get::<meter>();
-        if !(d > 0.0 && d.is_finite()) {
+        if !(BORE_RANGE_M.0..=BORE_RANGE_M.1).contains(&d) {
             return Err(FrictionError::Bore(bore));
         }
         match *self {
@@ -135,7 +140,7 @@ impl FrictionLaw {
 
     /// Kernel of [`Self::head_gradient`] on checked SI numbers.
     pub(crate) fn friction_si(&self, velocity: f64, d: f64, reynolds: f64, g: f64) -> Friction {
-        if velocity <= 0.0 || reynolds <= 0.0 {
+        if velocity <= 0.0 || reynolds <= STILL {
             return Friction {
                 gradient: 0.0,
                 velocity: 0.0,
@@ -328,6 +333,9 @@ mod tests {
             assert_eq!(friction.regime, Regime::Still);
             assert_eq!(friction.factor, None);
             assert!(friction.gradient.abs() < f64::MIN_POSITIVE);
+            // Nor does a flow too small to square.
+            let drop = gradient(law, 1e-310, 0.1);
+            assert!(drop.gradient.abs() < f64::MIN_POSITIVE);
         }
     }
 

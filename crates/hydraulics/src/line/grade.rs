@@ -105,7 +105,8 @@ impl Line {
     ///
     /// # Errors
     /// [`LineError::Flow`] for a negative flow; [`LineError::Run`] when the
-    /// Reynolds number in a run is beyond 1e9.
+    /// Reynolds number in a run is beyond 1e9;
+    /// [`LineError::LossBeyondCounting`] for absurd local losses.
     pub fn grade(&self, flow: VolumeRate) -> Result<Grade, LineError> {
         let q = flow.get::<cubic_meter_per_second>();
         if !(q >= 0.0 && q.is_finite()) {
@@ -127,6 +128,9 @@ impl Line {
         let friction_loss = sum(runs.iter().map(|run| run.friction_loss));
         let local_loss = sum(runs.iter().map(|run| run.local_loss + run.reducer_loss));
         let foot = nodes.last().map_or(self.spec.forebay, |node| node.energy);
+        if !foot.m().is_finite() {
+            return Err(LineError::LossBeyondCounting(flow));
+        }
         let residual = (self.spec.forebay - foot) - friction_loss - local_loss;
         Ok(Grade {
             flow,

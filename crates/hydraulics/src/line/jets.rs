@@ -4,7 +4,7 @@ use super::grade::Grade;
 use super::layout::Line;
 use super::spec::LineError;
 use crate::math;
-use crate::nozzle::{Nozzle, bore_for_flow, check_coefficients, jet_power};
+use crate::nozzle::{Nozzle, NozzleError, bore_for_flow, check_coefficients, jet_power};
 use crate::quantity::{GaugePressure, Head, Length, Level, Power, Velocity, VolumeRate};
 use crate::solve::{Bracket, Solution, Stop, Tolerance};
 use uom::si::area::square_meter;
@@ -137,11 +137,50 @@ impl Line {
     /// A set that cannot be used ([`LineError::NoNozzle`],
     /// [`LineError::Branch`], [`LineError::NozzleWiderThanBranch`]), or no head
     /// above the jet axis ([`LineError::NoHead`]).
+    ///
+    /// # Example
+    /// ```
+    /// use hydraulics::constants::standard_gravity;
+    /// use hydraulics::friction::FrictionLaw;
+    /// use hydraulics::line::{Line, LineSpec, NozzleTemplate, Point, Run};
+    /// use hydraulics::quantity::{Length, Level, PipeLength, ThermodynamicTemperature, unit};
+    /// use hydraulics::water::Water;
+    ///
+    /// let mm = Length::new::<unit::length::millimeter>;
+    /// let celsius = ThermodynamicTemperature::new::<unit::thermodynamic_temperature::degree_celsius>;
+    /// let line = Line::new(LineSpec {
+    ///     forebay: Level::from_m(160.0),
+    ///     points: vec![
+    ///         Point { chainage: PipeLength::from_m(0.0), level: Level::from_m(158.0) },
+    ///         Point { chainage: PipeLength::from_m(400.0), level: Level::from_m(100.0) },
+    ///     ],
+    ///     runs: vec![Run {
+    ///         to: PipeLength::from_m(400.0),
+    ///         bore: mm(150.0),
+    ///         friction: FrictionLaw::ColebrookWhite { roughness: mm(0.05) },
+    ///     }],
+    ///     losses: vec![],
+    ///     water: Water::at(celsius(10.0))?,
+    ///     gravity: standard_gravity(),
+    /// })?;
+    /// let template = NozzleTemplate {
+    ///     count: 2,
+    ///     velocity_coefficient: 0.97,
+    ///     contraction_coefficient: 1.0,
+    ///     axis: Level::from_m(101.0),
+    ///     branch_k: 0.5,
+    ///     branch_bore: mm(80.0),
+    /// };
+    /// let solved = line.flow_for(&template.set(mm(25.0))?)?;
+    /// let back = line.bore_for(solved.grade.flow, &template)?;
+    /// assert!((back.bore.get::<unit::length::millimeter>() - 25.0).abs() < 1e-9);
+    /// # Ok::<(), Box<dyn std::error::Error>>(())
+    /// ```
     pub fn flow_for(&self, set: &NozzleSet) -> Result<Solved, LineError> {
         let branch = Branch::new(set.branch_k, set.branch_bore)?;
-        if set.nozzles.is_empty() {
+        let Some(first) = set.nozzles.first() else {
             return Err(LineError::NoNozzle);
-        }
+        };
         for (index, nozzle) in set.nozzles.iter().enumerate() {
             if nozzle.bore() > set.branch_bore {
                 return Err(LineError::NozzleWiderThanBranch {
@@ -158,6 +197,9 @@ impl Line {
             .map(|nozzle| branch.conductance(nozzle))
             .sum();
         let resistance = 1.0 / (2.0 * self.gravity * conductance * conductance);
+        if !resistance.is_finite() {
+            return Err(LineError::Nozzle(NozzleError::Bore(first.bore())));
+        }
         let mut balance = |q: f64| gross - self.head_lost(q) - resistance * q * q;
         // A hair above the flow without losses, so that rounding cannot hide
         // the change of sign.

@@ -4,9 +4,10 @@ use super::spec::{LineError, LineSpec};
 use crate::fittings::{LossCoefficient, sudden_contraction, sudden_expansion};
 use crate::friction::{Friction, FrictionLaw};
 use crate::math;
-use crate::quantity::{Head, Length, Level, PipeLength};
+use crate::quantity::{Head, Length, Level, PipeLength, VolumeRate};
 use uom::si::acceleration::meter_per_second_squared;
 use uom::si::length::meter;
+use uom::si::volume_rate::cubic_meter_per_second;
 
 /// Places nearer to each other than this are one place, m: far below what is
 /// surveyed, far above rounding.
@@ -127,6 +128,25 @@ impl Line {
     pub fn length(&self) -> PipeLength {
         let last = self.runs.last().map_or(0.0, |run| run.to);
         PipeLength::from_m(last - self.start.chainage)
+    }
+
+    /// Head lost from the forebay to the foot at a given flow: what
+    /// [`Line::grade`] adds up, without its nodes.
+    ///
+    /// # Errors
+    /// [`LineError::Flow`] for a negative flow,
+    /// [`LineError::LossBeyondCounting`] for an absurd one.
+    pub fn head_loss(&self, flow: VolumeRate) -> Result<Head, LineError> {
+        let q = flow.get::<cubic_meter_per_second>();
+        if !(q >= 0.0 && q.is_finite()) {
+            return Err(LineError::Flow(flow));
+        }
+        let lost = self.head_lost(q);
+        if lost.is_finite() {
+            Ok(Head::from_m(lost))
+        } else {
+            Err(LineError::LossBeyondCounting(flow))
+        }
     }
 
     /// Friction in a run, flow in m3/s.
@@ -292,13 +312,13 @@ fn lay_out_losses(
             });
         }
         let bore = loss.bore.get::<meter>();
-        if !(bore > 0.0 && bore.is_finite()) {
+        let coefficient = per_flow_squared(loss.k, bore, gravity);
+        if !(bore > 0.0 && bore.is_finite() && coefficient.is_finite()) {
             return Err(LineError::LossBore {
                 loss: index,
                 bore: loss.bore,
             });
         }
-        let coefficient = per_flow_squared(loss.k, bore, gravity);
         if let Some(run) = runs.iter_mut().find(|run| at <= run.to + SAME_PLACE_M) {
             run.local += coefficient;
         }

@@ -132,7 +132,8 @@ pub enum LineError {
         /// Where it lies.
         at: PipeLength,
     },
-    /// A local loss has a bore that is not positive.
+    /// A local loss has a bore that is not positive, or so small that its loss
+    /// is beyond counting.
     LossBore {
         /// Index of the loss.
         loss: usize,
@@ -148,6 +149,8 @@ pub enum LineError {
     },
     /// The flow is negative or not finite.
     Flow(VolumeRate),
+    /// The head lost at this flow is beyond counting.
+    LossBeyondCounting(VolumeRate),
     /// There is no nozzle.
     NoNozzle,
     /// A nozzle is wider than the branch that leads to it.
@@ -244,6 +247,11 @@ impl core::fmt::Display for LineError {
             ),
             Self::Reducer { run, error } => write!(f, "reducer after run {run}: {error}"),
             Self::Flow(flow) => write!(f, "flow {} m3/s is below 0", flow_si(flow)),
+            Self::LossBeyondCounting(flow) => write!(
+                f,
+                "the head lost at {} m3/s is beyond counting",
+                flow_si(flow)
+            ),
             Self::NoNozzle => write!(f, "no nozzle is open"),
             Self::NozzleWiderThanBranch {
                 nozzle,

@@ -283,6 +283,43 @@ fn jets_are_refused_with_the_reason() {
 }
 
 #[test]
+fn nothing_but_numbers_comes_out() {
+    let absurd = |change: &dyn Fn(&mut LineSpec)| {
+        let mut spec = spec();
+        change(&mut spec);
+        Line::new(spec)
+    };
+    assert!(absurd(&|s| s.runs[0].bore = m(1e-200)).is_err());
+    assert!(absurd(&|s| s.losses[0].bore = m(1e-200)).is_err());
+    let choked = absurd(&|s| s.losses[0].k = LossCoefficient::new(1e306).unwrap()).unwrap();
+    assert!(matches!(
+        choked.grade(flow(5.0)),
+        Err(LineError::LossBeyondCounting(_))
+    ));
+    assert!(choked.head_loss(flow(5.0)).is_err());
+    assert!(matches!(
+        line().grade(flow(1e300)),
+        Err(LineError::Run { run: 0, .. })
+    ));
+    let hair = NozzleTemplate {
+        branch_k: 0.0,
+        ..template(1)
+    }
+    .set(m(1e-100))
+    .unwrap();
+    assert!(line().flow_for(&hair).is_err());
+    for value in [0.0, 1e-310, 1e-200, 1e-12] {
+        let grade = line().grade(flow(value)).unwrap();
+        assert!(
+            grade
+                .nodes
+                .iter()
+                .all(|node| node.pressure.pa().is_finite())
+        );
+    }
+}
+
+#[test]
 fn too_great_a_flow_comes_back_with_the_greatest() {
     let Err(LineError::FlowTooGreat { greatest, .. }) = line().bore_for(flow(5.0), &template(2))
     else {
@@ -367,6 +404,8 @@ proptest! {
         let lost = grade.friction_loss + grade.local_loss;
         prop_assert!((200.0 - lost.m() - foot.energy.m()).abs() < 1e-11);
         prop_assert!(grade.residual.m().abs() < 1e-11);
+        let short = line().head_loss(flow(value)).unwrap();
+        prop_assert!((short - lost).m().abs() < 1e-11);
         for node in &grade.nodes {
             let v = node.velocity.get::<meter_per_second>();
             prop_assert!((node.energy.m() - node.grade.m() - v * v / (2.0 * 9.80665)).abs() < 1e-10);

@@ -99,8 +99,9 @@ impl core::error::Error for WaveError {}
 /// # Equation
 /// With e the wall and D the bore, c = 2 e/D (1 + mu) + D/(D + e) c0, with
 /// c0 = 1 - mu/2 (upstream end), 1 - mu^2 (throughout), 1 (expansion joints).
-/// Source: Wylie and Streeter, Fluid Transients in Systems, 1993, equations
-/// 2-20 to 2-22 (from memory). For thin walls c tends to c0.
+/// That is Lame's thick cylinder exactly, for each of the three (a test derives
+/// it); in this form in Wylie and Streeter, Fluid Transients in Systems, 1993,
+/// section 2-2 (page from memory). For thin walls c tends to c0.
 ///
 /// # Errors
 /// A length that is not positive, Poisson's ratio outside 0..=0.5.
@@ -303,7 +304,33 @@ mod tests {
         assert!((give * 1e10 / 2.5 - 1.0).abs() < 1e-5);
     }
 
+    /// Growth of the bore's area over pressure, by Lame's thick cylinder: hoop
+    /// strain at the bore, twice.
+    fn lame(inner: f64, outer: f64, modulus: f64, mu: f64, restraint: Restraint) -> f64 {
+        let (i, o) = (inner * inner, outer * outer);
+        let hoop = (o + i) / (o - i);
+        let radial = -1.0;
+        let axial = match restraint {
+            Restraint::ExpansionJoints => 0.0,
+            // The end's pull, pressure times bore over wall.
+            Restraint::UpstreamEnd => i / (o - i),
+            // No axial strain.
+            Restraint::Throughout => mu * (hoop + radial),
+        };
+        2.0 * (hoop - mu * (radial + axial)) / modulus
+    }
+
     proptest! {
+        #[test]
+        fn the_factor_is_lames(share in 0.001..1.0_f64, mu in 0.0..0.5_f64) {
+            for restraint in [Restraint::UpstreamEnd, Restraint::Throughout, Restraint::ExpansionJoints] {
+                let pipe = PipeWall { restraint, ..wall(0.3, 0.3 * share, 1e9, mu) };
+                let ours = restraint_factor(&pipe).unwrap() * thin_compliance(&pipe).unwrap();
+                let exact = lame(0.15, 0.15 + 0.3 * share, 1e9, mu, restraint);
+                prop_assert!((ours / exact - 1.0).abs() < 1e-12);
+            }
+        }
+
         #[test]
         fn thicker_and_stiffer_walls_are_faster_and_air_slows(
             bore in 0.05..1.0_f64, share in 0.005..0.2_f64, modulus in 5e8..2.1e11_f64, mu in 0.2..0.5_f64,

@@ -133,6 +133,7 @@ fn fixed_key(id: &str) -> Option<&'static str> {
         "KSK-90_deg_elbow_standard" => "elbow-90-standard",
         "KSK-90_deg_elbow_long_radius" => "elbow-90-long-radius",
         "KSK-45_deg_elbow" => "elbow-45",
+        "KSK-return_bend_R_1.4_D" => "bend-180-return",
         "KSK-tee_line_flow" => "tee-line",
         "KSK-tee_branch_flow" => "tee-branch",
         "KSK-cross_line_flow" => "cross-line",
@@ -187,7 +188,6 @@ fn second_opinion(row: &Record) -> Option<f64> {
         return Some(mitre(row.input("angle_deg")));
     }
     Some(match id {
-        "KSK-return_bend_R_1.4_D" => bend(1.4, 180.0),
         "KMI-bend_R_D_1_90_deg" => bend(1.0, 90.0),
         "KMI-bend_R_D_1_45_deg" => bend(1.0, 45.0),
         "KMI-bend_R_D_1_30_deg" => bend(1.0, 30.0),

@@ -2,6 +2,12 @@
 //! and their sources lie in `data/hydraulics/`; every row of a file is used, or
 //! the test fails.
 
+#![expect(
+    clippy::unwrap_used,
+    clippy::panic,
+    reason = "helpers of tests, which the exception for test functions does not reach"
+)]
+
 mod fittings;
 mod friction;
 mod jets;
