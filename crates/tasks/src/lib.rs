@@ -40,3 +40,14 @@ pub fn run(arguments: &[String]) -> ExitCode {
         }
     }
 }
+
+/// Writes `sw.js` for the built page in `folder`, as the build does after
+/// checking that the page keeps to itself.
+///
+/// # Errors
+/// What is wrong, in words.
+pub fn write_service_worker(folder: &std::path::Path) -> Result<(), String> {
+    post_build::finish(folder)
+        .map(|_| ())
+        .map_err(|trouble| trouble.to_string())
+}

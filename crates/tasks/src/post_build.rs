@@ -26,14 +26,22 @@ const NAMES: &[&str] = &[
     "https://json-schema.org/draft/",
 ];
 
-/// Writes `sw.js` into the folder that trunk names, or into `dist`.
+/// Finishes the page in the folder that trunk names, or in `dist`.
 pub(crate) fn run(_: &[String]) -> Result<ExitCode, Trouble> {
     let folder = env::var_os("TRUNK_STAGING_DIR").map_or_else(places::dist, PathBuf::from);
+    let (files, version) = finish(&folder)?;
+    say::note(&format!("service worker: {files} files, version {version}"));
+    Ok(ExitCode::SUCCESS)
+}
+
+/// Checks the built page and writes its service worker; returns the number of
+/// files it keeps and the version it bears.
+pub(crate) fn finish(folder: &Path) -> Result<(usize, String), Trouble> {
     let pattern_path = places::root().join("www/sw.js");
     let pattern = fs::read_to_string(&pattern_path)
         .map_err(|error| Trouble::file("read", &pattern_path, &error))?;
     let mut contents = Vec::new();
-    for name in files_below(&folder).map_err(|error| Trouble::file("read", &folder, &error))? {
+    for name in files_below(folder).map_err(|error| Trouble::file("read", folder, &error))? {
         if name != "sw.js" {
             let path = folder.join(&name);
             let bytes = fs::read(&path).map_err(|error| Trouble::file("read", &path, &error))?;
@@ -55,11 +63,7 @@ pub(crate) fn run(_: &[String]) -> Result<ExitCode, Trouble> {
     let (worker, version) = worker(&pattern, &contents);
     let path = folder.join("sw.js");
     fs::write(&path, worker).map_err(|error| Trouble::file("write", &path, &error))?;
-    say::note(&format!(
-        "service worker: {} files, version {version}",
-        contents.len()
-    ));
-    Ok(ExitCode::SUCCESS)
+    Ok((contents.len(), version))
 }
 
 /// The files below a folder, as sorted paths with forward slashes.

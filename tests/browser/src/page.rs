@@ -316,6 +316,21 @@ impl Page {
         Ok(self.seen.requests.clone())
     }
 
+    /// How many console errors were seen up to now.
+    pub(crate) async fn errors(&mut self) -> Result<usize> {
+        self.gather().await?;
+        Ok(self.seen.errors.len())
+    }
+
+    /// Forgets the console errors that came after the first `count` and contain `part`.
+    pub(crate) async fn forget_errors_after(&mut self, count: usize, part: &str) -> Result {
+        self.gather().await?;
+        let later = self.seen.errors.split_off(count);
+        let kept = later.into_iter().filter(|error| !error.contains(part));
+        self.seen.errors.extend(kept);
+        Ok(())
+    }
+
     pub(crate) fn size(&self) -> Option<(u32, u32)> {
         self.viewport
     }
