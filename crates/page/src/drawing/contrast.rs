@@ -26,7 +26,9 @@ fn themes() -> BTreeMap<String, Theme> {
     let css = bare(TOKENS);
     let mut found = BTreeMap::new();
     for rule in css.split('}') {
-        let Some((selector, body)) = rule.rsplit_once('{') else { continue };
+        let Some((selector, body)) = rule.rsplit_once('{') else {
+            continue;
+        };
         let selector = selector.rsplit('{').next().unwrap_or(selector).trim();
         let selector = selector.split_whitespace().collect::<Vec<_>>().join(" ");
         let theme: Theme = body
@@ -49,7 +51,11 @@ fn channels(hex: &str) -> [f64; 3] {
 
 fn luminance(hex: &str) -> f64 {
     let linear = |c: f64| {
-        if c <= 0.04045 { c / 12.92 } else { hydraulics::math::pow((c + 0.055) / 1.055, 2.4) }
+        if c <= 0.04045 {
+            c / 12.92
+        } else {
+            hydraulics::math::pow((c + 0.055) / 1.055, 2.4)
+        }
     };
     let [r, g, b] = channels(hex).map(linear);
     0.2126 * r + 0.7152 * g + 0.0722 * b
@@ -70,10 +76,20 @@ fn contrast_is_as_wcag_defines_it() {
 #[test]
 fn every_theme_is_there() {
     let names: Vec<String> = themes().into_keys().collect();
-    for wanted in [":root", ":root.theme-outdoor", ":root.theme-dark", ".print-sheet"] {
+    for wanted in [
+        ":root",
+        ":root.theme-outdoor",
+        ":root.theme-dark",
+        ".print-sheet",
+    ] {
         assert!(names.iter().any(|n| n == wanted), "{wanted} in {names:?}");
     }
-    assert!(names.iter().any(|n| n.starts_with(":root, :root.theme-paper")), "{names:?}");
+    assert!(
+        names
+            .iter()
+            .any(|n| n.starts_with(":root, :root.theme-paper")),
+        "{names:?}"
+    );
 }
 
 #[test]
@@ -96,10 +112,19 @@ fn text_and_lines_can_be_read_in_every_theme() {
 fn outdoors_is_pure_and_paper_is_black_alone() {
     let themes = themes();
     let outdoor = &themes[":root.theme-outdoor"];
-    assert_eq!((outdoor["paper"].as_str(), outdoor["ink"].as_str()), ("#ffffff", "#000000"));
-    for (name, theme) in themes.iter().filter(|(n, _)| n.contains("print") || n.contains(", ")) {
+    assert_eq!(
+        (outdoor["paper"].as_str(), outdoor["ink"].as_str()),
+        ("#ffffff", "#000000")
+    );
+    for (name, theme) in themes
+        .iter()
+        .filter(|(n, _)| n.contains("print") || n.contains(", "))
+    {
         for (token, value) in theme.iter().filter(|(_, v)| v.starts_with('#')) {
-            assert!(value == "#000000" || value == "#ffffff", "{name}: {token} is {value}");
+            assert!(
+                value == "#000000" || value == "#ffffff",
+                "{name}: {token} is {value}"
+            );
         }
     }
 }
@@ -116,7 +141,10 @@ fn colours_live_in_the_tokens_and_nothing_is_fetched() {
             .collect();
         // Margin boxes of a page take no custom properties in every browser.
         let allowed = if file == "print.css" { 5 } else { 0 };
-        assert!(hex.len() <= allowed, "{file} has colours of its own: {hex:?}");
+        assert!(
+            hex.len() <= allowed,
+            "{file} has colours of its own: {hex:?}"
+        );
     }
 }
 
@@ -130,15 +158,28 @@ fn every_class_of_the_drawings_is_dressed() {
         let d = long_section::draw(&section, Size::screen(900.0, 420.0), &number).unwrap();
         svg.push_str(&d.picture.svg);
     }
-    for count in [24, 700] {
-        let d = sweep_chart::draw(&samples::sweep(count), Size::screen(360.0, 340.0), &number, &number);
+    for chart in [
+        samples::sweep(24),
+        samples::sweep(700),
+        samples::catalogue_sweep(),
+    ] {
+        let d = sweep_chart::draw(&chart, Size::screen(360.0, 340.0), &number, &number);
         svg.push_str(&d.unwrap().picture.svg);
     }
-    for verdict in [super::Verdict::Holds, super::Verdict::Tight, super::Verdict::Unsettled, super::Verdict::Fails] {
+    for verdict in [
+        super::Verdict::Holds,
+        super::Verdict::Tight,
+        super::Verdict::Unsettled,
+        super::Verdict::Fails,
+    ] {
         svg.push_str(&verdict_mark::verdict_mark(verdict, Some(0.7)));
     }
     let look = bare(LOOK);
-    for classes in svg.split("class=\"").skip(1).filter_map(|s| s.split('"').next()) {
+    for classes in svg
+        .split("class=\"")
+        .skip(1)
+        .filter_map(|s| s.split('"').next())
+    {
         for class in classes.split(' ') {
             assert!(look.contains(&format!(".{class}")), "{class}");
         }

@@ -32,15 +32,33 @@ fn section_svg(section: &LongSection, size: Size, id: &str) -> String {
 /// The whole page for a theme.
 fn page(theme: &str) -> String {
     let big = theme == "theme-outdoor";
-    let screen = |w, h| Size { big, ..Size::screen(w, h) };
+    let screen = |w, h| Size {
+        big,
+        ..Size::screen(w, h)
+    };
     let mut body = String::new();
     for (name, width, height) in [("phone", 360.0, 230.0), ("wide", 680.0, 420.0)] {
-        body += &section_svg(&samples::section(), screen(width, height), &format!("{name}-section"));
-        body += &section_svg(&samples::long_line(40), screen(width, height), &format!("{name}-long"));
-        for count in [24, 700] {
+        body += &section_svg(
+            &samples::section(),
+            screen(width, height),
+            &format!("{name}-section"),
+        );
+        body += &section_svg(
+            &samples::long_line(40),
+            screen(width, height),
+            &format!("{name}-long"),
+        );
+        let sweeps = [
+            samples::sweep(24),
+            samples::sweep(700),
+            samples::catalogue_sweep(),
+        ];
+        for (chart, count) in sweeps.iter().zip(["24", "700", "catalogue"]) {
             let size = screen(width, height + 130.0);
-            let d = sweep_chart::draw(&samples::sweep(count), size, &number, &percent).unwrap();
-            body += &d.picture.element("drawing-svg", &format!("{name}-sweep-{count}"));
+            let d = sweep_chart::draw(chart, size, &number, &percent).unwrap();
+            body += &d
+                .picture
+                .element("drawing-svg", &format!("{name}-sweep-{count}"));
         }
     }
     for (verdict, word) in [
@@ -58,8 +76,16 @@ fn page(theme: &str) -> String {
         }
     }
     body += "<article class=\"print-sheet\">";
-    body += &section_svg(&samples::section(), Size::paper_mm(180.0, 85.0), "print-section");
-    body += &section_svg(&samples::long_line(40), Size::paper_mm(180.0, 85.0), "print-long");
+    body += &section_svg(
+        &samples::section(),
+        Size::paper_mm(180.0, 85.0),
+        "print-section",
+    );
+    body += &section_svg(
+        &samples::long_line(40),
+        Size::paper_mm(180.0, 85.0),
+        "print-long",
+    );
     body += "</article>";
     format!(
         "<!DOCTYPE html><html lang=\"en\" class=\"{theme}\"><head><meta charset=\"utf-8\">\
@@ -75,8 +101,14 @@ fn the_gallery_is_written() {
     std::fs::create_dir_all(folder.join("styles")).unwrap();
     for (file, css) in [
         ("app.css", include_str!("../../../../www/styles/app.css")),
-        ("tokens.css", include_str!("../../../../www/styles/tokens.css")),
-        ("print.css", include_str!("../../../../www/styles/print.css")),
+        (
+            "tokens.css",
+            include_str!("../../../../www/styles/tokens.css"),
+        ),
+        (
+            "print.css",
+            include_str!("../../../../www/styles/print.css"),
+        ),
     ] {
         std::fs::write(folder.join("styles").join(file), css).unwrap();
     }

@@ -10,7 +10,9 @@ use super::svg::Path;
 #[must_use]
 pub fn between(top: &[(f64, f64)], bottom: &[(f64, f64)], spacing: f64) -> Path {
     let mut path = Path::new();
-    let (Some(first), Some(last)) = (top.first(), top.last()) else { return path };
+    let (Some(first), Some(last)) = (top.first(), top.last()) else {
+        return path;
+    };
     let ys = || top.iter().chain(bottom).map(|p| p.1);
     let (least, most) = ys().fold((f64::MAX, f64::MIN), |(lo, hi), y| {
         (if y < lo { y } else { lo }, if y > hi { y } else { hi })
@@ -39,9 +41,12 @@ pub fn under(top: &[(f64, f64)], depth: f64, spacing: f64) -> Path {
 /// from the edges, negative outside.
 fn inside(top: &[(f64, f64)], bottom: &[(f64, f64)], c: f64, x: f64) -> Option<f64> {
     let y = c - x;
-    let (below_top, above_bottom) =
-        (y - polyline::at(top, x)?, polyline::at(bottom, x)? - y);
-    Some(if below_top < above_bottom { below_top } else { above_bottom })
+    let (below_top, above_bottom) = (y - polyline::at(top, x)?, polyline::at(bottom, x)? - y);
+    Some(if below_top < above_bottom {
+        below_top
+    } else {
+        above_bottom
+    })
 }
 
 /// Adds the pieces of stroke `c`. Along it `inside` is straight between the
@@ -126,16 +131,33 @@ mod tests {
     #[test]
     fn a_stroke_is_cut_in_two_by_a_trough() {
         // A stroke of slope 1 meets the rise of the line twice.
-        let top = [(0.0, 50.0), (40.0, 50.0), (50.0, 0.0), (60.0, 50.0), (100.0, 50.0)];
+        let top = [
+            (0.0, 50.0),
+            (40.0, 50.0),
+            (50.0, 0.0),
+            (60.0, 50.0),
+            (100.0, 50.0),
+        ];
         let bottom = [(0.0, 60.0), (100.0, 60.0)];
         let strokes = ends(&between(&top, &bottom, 5.0));
         assert!(strokes.iter().any(|p| p.1 < 49.0), "the peak is hatched");
-        assert!(strokes.iter().all(|p| p.1 >= polyline::at(&top, p.0).unwrap() - 0.05));
+        assert!(
+            strokes
+                .iter()
+                .all(|p| p.1 >= polyline::at(&top, p.0).unwrap() - 0.05)
+        );
     }
 
     #[test]
     fn nothing_where_the_band_is_turned_over() {
-        assert_eq!(between(&[(0.0, 50.0), (9.0, 50.0)], &[(0.0, 40.0), (9.0, 40.0)], 5.0), Path::new());
+        assert_eq!(
+            between(
+                &[(0.0, 50.0), (9.0, 50.0)],
+                &[(0.0, 40.0), (9.0, 40.0)],
+                5.0
+            ),
+            Path::new()
+        );
         assert_eq!(between(&[], &[], 5.0), Path::new());
         assert_eq!(under(&[(0.0, 5.0), (50.0, 5.0)], 10.0, 0.0), Path::new());
     }

@@ -87,7 +87,11 @@ impl Rect {
                 leave = leave.min(q / p);
             }
         }
-        if leave > enter { (leave - enter) * (dx * dx + dy * dy).sqrt() } else { 0.0 }
+        if leave > enter {
+            (leave - enter) * (dx * dx + dy * dy).sqrt()
+        } else {
+            0.0
+        }
     }
 }
 
@@ -158,7 +162,12 @@ impl Placer {
     /// An empty frame no label may leave.
     #[must_use]
     pub const fn new(frame: Rect) -> Placer {
-        Placer { frame, taken: Vec::new(), words: Vec::new(), ink: Vec::new() }
+        Placer {
+            frame,
+            taken: Vec::new(),
+            words: Vec::new(),
+            ink: Vec::new(),
+        }
     }
 
     /// Takes a box that no label may touch.
@@ -170,7 +179,11 @@ impl Placer {
     /// under a label costs `cost`.
     pub fn avoid(&mut self, points: &[(f64, f64)], cost: f64) {
         for w in points.windows(2) {
-            self.ink.push(Ink { from: w[0], to: w[1], cost });
+            self.ink.push(Ink {
+                from: w[0],
+                to: w[1],
+                cost,
+            });
         }
     }
 
@@ -208,12 +221,17 @@ impl Placer {
             if !self.is_free(&rect) {
                 continue;
             }
-            let crossed: f64 =
-                self.ink.iter().map(|i| rect.length_inside(i.from, i.to) * i.cost).sum();
+            let crossed: f64 = self
+                .ink
+                .iter()
+                .map(|i| rect.length_inside(i.from, i.to) * i.cost)
+                .sum();
             // A leader through other words is worse than a long way.
             let struck: f64 = led
                 .and_then(|(at, start, near)| leader(at, start, near, &rect))
-                .map_or(0.0, |(a, b)| self.words.iter().map(|w| w.length_inside(a, b)).sum());
+                .map_or(0.0, |(a, b)| {
+                    self.words.iter().map(|w| w.length_inside(a, b)).sum()
+                });
             // A later place is a little worse, so that the first good one wins.
             let cost = crossed + struck * 10.0 + order as f64 * 0.5;
             if best.as_ref().is_none_or(|(least, ..)| cost < *least) {
@@ -240,14 +258,26 @@ impl Placer {
             svg.line("d-leader", from, to);
             self.avoid(&[from, to], 3.0);
         }
-        svg.text(words.class, (place.x, place.y), place.anchor, words.size, words.text);
+        svg.text(
+            words.class,
+            (place.x, place.y),
+            place.anchor,
+            words.size,
+            words.text,
+        );
         Some(place)
     }
 
     /// Places and writes a text; whether it found a place.
     pub fn write(&mut self, svg: &mut Svg, words: &Words<'_>, places: &[Place]) -> Option<Place> {
         let place = self.place(words, places)?;
-        svg.text(words.class, (place.x, place.y), place.anchor, words.size, words.text);
+        svg.text(
+            words.class,
+            (place.x, place.y),
+            place.anchor,
+            words.size,
+            words.text,
+        );
         Some(place)
     }
 }
@@ -261,11 +291,13 @@ pub fn leader(
     near: f64,
     label: &Rect,
 ) -> Option<((f64, f64), (f64, f64))> {
-    let to = (at.0.clamp(label.x0, label.x1), at.1.clamp(label.y0, label.y1));
+    let to = (
+        at.0.clamp(label.x0, label.x1),
+        at.1.clamp(label.y0, label.y1),
+    );
     let (dx, dy) = (to.0 - at.0, to.1 - at.1);
     let far = (dx * dx + dy * dy).sqrt();
-    (far > near && far > start)
-        .then(|| ((at.0 + dx / far * start, at.1 + dy / far * start), to))
+    (far > near && far > start).then(|| ((at.0 + dx / far * start, at.1 + dy / far * start), to))
 }
 
 /// Places around a point, `gap` pixels off it: right, left, above, below, then
@@ -286,14 +318,26 @@ pub fn around(x: f64, y: f64, gap: f64, size: f64) -> Vec<Place> {
             (0.0, -g, Anchor::Middle),
             (0.0, g + size * 0.8, Anchor::Middle),
         ] {
-            places.push(Place { x: x + dx, y: y + dy, anchor });
+            places.push(Place {
+                x: x + dx,
+                y: y + dy,
+                anchor,
+            });
         }
     }
     for aside in [2.0, 4.0, 7.0, 11.0, 16.0] {
         for rise in [-1.6, 2.4, -3.0, 3.8, 5.4] {
             let y = y + rise * size;
-            places.push(Place { x: x + aside * size, y, anchor: Anchor::Start });
-            places.push(Place { x: x - aside * size, y, anchor: Anchor::End });
+            places.push(Place {
+                x: x + aside * size,
+                y,
+                anchor: Anchor::Start,
+            });
+            places.push(Place {
+                x: x - aside * size,
+                y,
+                anchor: Anchor::End,
+            });
         }
     }
     places
@@ -309,7 +353,9 @@ pub fn along(
     shares: &[f64],
     below_first: bool,
 ) -> Vec<Place> {
-    let (Some(first), Some(last)) = (points.first(), points.last()) else { return Vec::new() };
+    let (Some(first), Some(last)) = (points.first(), points.last()) else {
+        return Vec::new();
+    };
     let width = text_width(words.text, words.size, words.strong);
     let mut places = Vec::with_capacity(shares.len() * 2);
     for share in shares {
@@ -317,14 +363,29 @@ pub fn along(
         let x0 = first.0 + room * share;
         let under = super::polyline::part(points, x0, x0 + width);
         let (least, most) = under.iter().fold((f64::MAX, f64::MIN), |(lo, hi), p| {
-            (if p.1 < lo { p.1 } else { lo }, if p.1 > hi { p.1 } else { hi })
+            (
+                if p.1 < lo { p.1 } else { lo },
+                if p.1 > hi { p.1 } else { hi },
+            )
         });
         if least > most {
             continue;
         }
-        let above = Place { x: x0, y: least - gap - DESCENT * words.size, anchor: Anchor::Start };
-        let below = Place { x: x0, y: most + gap + ASCENT * words.size, anchor: Anchor::Start };
-        places.extend(if below_first { [below, above] } else { [above, below] });
+        let above = Place {
+            x: x0,
+            y: least - gap - DESCENT * words.size,
+            anchor: Anchor::Start,
+        };
+        let below = Place {
+            x: x0,
+            y: most + gap + ASCENT * words.size,
+            anchor: Anchor::Start,
+        };
+        places.extend(if below_first {
+            [below, above]
+        } else {
+            [above, below]
+        });
     }
     places
 }
@@ -334,10 +395,20 @@ mod tests {
     use super::*;
     use proptest::prelude::*;
 
-    const FRAME: Rect = Rect { x0: 0.0, y0: 0.0, x1: 200.0, y1: 100.0 };
+    const FRAME: Rect = Rect {
+        x0: 0.0,
+        y0: 0.0,
+        x1: 200.0,
+        y1: 100.0,
+    };
 
     fn words(text: &str) -> Words<'_> {
-        Words { text, size: 12.0, strong: false, class: "d-text" }
+        Words {
+            text,
+            size: 12.0,
+            strong: false,
+            class: "d-text",
+        }
     }
 
     #[test]
@@ -345,9 +416,23 @@ mod tests {
         // Advance widths of DejaVu Sans 2.37 in units of 2048 to the em, read
         // from the font's hmtx table.
         for (c, units) in [
-            ('0', 1303.0), ('a', 1255.0), ('m', 1995.0), ('i', 569.0), (' ', 651.0), ('W', 2025.0),
-            ('%', 1946.0), ('r', 842.0), ('O', 1612.0), ('w', 1675.0), ('/', 690.0), ('f', 721.0),
-            ('t', 803.0), ('A', 1401.0), ('\u{d7}', 1716.0), ('\u{f1}', 1298.0), ('d', 1300.0),
+            ('0', 1303.0),
+            ('a', 1255.0),
+            ('m', 1995.0),
+            ('i', 569.0),
+            (' ', 651.0),
+            ('W', 2025.0),
+            ('%', 1946.0),
+            ('r', 842.0),
+            ('O', 1612.0),
+            ('w', 1675.0),
+            ('/', 690.0),
+            ('f', 721.0),
+            ('t', 803.0),
+            ('A', 1401.0),
+            ('\u{d7}', 1716.0),
+            ('\u{f1}', 1298.0),
+            ('d', 1300.0),
         ] {
             assert!(char_width(c) >= units / 2048.0, "{c}");
         }
@@ -358,8 +443,16 @@ mod tests {
     fn the_first_free_place_wins() {
         let mut placer = Placer::new(FRAME);
         let spots = [
-            Place { x: 10.0, y: 50.0, anchor: Anchor::Start },
-            Place { x: 10.0, y: 80.0, anchor: Anchor::Start },
+            Place {
+                x: 10.0,
+                y: 50.0,
+                anchor: Anchor::Start,
+            },
+            Place {
+                x: 10.0,
+                y: 80.0,
+                anchor: Anchor::Start,
+            },
         ];
         assert_eq!(placer.place(&words("one"), &spots), Some(spots[0]));
         assert_eq!(placer.place(&words("two"), &spots), Some(spots[1]));
@@ -371,8 +464,16 @@ mod tests {
         let mut placer = Placer::new(FRAME);
         placer.avoid(&[(0.0, 46.0), (200.0, 46.0)], 1.0);
         let spots = [
-            Place { x: 10.0, y: 50.0, anchor: Anchor::Start },
-            Place { x: 10.0, y: 80.0, anchor: Anchor::Start },
+            Place {
+                x: 10.0,
+                y: 50.0,
+                anchor: Anchor::Start,
+            },
+            Place {
+                x: 10.0,
+                y: 80.0,
+                anchor: Anchor::Start,
+            },
         ];
         assert_eq!(placer.place(&words("one"), &spots), Some(spots[1]));
     }
@@ -386,7 +487,10 @@ mod tests {
             ((10.0, 10.0), (13.0, 14.0), 5.0),
         ];
         for (a, b, length) in cases {
-            assert!((FRAME.length_inside(a, b) - length).abs() < 1e-9, "{a:?} {b:?}");
+            assert!(
+                (FRAME.length_inside(a, b) - length).abs() < 1e-9,
+                "{a:?} {b:?}"
+            );
         }
     }
 
@@ -402,10 +506,22 @@ mod tests {
     #[test]
     fn a_leader_goes_round_other_words() {
         let mut placer = Placer::new(FRAME);
-        let first = Place { x: 60.0, y: 50.0, anchor: Anchor::Start };
+        let first = Place {
+            x: 60.0,
+            y: 50.0,
+            anchor: Anchor::Start,
+        };
         placer.place(&words("in between"), &[first]);
-        let behind = Place { x: 150.0, y: 50.0, anchor: Anchor::Start };
-        let above = Place { x: 60.0, y: 20.0, anchor: Anchor::Start };
+        let behind = Place {
+            x: 150.0,
+            y: 50.0,
+            anchor: Anchor::Start,
+        };
+        let above = Place {
+            x: 60.0,
+            y: 20.0,
+            anchor: Anchor::Start,
+        };
         let mut svg = Svg::new();
         let led = ((10.0, 46.0), 4.0, 20.0);
         let got = placer.write_led(&mut svg, &words("far"), &[behind, above], led);

@@ -54,7 +54,12 @@ impl Size {
     /// Room on a screen.
     #[must_use]
     pub const fn screen(width: f64, height: f64) -> Size {
-        Size { width, height, big: false, print: false }
+        Size {
+            width,
+            height,
+            big: false,
+            print: false,
+        }
     }
 
     /// Room on paper, in millimetres.
@@ -182,7 +187,11 @@ impl Picture {
     /// `viewBox` of the `svg` element that holds it.
     #[must_use]
     pub fn view_box(&self) -> String {
-        format!("0 0 {} {}", svg::number(self.width), svg::number(self.height))
+        format!(
+            "0 0 {} {}",
+            svg::number(self.width),
+            svg::number(self.height)
+        )
     }
 
     /// A whole `svg` element, for print and for files: named and described,

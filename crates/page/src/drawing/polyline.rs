@@ -9,7 +9,9 @@ pub fn at(points: &[(f64, f64)], x: f64) -> Option<f64> {
         return None;
     }
     let after = points.partition_point(|p| p.0 <= x);
-    let Some(b) = points.get(after) else { return Some(last.1) };
+    let Some(b) = points.get(after) else {
+        return Some(last.1);
+    };
     let a = points.get(after.checked_sub(1)?)?;
     Some(a.1 + (x - a.0) / (b.0 - a.0) * (b.1 - a.1))
 }
@@ -40,7 +42,10 @@ pub fn part(points: &[(f64, f64)], from: f64, to: f64) -> Vec<(f64, f64)> {
 /// The place of the first point that lies before the one ahead of it.
 #[must_use]
 pub fn first_backwards(points: &[(f64, f64)]) -> Option<usize> {
-    points.windows(2).position(|w| w[1].0 < w[0].0).map(|i| i + 1)
+    points
+        .windows(2)
+        .position(|w| w[1].0 < w[0].0)
+        .map(|i| i + 1)
 }
 
 #[cfg(test)]
@@ -71,6 +76,9 @@ mod tests {
     #[test]
     fn backwards_is_found() {
         assert_eq!(first_backwards(&LINE), None);
-        assert_eq!(first_backwards(&[(0.0, 0.0), (2.0, 0.0), (1.0, 0.0)]), Some(2));
+        assert_eq!(
+            first_backwards(&[(0.0, 0.0), (2.0, 0.0), (1.0, 0.0)]),
+            Some(2)
+        );
     }
 }

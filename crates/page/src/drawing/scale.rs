@@ -19,7 +19,9 @@ impl Scale {
     /// or both values are the same.
     #[must_use]
     pub fn linear(values: (f64, f64), pixels: (f64, f64)) -> Option<Scale> {
-        let finite = [values.0, values.1, pixels.0, pixels.1].iter().all(|v| v.is_finite());
+        let finite = [values.0, values.1, pixels.0, pixels.1]
+            .iter()
+            .all(|v| v.is_finite());
         let span = values.1 - values.0;
         (finite && span.is_finite() && span != 0.0).then_some(Scale {
             logarithmic: false,
@@ -37,7 +39,10 @@ impl Scale {
             return None;
         }
         let straight = Scale::linear((ln(values.0), ln(values.1)), pixels)?;
-        Some(Scale { logarithmic: true, ..straight })
+        Some(Scale {
+            logarithmic: true,
+            ..straight
+        })
     }
 
     /// The pixel of a value; `None` when it has none (not finite, or not above

@@ -19,13 +19,21 @@ pub enum Shape {
     Hexagon,
     /// An upright cross, outlined.
     Cross,
-    /// A half circle's box: a house.
+    /// A house.
     House,
+    /// A lying bar.
+    Flat,
+    /// A standing bar.
+    Tall,
+    /// A triangle that points left.
+    Left,
+    /// A triangle that points right.
+    Right,
 }
 
 impl Shape {
     /// All of them, in the order they are given out.
-    pub const ALL: [Shape; 8] = [
+    pub const ALL: [Shape; 12] = [
         Shape::Circle,
         Shape::Square,
         Shape::Triangle,
@@ -34,9 +42,13 @@ impl Shape {
         Shape::Hexagon,
         Shape::Cross,
         Shape::House,
+        Shape::Flat,
+        Shape::Tall,
+        Shape::Left,
+        Shape::Right,
     ];
 
-    /// The shape of the family at this place; they repeat after the eighth.
+    /// The shape of the family at this place; they repeat after the twelfth.
     #[must_use]
     pub const fn of(family: usize) -> Shape {
         Shape::ALL[family % Shape::ALL.len()]
@@ -73,9 +85,17 @@ impl Shape {
                 (-1.1, -0.4),
                 (-0.4, -0.4),
             ],
-            Shape::House => {
-                &[(-0.9, 0.95), (-0.9, -0.2), (0.0, -1.15), (0.9, -0.2), (0.9, 0.95)]
-            }
+            Shape::Flat => &[(-1.35, -0.55), (1.35, -0.55), (1.35, 0.55), (-1.35, 0.55)],
+            Shape::Tall => &[(-0.55, -1.35), (0.55, -1.35), (0.55, 1.35), (-0.55, 1.35)],
+            Shape::Left => &[(-1.2, 0.0), (0.8, -1.1), (0.8, 1.1)],
+            Shape::Right => &[(1.2, 0.0), (-0.8, -1.1), (-0.8, 1.1)],
+            Shape::House => &[
+                (-0.9, 0.95),
+                (-0.9, -0.2),
+                (0.0, -1.15),
+                (0.9, -0.2),
+                (0.9, 0.95),
+            ],
         };
         for (i, (dx, dy)) in corners.iter().enumerate() {
             let at = (centre.0 + dx * r, centre.1 + dy * r);
@@ -106,6 +126,6 @@ mod tests {
         for (i, a) in drawn.iter().enumerate() {
             assert!(drawn[i + 1..].iter().all(|b| a != b));
         }
-        assert_eq!(Shape::of(8), Shape::of(0));
+        assert_eq!(Shape::of(12), Shape::of(0));
     }
 }

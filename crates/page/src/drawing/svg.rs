@@ -253,7 +253,13 @@ mod tests {
     #[test]
     fn text_cannot_become_markup() {
         let mut svg = Svg::new();
-        svg.text("d-text", (1.0, 2.0), Anchor::End, 12.0, "<b a=\"1\">&'\u{7}");
+        svg.text(
+            "d-text",
+            (1.0, 2.0),
+            Anchor::End,
+            12.0,
+            "<b a=\"1\">&'\u{7}",
+        );
         assert_eq!(
             svg.finish(),
             "<text class=\"d-text\" x=\"1\" y=\"2\" font-size=\"12\" text-anchor=\"end\">\

@@ -67,7 +67,11 @@ pub fn linear_ticks(from: f64, to: f64, most: usize, factor: f64) -> Vec<Tick> {
             while k <= last {
                 // Adding zero turns -0 into 0.
                 let reads = k * step + 0.0;
-                ticks.push(Tick { value: reads / factor, reads, decimals });
+                ticks.push(Tick {
+                    value: reads / factor,
+                    reads,
+                    decimals,
+                });
                 k += 1.0;
             }
             return ticks;
@@ -82,7 +86,9 @@ pub fn linear_ticks(from: f64, to: f64, most: usize, factor: f64) -> Vec<Tick> {
 #[must_use]
 pub fn logarithmic_ticks(from: f64, to: f64, most: usize, factor: f64) -> Vec<Tick> {
     const SETS: [&[f64]; 4] = [
-        &[1.0, 1.2, 1.4, 1.6, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0],
+        &[
+            1.0, 1.2, 1.4, 1.6, 1.8, 2.0, 2.5, 3.0, 3.5, 4.0, 4.5, 5.0, 6.0, 7.0, 8.0, 9.0,
+        ],
         &[1.0, 1.5, 2.0, 3.0, 4.0, 5.0, 7.0],
         &[1.0, 2.0, 5.0],
         &[1.0],
@@ -102,7 +108,11 @@ pub fn logarithmic_ticks(from: f64, to: f64, most: usize, factor: f64) -> Vec<Ti
             for m in set {
                 let reads = m * ten;
                 if reads >= low * (1.0 - 1e-9) && reads <= high * (1.0 + 1e-9) {
-                    ticks.push(Tick { value: reads / factor, reads, decimals: decimals_of(reads) });
+                    ticks.push(Tick {
+                        value: reads / factor,
+                        reads,
+                        decimals: decimals_of(reads),
+                    });
                 }
             }
             power += 1.0;
@@ -126,13 +136,22 @@ mod tests {
     use proptest::prelude::*;
 
     fn reads(ticks: &[Tick]) -> Vec<f64> {
-        ticks.iter().map(|t| (t.reads * 1e6).round() / 1e6).collect()
+        ticks
+            .iter()
+            .map(|t| (t.reads * 1e6).round() / 1e6)
+            .collect()
     }
 
     #[test]
     fn levels_tick_at_twenties() {
-        assert_eq!(reads(&linear_ticks(14.0, 103.0, 5, 1.0)), [20.0, 40.0, 60.0, 80.0, 100.0]);
-        assert_eq!(reads(&linear_ticks(103.0, 14.0, 5, 1.0)), [20.0, 40.0, 60.0, 80.0, 100.0]);
+        assert_eq!(
+            reads(&linear_ticks(14.0, 103.0, 5, 1.0)),
+            [20.0, 40.0, 60.0, 80.0, 100.0]
+        );
+        assert_eq!(
+            reads(&linear_ticks(103.0, 14.0, 5, 1.0)),
+            [20.0, 40.0, 60.0, 80.0, 100.0]
+        );
     }
 
     #[test]
@@ -154,7 +173,11 @@ mod tests {
     #[test]
     fn minus_nought_is_nought() {
         let ticks = linear_ticks(-1.0, 1.0, 3, 1.0);
-        assert!(ticks.iter().all(|t| t.reads != 0.0 || t.reads.is_sign_positive()));
+        assert!(
+            ticks
+                .iter()
+                .all(|t| t.reads != 0.0 || t.reads.is_sign_positive())
+        );
     }
 
     #[test]

@@ -69,12 +69,19 @@ mod tests {
     use super::*;
     use proptest::prelude::*;
 
-    const ALL: [Verdict; 4] = [Verdict::Holds, Verdict::Tight, Verdict::Unsettled, Verdict::Fails];
+    const ALL: [Verdict; 4] = [
+        Verdict::Holds,
+        Verdict::Tight,
+        Verdict::Unsettled,
+        Verdict::Fails,
+    ];
 
     /// The mark with its classes taken out: what is left is form alone.
     fn form(verdict: Verdict, share: Option<f64>) -> String {
         let mark = verdict_mark(verdict, share);
-        mark.split("class=\"").map(|s| s.split_once('"').map_or(s, |(_, rest)| rest)).collect()
+        mark.split("class=\"")
+            .map(|s| s.split_once('"').map_or(s, |(_, rest)| rest))
+            .collect()
     }
 
     #[test]
@@ -90,8 +97,14 @@ mod tests {
 
     #[test]
     fn a_larger_share_is_a_longer_bar() {
-        assert_ne!(verdict_mark(Verdict::Holds, Some(0.2)), verdict_mark(Verdict::Holds, Some(0.6)));
-        assert_eq!(verdict_mark(Verdict::Fails, Some(9.0)), verdict_mark(Verdict::Fails, Some(99.0)));
+        assert_ne!(
+            verdict_mark(Verdict::Holds, Some(0.2)),
+            verdict_mark(Verdict::Holds, Some(0.6))
+        );
+        assert_eq!(
+            verdict_mark(Verdict::Fails, Some(9.0)),
+            verdict_mark(Verdict::Fails, Some(99.0))
+        );
     }
 
     proptest! {

@@ -38,39 +38,67 @@ impl Layout {
         number: NumberFormat<'_>,
     ) -> Result<Layout, DrawingError> {
         let text = size.text();
-        let no_room = DrawingError::NoRoom { width: size.width, height: size.height };
+        let no_room = DrawingError::NoRoom {
+            width: size.width,
+            height: size.height,
+        };
         let line = plain(section);
         let (from, to) = match (line.first(), line.last()) {
             (Some(a), Some(b)) if b.0 > a.0 => (a.0, b.0),
-            _ => return Err(DrawingError::TooFew { found: line.len(), needed: 2 }),
+            _ => {
+                return Err(DrawingError::TooFew {
+                    found: line.len(),
+                    needed: 2,
+                });
+            }
         };
         let (low, high) = levels(section);
 
         // Below: band, then chainages.
-        let band_height = if section.stretches.is_empty() { 0.0 } else { text * 1.9 };
+        let band_height = if section.stretches.is_empty() {
+            0.0
+        } else {
+            text * 1.9
+        };
         let chainage_baseline = size.height - text * 0.5;
         let band_bottom = size.height - text * 1.75;
         let band_top = band_bottom - band_height;
         let floor = band_top - text * 0.6;
-        let roof = text * if section.level_unit.is_empty() { 0.8 } else { 1.7 };
+        let roof = text
+            * if section.level_unit.is_empty() {
+                0.8
+            } else {
+                1.7
+            };
         if under(floor - roof, text * 3.0) {
             return Err(no_room);
         }
 
         // Room above the highest line for its own label.
-        let most = (2..9).take_while(|k| f64::from(*k) * text * 2.4 < floor - roof).count() + 1;
+        let most = (2..9)
+            .take_while(|k| f64::from(*k) * text * 2.4 < floor - roof)
+            .count()
+            + 1;
         let ticks: Vec<(Tick, String)> = linear_ticks(low, high, most, 1.0)
             .into_iter()
             .map(|t| (t, number(t.reads, t.decimals)))
             .collect();
-        let widest = ticks.iter().map(|t| text_width(&t.1, text, false)).fold(text, f64::max);
+        let widest = ticks
+            .iter()
+            .map(|t| text_width(&t.1, text, false))
+            .fold(text, f64::max);
         let left = widest + text * 1.0;
         let right = size.width - text * 0.9;
         if under(right - left, text * 6.0) {
             return Err(no_room);
         }
 
-        let field = Rect { x0: left, y0: roof, x1: right, y1: floor };
+        let field = Rect {
+            x0: left,
+            y0: roof,
+            x1: right,
+            y1: floor,
+        };
         let none = || no_room;
         let (x, y, print_scale) = if size.print && section.unit_mm > 0.0 {
             on_paper((from, to), (low, high), &field, section.unit_mm).ok_or_else(none)?
@@ -83,8 +111,15 @@ impl Layout {
         // below moves up, and the drawing is that much lower.
         let spare = floor - y.pixels().0;
         Ok(Layout {
-            size: Size { height: size.height - spare, ..size },
-            field: Rect { x1: x.pixels().1, y1: floor - spare, ..field },
+            size: Size {
+                height: size.height - spare,
+                ..size
+            },
+            field: Rect {
+                x1: x.pixels().1,
+                y1: floor - spare,
+                ..field
+            },
             x,
             y,
             band: (band_top - spare, band_bottom - spare),
@@ -155,8 +190,11 @@ fn levels(section: &LongSection) -> (f64, f64) {
 fn usual_scale(least: f64, unit_mm: f64) -> Option<f64> {
     // 12 times 1, 2, 3, 4, 5, 6 or 10 feet to the inch, times a power of ten.
     let feet = (unit_mm - 304.8).abs() < 1.0;
-    let steps: &[f64] =
-        if feet { &[12.0, 24.0, 36.0, 48.0, 60.0, 72.0] } else { &[10.0, 12.5, 20.0, 25.0, 50.0] };
+    let steps: &[f64] = if feet {
+        &[12.0, 24.0, 36.0, 48.0, 60.0, 72.0]
+    } else {
+        &[10.0, 12.5, 20.0, 25.0, 50.0]
+    };
     let mut ten = 1.0;
     for _ in 0..9 {
         for s in steps {
@@ -172,20 +210,28 @@ fn usual_scale(least: f64, unit_mm: f64) -> Option<f64> {
 type OnPaper = (Scale, Scale, Option<PrintScale>);
 
 /// The largest usual scale at which the line fits its field.
-fn on_paper(
-    along: (f64, f64),
-    levels: (f64, f64),
-    field: &Rect,
-    unit_mm: f64,
-) -> Option<OnPaper> {
+fn on_paper(along: (f64, f64), levels: (f64, f64), field: &Rect, unit_mm: f64) -> Option<OnPaper> {
     let unit_px = unit_mm * PX_PER_MM;
-    let horizontal = usual_scale((along.1 - along.0) * unit_px / (field.x1 - field.x0), unit_mm)?;
-    let vertical = usual_scale((levels.1 - levels.0) * unit_px / (field.y1 - field.y0), unit_mm)?;
+    let horizontal = usual_scale(
+        (along.1 - along.0) * unit_px / (field.x1 - field.x0),
+        unit_mm,
+    )?;
+    let vertical = usual_scale(
+        (levels.1 - levels.0) * unit_px / (field.y1 - field.y0),
+        unit_mm,
+    )?;
     let width = (along.1 - along.0) * unit_px / horizontal;
     let height = (levels.1 - levels.0) * unit_px / vertical;
     let x = Scale::linear(along, (field.x0, field.x0 + width))?;
     let y = Scale::linear(levels, (field.y0 + height, field.y0))?;
-    Some((x, y, Some(PrintScale { horizontal, vertical })))
+    Some((
+        x,
+        y,
+        Some(PrintScale {
+            horizontal,
+            vertical,
+        }),
+    ))
 }
 
 #[cfg(test)]

@@ -257,7 +257,10 @@ fn plain(section: &LongSection) -> Vec<(f64, f64)> {
 fn check(section: &LongSection) -> Result<(), DrawingError> {
     let line = plain(section);
     if line.len() < 2 {
-        return Err(DrawingError::TooFew { found: line.len(), needed: 2 });
+        return Err(DrawingError::TooFew {
+            found: line.len(),
+            needed: 2,
+        });
     }
     let others = section
         .grade
@@ -266,7 +269,10 @@ fn check(section: &LongSection) -> Result<(), DrawingError> {
     let mut lines = vec![line];
     lines.extend(others.map(|l| l.points.clone()));
     for points in &lines {
-        if let Some(index) = points.iter().position(|p| !(p.0.is_finite() && p.1.is_finite())) {
+        if let Some(index) = points
+            .iter()
+            .position(|p| !(p.0.is_finite() && p.1.is_finite()))
+        {
             return Err(DrawingError::NotDrawable { index });
         }
         if let Some(index) = polyline::first_backwards(points) {
@@ -275,7 +281,10 @@ fn check(section: &LongSection) -> Result<(), DrawingError> {
     }
     let first_x = lines[0][0].0;
     if lines[0].iter().all(|p| p.0 <= first_x) {
-        return Err(DrawingError::TooFew { found: 1, needed: 2 });
+        return Err(DrawingError::TooFew {
+            found: 1,
+            needed: 2,
+        });
     }
     Ok(())
 }

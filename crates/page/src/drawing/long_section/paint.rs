@@ -24,7 +24,12 @@ struct Painter<'a> {
 
 pub(super) fn paint(section: &LongSection, layout: &Layout) -> Painted {
     let size = layout.size;
-    let frame = Rect { x0: 1.0, y0: 1.0, x1: size.width - 1.0, y1: size.height - 1.0 };
+    let frame = Rect {
+        x0: 1.0,
+        y0: 1.0,
+        x1: size.width - 1.0,
+        y1: size.height - 1.0,
+    };
     let mut painter = Painter {
         section,
         layout,
@@ -46,7 +51,10 @@ pub(super) fn paint(section: &LongSection, layout: &Layout) -> Painted {
     painter.labels();
     painter.band();
     painter.chainages();
-    Painted { svg: painter.svg.finish(), left_out: painter.left_out }
+    Painted {
+        svg: painter.svg.finish(),
+        left_out: painter.left_out,
+    }
 }
 
 /// Half the pipe's width may be this much, so labels keep off.
@@ -54,7 +62,11 @@ const WIDEST: f64 = 7.5;
 
 impl Painter<'_> {
     fn pipe_width(&self, weight: f64) -> f64 {
-        let weight = if weight.is_finite() { weight.clamp(0.0, 1.0) } else { 0.0 };
+        let weight = if weight.is_finite() {
+            weight.clamp(0.0, 1.0)
+        } else {
+            0.0
+        };
         (2.0 + (WIDEST - 2.0) * weight) * self.layout.size.weight()
     }
 
@@ -62,7 +74,9 @@ impl Painter<'_> {
         let field = self.layout.field;
         let text = self.text;
         for (tick, label) in &self.layout.ticks {
-            let Some(y) = self.layout.y.px(tick.value) else { continue };
+            let Some(y) = self.layout.y.px(tick.value) else {
+                continue;
+            };
             if y > field.y1 + 0.5 || y < field.y0 - 0.5 {
                 continue;
             }
@@ -72,7 +86,12 @@ impl Painter<'_> {
             self.svg.text("d-text d-soft", at, Anchor::End, text, label);
         }
         // The gutter belongs to the axis.
-        self.placer.take(Rect { x0: 0.0, y0: 0.0, x1: field.x0 - 2.0, y1: field.y1 });
+        self.placer.take(Rect {
+            x0: 0.0,
+            y0: 0.0,
+            x1: field.x0 - 2.0,
+            y1: field.y1,
+        });
         let unit = &self.section.level_unit;
         let at = (field.x0 - text * 0.5, text);
         self.svg.text("d-text d-soft", at, Anchor::End, text, unit);
@@ -83,9 +102,15 @@ impl Painter<'_> {
         let (field, band) = (self.layout.field, self.layout.band);
         // What is selected is no matter of the print.
         let on_screen = !self.layout.size.print;
-        for s in self.section.stretches.iter().filter(|s| s.selected && on_screen) {
+        for s in self
+            .section
+            .stretches
+            .iter()
+            .filter(|s| s.selected && on_screen)
+        {
             if let (Some(x0), Some(x1)) = (self.layout.x.px(s.from), self.layout.x.px(s.to)) {
-                self.svg.rect("d-selected", x0, field.y0, x1 - x0, band.0 - field.y0);
+                self.svg
+                    .rect("d-selected", x0, field.y0, x1 - x0, band.0 - field.y0);
             }
         }
     }
@@ -95,9 +120,16 @@ impl Painter<'_> {
     fn ground(&mut self) {
         let floor = self.layout.field.y1;
         let depth = ((floor - self.layout.field.y0) * 0.16).clamp(10.0, 30.0);
-        let bottom: Vec<(f64, f64)> =
-            self.line.iter().map(|p| (p.0, (p.1 + depth).min(floor))).collect();
-        let spacing = if self.layout.size.print { 5.0 } else { self.text * 0.62 };
+        let bottom: Vec<(f64, f64)> = self
+            .line
+            .iter()
+            .map(|p| (p.0, (p.1 + depth).min(floor)))
+            .collect();
+        let spacing = if self.layout.size.print {
+            5.0
+        } else {
+            self.text * 0.62
+        };
         let strokes = hatch::between(&self.line, &bottom, spacing);
         self.svg.path("d-hatch", &strokes);
     }
@@ -117,10 +149,15 @@ impl Painter<'_> {
     }
 
     fn surge(&mut self) {
-        let Some(surge) = &self.section.surge else { return };
+        let Some(surge) = &self.section.surge else {
+            return;
+        };
         let highest = self.layout.pxs(&surge.highest.points);
         let lowest = self.layout.pxs(&surge.lowest.points);
-        self.svg.path("d-surge-hatch", &hatch::between(&highest, &lowest, self.text * 0.9));
+        self.svg.path(
+            "d-surge-hatch",
+            &hatch::between(&highest, &lowest, self.text * 0.9),
+        );
         self.svg.path("d-surge", &Path::through(&highest));
         self.svg.path("d-surge", &Path::through(&lowest));
         self.placer.avoid(&highest, 0.6);
@@ -134,12 +171,21 @@ impl Painter<'_> {
     }
 
     fn levels(&mut self) {
-        let highest = self.section.highest_static.as_ref().and_then(|l| self.level_line(l.y));
+        let highest = self
+            .section
+            .highest_static
+            .as_ref()
+            .and_then(|l| self.level_line(l.y));
         if let Some(line) = highest {
-            self.svg.path("d-static d-static-highest", &Path::through(&line));
+            self.svg
+                .path("d-static d-static-highest", &Path::through(&line));
             self.placer.avoid(&line, 0.5);
         }
-        let level = self.section.static_level.as_ref().and_then(|l| self.level_line(l.y));
+        let level = self
+            .section
+            .static_level
+            .as_ref()
+            .and_then(|l| self.level_line(l.y));
         if let Some(line) = level {
             self.svg.path("d-static", &Path::through(&line));
             self.placer.avoid(&line, 0.5);
@@ -154,13 +200,22 @@ impl Painter<'_> {
     /// The usual sign of a free water surface, a triangle standing on it, at the
     /// first free place from the forebay on.
     fn water_sign(&mut self) {
-        let level = self.section.static_level.as_ref().and_then(|l| self.level_line(l.y));
+        let level = self
+            .section
+            .static_level
+            .as_ref()
+            .and_then(|l| self.level_line(l.y));
         let Some(line) = level else { return };
         let (from, to, y) = (line[0].0, line[1].0, line[0].1);
         let s = self.text * 0.42;
         for k in 0..8 {
             let x = from + s * 1.4 + (to - from) * f64::from(k) * 0.06;
-            let rect = Rect { x0: x - s, y0: y - s * 2.0, x1: x + s, y1: y - 0.5 };
+            let rect = Rect {
+                x0: x - s,
+                y0: y - s * 2.0,
+                x1: x + s,
+                y1: y - 0.5,
+            };
             if self.placer.is_free(&rect) {
                 let mut path = Path::new();
                 path.move_to((x, y));
@@ -181,7 +236,9 @@ impl Painter<'_> {
         let tall = self.text * 0.75;
         for (from, to) in &self.section.sub_atmospheric {
             let pipe = self.layout.pxs(&polyline::part(&line, *from, *to));
-            let (Some(first), Some(last)) = (pipe.first(), pipe.last()) else { continue };
+            let (Some(first), Some(last)) = (pipe.first(), pipe.last()) else {
+                continue;
+            };
             let top: Vec<(f64, f64)> = pipe.iter().map(|p| (p.0, p.1 - tall)).collect();
             let mut comb = Path::through(&top);
             let teeth = ((last.0 - first.0) / 4.0).floor().max(1.0);
@@ -196,7 +253,12 @@ impl Painter<'_> {
             self.svg.path("d-sub", &comb);
             for w in pipe.windows(2) {
                 let y0 = if w[0].1 < w[1].1 { w[0].1 } else { w[1].1 } - tall;
-                self.placer.take(Rect { x0: w[0].0, y0, x1: w[1].0, y1: y0 + tall });
+                self.placer.take(Rect {
+                    x0: w[0].0,
+                    y0,
+                    x1: w[1].0,
+                    y1: y0 + tall,
+                });
             }
         }
     }
@@ -204,15 +266,23 @@ impl Painter<'_> {
     fn pipe(&mut self) {
         let line = plain(self.section);
         let thin = self.pipe_width(0.0);
-        self.svg.path_of_width("d-pipe", &Path::through(&self.line), Some(thin));
+        self.svg
+            .path_of_width("d-pipe", &Path::through(&self.line), Some(thin));
         for s in &self.section.stretches {
             let part = self.layout.pxs(&polyline::part(&line, s.from, s.to));
-            let class = if s.verdict == Verdict::Fails { "d-pipe d-pipe-fails" } else { "d-pipe" };
+            let class = if s.verdict == Verdict::Fails {
+                "d-pipe d-pipe-fails"
+            } else {
+                "d-pipe"
+            };
             let width = Some(self.pipe_width(s.weight));
             self.svg.path_of_width(class, &Path::through(&part), width);
         }
         for pair in self.section.stretches.windows(2) {
-            self.cut(pair[0].to, self.pipe_width(pair[0].weight.max(pair[1].weight)));
+            self.cut(
+                pair[0].to,
+                self.pipe_width(pair[0].weight.max(pair[1].weight)),
+            );
         }
         self.placer.avoid(&self.line.clone(), 3.0);
     }
@@ -227,8 +297,12 @@ impl Painter<'_> {
         if self.section.fittings.iter().any(sits) {
             return;
         }
-        let Some(x) = self.layout.x.px(chainage) else { return };
-        let Some(y) = polyline::at(&self.line, x) else { return };
+        let Some(x) = self.layout.x.px(chainage) else {
+            return;
+        };
+        let Some(y) = polyline::at(&self.line, x) else {
+            return;
+        };
         // Across the chord over a few pixels on either side.
         let side = |dx: f64| polyline::at(&self.line, x + dx).map(|y| (x + dx, y));
         let a = side(-4.0).unwrap_or((x, y));
@@ -248,16 +322,33 @@ impl Painter<'_> {
         let s = self.text * 0.46;
         for f in &self.section.fittings {
             let y = f.y.or_else(|| polyline::at(&line, f.x));
-            let Some(at) = y.and_then(|y| self.layout.px((f.x, y))) else { continue };
+            let Some(at) = y.and_then(|y| self.layout.px((f.x, y))) else {
+                continue;
+            };
             glyph::draw(&mut self.svg, f.glyph, at, s);
             let (above, below) = glyph::reach(f.glyph);
             let (x0, x1) = (at.0 - s * 1.3, at.0 + s * 1.3);
-            self.placer.take(Rect { x0, y0: at.1 - s * above, x1, y1: at.1 + s * below });
+            self.placer.take(Rect {
+                x0,
+                y0: at.1 - s * above,
+                x1,
+                y1: at.1 + s * below,
+            });
         }
-        if let Some(at) = self.section.lowest.as_ref().and_then(|l| self.layout.px((l.x, l.y))) {
+        if let Some(at) = self
+            .section
+            .lowest
+            .as_ref()
+            .and_then(|l| self.layout.px((l.x, l.y)))
+        {
             let r = self.text * 0.5;
             self.svg.circle("d-mark", at, r);
-            self.placer.take(Rect { x0: at.0 - r, y0: at.1 - r, x1: at.0 + r, y1: at.1 + r });
+            self.placer.take(Rect {
+                x0: at.0 - r,
+                y0: at.1 - r,
+                x1: at.0 + r,
+                y1: at.1 + r,
+            });
         }
         self.water_sign();
     }
@@ -286,9 +377,21 @@ impl Painter<'_> {
         }
         if let Some(surge) = &section.surge {
             let line = self.layout.pxs(&surge.highest.points);
-            self.line_label(&surge.highest.label, "d-text d-surge-text d-halo", &line, false, &SHARES);
+            self.line_label(
+                &surge.highest.label,
+                "d-text d-surge-text d-halo",
+                &line,
+                false,
+                &SHARES,
+            );
             let line = self.layout.pxs(&surge.lowest.points);
-            self.line_label(&surge.lowest.label, "d-text d-surge-text d-halo", &line, true, &SHARES);
+            self.line_label(
+                &surge.lowest.label,
+                "d-text d-surge-text d-halo",
+                &line,
+                true,
+                &SHARES,
+            );
         }
         for level in section.static_level.iter().chain(&section.highest_static) {
             if let Some(line) = self.level_line(level.y) {
@@ -323,7 +426,12 @@ impl Painter<'_> {
     }
 
     fn words<'b>(&self, text: &'b str, class: &'b str) -> Words<'b> {
-        Words { text, size: self.text, strong: class.contains("fails-text"), class }
+        Words {
+            text,
+            size: self.text,
+            strong: class.contains("fails-text"),
+            class,
+        }
     }
 
     fn point_label(&mut self, text: &str, class: &str, at: (f64, f64), gap: f64) {
@@ -417,9 +525,8 @@ impl Painter<'_> {
             (&s.short_label, self.text),
             (&s.short_label, small),
         ];
-        let fits = |(t, size): &(&String, f64)| {
-            !t.is_empty() && text_width(t, *size, strong) <= room
-        };
+        let fits =
+            |(t, size): &(&String, f64)| !t.is_empty() && text_width(t, *size, strong) <= room;
         let Some((text, size)) = choices.into_iter().find(fits) else {
             self.left_out.push(s.label.clone());
             return;
@@ -429,7 +536,10 @@ impl Painter<'_> {
             (false, true) => "d-text d-strong",
             (false, false) => "d-text",
         };
-        let at = (f64::midpoint(x0, x1), f64::midpoint(top, bottom) + size * 0.36);
+        let at = (
+            f64::midpoint(x0, x1),
+            f64::midpoint(top, bottom) + size * 0.36,
+        );
         self.svg.text(class, at, Anchor::Middle, size, text);
     }
 
@@ -438,8 +548,15 @@ impl Painter<'_> {
         let y = self.layout.chainage_baseline;
         let mut taken: Vec<Rect> = Vec::new();
         for (chainage, label) in &self.section.chainage_ticks {
-            let Some(x) = self.layout.x.px(*chainage) else { continue };
-            let words = Words { text: label, size: self.text, strong: false, class: "d-text d-soft" };
+            let Some(x) = self.layout.x.px(*chainage) else {
+                continue;
+            };
+            let words = Words {
+                text: label,
+                size: self.text,
+                strong: false,
+                class: "d-text d-soft",
+            };
             let half = text_width(label, self.text, false) / 2.0;
             // Kept inside the frame; the last one ends with the line.
             let (x, anchor) = if x + half > field.x1 {
@@ -451,7 +568,11 @@ impl Painter<'_> {
             };
             let place = super::super::label::Place { x, y, anchor };
             let rect = text_box(&words, &place);
-            let wide = Rect { x0: rect.x0 - self.text * 0.5, x1: rect.x1 + self.text * 0.5, ..rect };
+            let wide = Rect {
+                x0: rect.x0 - self.text * 0.5,
+                x1: rect.x1 + self.text * 0.5,
+                ..rect
+            };
             if taken.iter().any(|t| t.overlaps(&wide)) {
                 continue;
             }

@@ -14,8 +14,13 @@ fn drawn(section: &LongSection, size: Size) -> LongSectionDrawing {
 fn a_full_section_shows_all_it_was_given() {
     let section = samples::section();
     let d = drawn(&section, Size::screen(360.0, 230.0));
-    for class in ["d-static", "d-grade", "d-hatch", "d-pipe", "d-cut", "d-sub", "d-band", "d-mark"] {
-        assert!(d.picture.svg.contains(&format!("class=\"{class}")), "{class}");
+    for class in [
+        "d-static", "d-grade", "d-hatch", "d-pipe", "d-cut", "d-sub", "d-band", "d-mark",
+    ] {
+        assert!(
+            d.picture.svg.contains(&format!("class=\"{class}")),
+            "{class}"
+        );
     }
     assert_eq!(d.left_out, Vec::<String>::new());
     assert!(!d.picture.svg.contains("style="));
@@ -33,7 +38,10 @@ fn the_exaggeration_is_the_ratio_of_the_scales() {
     let per_height = (b.1 - a.1) / (level(0) - level(last));
     let per_length = (b.0 - a.0) / 418.0;
     assert!((d.exaggeration - per_height / per_length).abs() < 1e-9);
-    assert_eq!(vertical_exaggeration(&section, size, &plain_number), Ok(d.exaggeration));
+    assert_eq!(
+        vertical_exaggeration(&section, size, &plain_number),
+        Ok(d.exaggeration)
+    );
 }
 
 #[test]
@@ -98,16 +106,31 @@ fn what_cannot_be_drawn_is_named() {
     let size = Size::screen(360.0, 230.0);
     let mut s = samples::section();
     s.points.truncate(1);
-    assert_eq!(draw(&s, size, number).unwrap_err(), DrawingError::TooFew { found: 1, needed: 2 });
+    assert_eq!(
+        draw(&s, size, number).unwrap_err(),
+        DrawingError::TooFew {
+            found: 1,
+            needed: 2
+        }
+    );
     let mut s = samples::section();
     s.points[2].y = f64::NAN;
-    assert_eq!(draw(&s, size, number).unwrap_err(), DrawingError::NotDrawable { index: 2 });
+    assert_eq!(
+        draw(&s, size, number).unwrap_err(),
+        DrawingError::NotDrawable { index: 2 }
+    );
     let mut s = samples::section();
     s.points[2].x = -5.0;
-    assert_eq!(draw(&s, size, number).unwrap_err(), DrawingError::Backwards { index: 2 });
+    assert_eq!(
+        draw(&s, size, number).unwrap_err(),
+        DrawingError::Backwards { index: 2 }
+    );
     let s = samples::section();
     let tiny = Size::screen(50.0, 40.0);
-    assert!(matches!(draw(&s, tiny, number), Err(DrawingError::NoRoom { .. })));
+    assert!(matches!(
+        draw(&s, tiny, number),
+        Err(DrawingError::NoRoom { .. })
+    ));
 }
 
 /// The boxes of all texts in a drawing, as wide as they are taken to be.
@@ -115,7 +138,13 @@ fn text_boxes(svg: &str) -> Vec<(String, crate::drawing::label::Rect)> {
     use crate::drawing::label::{Place, Words, text_box};
     use crate::drawing::svg::Anchor;
     let value = |tag: &str, name: &str| -> Option<String> {
-        Some(tag.split(&format!(" {name}=\"")).nth(1)?.split('"').next()?.to_owned())
+        Some(
+            tag.split(&format!(" {name}=\""))
+                .nth(1)?
+                .split('"')
+                .next()?
+                .to_owned(),
+        )
     };
     svg.split("<text")
         .skip(1)
@@ -128,8 +157,20 @@ fn text_boxes(svg: &str) -> Vec<(String, crate::drawing::label::Rect)> {
                 Some("end") => Anchor::End,
                 _ => Anchor::Start,
             };
-            let words = Words { text: &text, size: number("font-size"), strong: false, class: "" };
-            let rect = text_box(&words, &Place { x: number("x"), y: number("y"), anchor });
+            let words = Words {
+                text: &text,
+                size: number("font-size"),
+                strong: false,
+                class: "",
+            };
+            let rect = text_box(
+                &words,
+                &Place {
+                    x: number("x"),
+                    y: number("y"),
+                    anchor,
+                },
+            );
             (text.clone(), rect)
         })
         .collect()
@@ -154,7 +195,10 @@ fn no_label_overlaps_or_leaves_at_any_usual_size() {
     for width in [320.0, 360.0, 414.0, 640.0, 900.0] {
         for height in [180.0, 220.0, 300.0, 460.0] {
             for big in [false, true] {
-                let size = Size { big, ..Size::screen(width, height) };
+                let size = Size {
+                    big,
+                    ..Size::screen(width, height)
+                };
                 if let Ok(d) = draw(&section, size, &plain_number) {
                     assert_legible(&d.picture.svg, size);
                 }

@@ -56,7 +56,15 @@ const THUMB: f64 = 22.0;
 /// The first box that holds the point.
 pub(super) fn hit(hits: &[Hit], x: f64, y: f64) -> Option<HitWhat> {
     hits.iter()
-        .find(|h| Rect { x0: h.x0, y0: h.y0, x1: h.x1, y1: h.y1 }.holds_point(x, y))
+        .find(|h| {
+            Rect {
+                x0: h.x0,
+                y0: h.y0,
+                x1: h.x1,
+                y1: h.y1,
+            }
+            .holds_point(x, y)
+        })
         .map(|h| h.what)
 }
 
@@ -70,7 +78,13 @@ pub(super) fn hits(section: &LongSection, layout: &Layout) -> Vec<Hit> {
         if let Some((x, y)) = y.and_then(|y| layout.px((f.x, y))) {
             let half = THUMB * 0.6;
             let what = HitWhat::Fitting(i);
-            hits.push(Hit { x0: x - half, y0: y - half, x1: x + half, y1: y + half, what });
+            hits.push(Hit {
+                x0: x - half,
+                y0: y - half,
+                x1: x + half,
+                y1: y + half,
+                what,
+            });
         }
     }
     for (i, s) in section.stretches.iter().enumerate() {
@@ -78,8 +92,18 @@ pub(super) fn hits(section: &LongSection, layout: &Layout) -> Vec<Hit> {
             // Down to the edge, and as high as a thumb needs.
             let y1 = layout.size.height;
             let top = y1 - 2.0 * THUMB;
-            let y0 = if top < layout.band.0 { top } else { layout.band.0 };
-            hits.push(Hit { x0, y0, x1, y1, what: HitWhat::Stretch(i) });
+            let y0 = if top < layout.band.0 {
+                top
+            } else {
+                layout.band.0
+            };
+            hits.push(Hit {
+                x0,
+                y0,
+                x1,
+                y1,
+                what: HitWhat::Stretch(i),
+            });
         }
     }
     let stations: Vec<(usize, f64)> = section
@@ -92,8 +116,16 @@ pub(super) fn hits(section: &LongSection, layout: &Layout) -> Vec<Hit> {
     for (k, (i, x)) in stations.iter().enumerate() {
         let before = k.checked_sub(1).and_then(|j| stations.get(j));
         let x0 = before.map_or(0.0, |b| f64::midpoint(b.1, *x));
-        let x1 = stations.get(k + 1).map_or(layout.size.width, |a| f64::midpoint(a.1, *x));
-        hits.push(Hit { x0, y0: 0.0, x1, y1: layout.size.height, what: HitWhat::Station(*i) });
+        let x1 = stations
+            .get(k + 1)
+            .map_or(layout.size.width, |a| f64::midpoint(a.1, *x));
+        hits.push(Hit {
+            x0,
+            y0: 0.0,
+            x1,
+            y1: layout.size.height,
+            what: HitWhat::Station(*i),
+        });
     }
     hits
 }
@@ -120,7 +152,11 @@ impl Touch {
                 .filter(|(_, p)| p.is_station)
                 .map(|(i, p)| (i, p.x))
                 .collect(),
-            grade: section.grade.as_ref().map(|g| g.points.clone()).unwrap_or_default(),
+            grade: section
+                .grade
+                .as_ref()
+                .map(|g| g.points.clone())
+                .unwrap_or_default(),
             x: layout.x,
             y: layout.y,
             span: (layout.field.y0, layout.band.1),
@@ -128,7 +164,10 @@ impl Touch {
     }
 
     pub(super) fn pixel_of(&self, chainage: f64) -> Option<(f64, f64)> {
-        Some((self.x.px(chainage)?, self.y.px(polyline::at(&self.line, chainage)?)?))
+        Some((
+            self.x.px(chainage)?,
+            self.y.px(polyline::at(&self.line, chainage)?)?,
+        ))
     }
 
     pub(super) fn crosshair(&self, x: f64) -> Option<Crosshair> {
@@ -142,8 +181,8 @@ impl Touch {
             asked
         };
         let (x, pipe_y) = self.pixel_of(chainage)?;
-        let grade = polyline::at(&self.grade, chainage)
-            .and_then(|level| Some((level, self.y.px(level)?)));
+        let grade =
+            polyline::at(&self.grade, chainage).and_then(|level| Some((level, self.y.px(level)?)));
         let near = |s: &&(usize, f64)| (s.1 - chainage).abs();
         let nearest_station = self
             .stations

@@ -51,10 +51,26 @@ impl Key {
             .collect();
         let words = &chart.words;
         for (sign, text, occurs) in [
-            (Sign::Tight, &words.tight, has(&|p| p.verdict == Verdict::Tight)),
-            (Sign::Unsettled, &words.unsettled, has(&|p| p.verdict == Verdict::Unsettled)),
-            (Sign::Fails, &words.fails, has(&|p| p.verdict == Verdict::Fails)),
-            (Sign::Dominated, &words.dominated, has(&|p| p.dominated && !p.chosen)),
+            (
+                Sign::Tight,
+                &words.tight,
+                has(&|p| p.verdict == Verdict::Tight),
+            ),
+            (
+                Sign::Unsettled,
+                &words.unsettled,
+                has(&|p| p.verdict == Verdict::Unsettled),
+            ),
+            (
+                Sign::Fails,
+                &words.fails,
+                has(&|p| p.verdict == Verdict::Fails),
+            ),
+            (
+                Sign::Dominated,
+                &words.dominated,
+                has(&|p| p.dominated && !p.chosen),
+            ),
         ] {
             if occurs {
                 wanted.push((sign, text));
@@ -69,10 +85,19 @@ impl Key {
                 x = 0.0;
                 y += row;
             }
-            entries.push(Entry { sign, text: words.to_owned(), x: x + text * 0.55, y });
+            entries.push(Entry {
+                sign,
+                text: words.to_owned(),
+                x: x + text * 0.55,
+                y,
+            });
             x += taken;
         }
-        let height = if entries.is_empty() { 0.0 } else { y + row * 0.6 };
+        let height = if entries.is_empty() {
+            0.0
+        } else {
+            y + row * 0.6
+        };
         Key { entries, height }
     }
 }

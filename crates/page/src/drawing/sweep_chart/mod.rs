@@ -21,7 +21,8 @@ use super::{DrawingError, NumberFormat, Picture, Size, Verdict, under};
 pub struct SweepPoint {
     /// Bore in the display unit (mm or in).
     pub bore: f64,
-    /// Share of the gross head lost, 0 to 1; more than 1 is above the chart.
+    /// Share of the gross head lost, 0 to 1; more than [`MOST_SHARE`] is above the
+    /// chart.
     pub loss_share: f64,
     /// Its family, by place in [`SweepChart::families`].
     pub family: usize,
@@ -84,7 +85,7 @@ pub struct SweepChart {
 /// Points that are not in the picture, counted.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
 pub struct NotShown {
-    /// They lose more than all the head.
+    /// They lose more than [`MOST_SHARE`] of the head.
     pub above: usize,
     /// They lose so little that no one decides by it.
     pub below: usize,
@@ -190,17 +191,26 @@ pub fn draw(
         not_shown: count_not_shown(chart, &pixels),
         left_out: painted.left_out,
         pixels,
-        lesser: chart.points.iter().map(|p| p.dominated && !p.chosen).collect(),
+        lesser: chart
+            .points
+            .iter()
+            .map(|p| p.dominated && !p.chosen)
+            .collect(),
         field: layout.field,
     })
 }
 
 fn count_not_shown(chart: &SweepChart, pixels: &[Option<(f64, f64)>]) -> NotShown {
     let mut counts = NotShown::default();
-    for (p, _) in chart.points.iter().zip(pixels).filter(|(_, at)| at.is_none()) {
+    for (p, _) in chart
+        .points
+        .iter()
+        .zip(pixels)
+        .filter(|(_, at)| at.is_none())
+    {
         let counted = if !(p.bore > 0.0 && p.bore.is_finite() && p.loss_share >= 0.0) {
             &mut counts.without
-        } else if p.loss_share > 1.0 {
+        } else if p.loss_share > MOST_SHARE {
             &mut counts.above
         } else {
             &mut counts.below
@@ -217,7 +227,10 @@ fn is_drawable(p: &SweepPoint) -> bool {
 /// Losses below the cap by more than this factor are not shown: a catalogue runs
 /// to bores where the loss is nothing, and a chart that followed it there would
 /// have no room for what is decided.
-const BELOW_CAP: f64 = 25.0;
+const BELOW_CAP: f64 = 15.0;
+/// A loss above this share of the head is not shown: beyond one third more loss
+/// means less power, and no one goes that far.
+pub const MOST_SHARE: f64 = 0.6;
 /// What stands in for the cap where there is none: one tenth of the head (common
 /// practice).
 const USUAL_CAP: f64 = 0.1;
@@ -235,12 +248,23 @@ impl Layout {
         percent: NumberFormat<'_>,
     ) -> Result<Layout, DrawingError> {
         let text = size.text();
-        let no_room = DrawingError::NoRoom { width: size.width, height: size.height };
-        let (bores, losses) = ranges(chart).ok_or(DrawingError::TooFew { found: 0, needed: 1 })?;
+        let no_room = DrawingError::NoRoom {
+            width: size.width,
+            height: size.height,
+        };
+        let (bores, losses) = ranges(chart).ok_or(DrawingError::TooFew {
+            found: 0,
+            needed: 1,
+        })?;
 
         let right = size.width - text * 0.9;
         let key = key::Key::of(chart, size, right - text * 0.5);
-        let roof = text * if chart.words.loss.is_empty() { 1.0 } else { 2.1 };
+        let roof = text
+            * if chart.words.loss.is_empty() {
+                1.0
+            } else {
+                2.1
+            };
         let bore_baseline = size.height - key.height - text * 0.5;
         let floor = bore_baseline - text * 1.25;
         if under(floor - roof, text * 4.0) {
@@ -267,7 +291,12 @@ impl Layout {
         let none = || no_room;
         Ok(Layout {
             size,
-            field: Rect { x0: left, y0: roof, x1: right, y1: floor },
+            field: Rect {
+                x0: left,
+                y0: roof,
+                x1: right,
+                y1: floor,
+            },
             x: Scale::logarithmic(bores, (left, right)).ok_or_else(none)?,
             y: Scale::logarithmic(losses, (floor, roof)).ok_or_else(none)?,
             x_ticks,
@@ -283,16 +312,22 @@ type Ranges = ((f64, f64), (f64, f64));
 /// Bores and losses with a margin, so that no shape is cut by the edge; the
 /// limits are always in.
 fn ranges(chart: &SweepChart) -> Option<Ranges> {
-    let cap = chart.cap.as_ref().map(|c| c.share).filter(|c| *c > 0.0 && *c <= 1.0);
+    let cap = chart
+        .cap
+        .as_ref()
+        .map(|c| c.share)
+        .filter(|c| *c > 0.0 && *c <= 1.0);
     let least = cap.unwrap_or(USUAL_CAP) / BELOW_CAP;
-    // Unless all lie below, or the chosen one does.
-    let all_below = chart.points.iter().filter(|p| is_drawable(p)).all(|p| p.loss_share < least);
-    let counts = |p: &&SweepPoint| {
-        is_drawable(p) && (all_below || p.loss_share >= least || p.chosen)
-    };
+    // The window gives way to the chosen one, and to a chart with nothing in it.
+    let inside = |p: &SweepPoint| p.loss_share >= least && p.loss_share <= MOST_SHARE;
+    let none_inside = !chart.points.iter().any(|p| is_drawable(p) && inside(p));
+    let counts = |p: &&SweepPoint| is_drawable(p) && (none_inside || inside(p) || p.chosen);
     let (mut bores, mut losses) = ((f64::MAX, 0.0_f64), (f64::MAX, 0.0_f64));
     let widen = |range: &mut (f64, f64), v: f64| {
-        *range = (if v < range.0 { v } else { range.0 }, if v > range.1 { v } else { range.1 });
+        *range = (
+            if v < range.0 { v } else { range.0 },
+            if v > range.1 { v } else { range.1 },
+        );
     };
     for p in chart.points.iter().filter(counts) {
         widen(&mut bores, p.bore);
@@ -307,7 +342,13 @@ fn ranges(chart: &SweepChart) -> Option<Ranges> {
         }
     }
     let top = (losses.1 * 1.35).min(1.0);
-    Some(((bores.0 / 1.07, bores.1 * 1.07), (losses.0 / 1.35, if top > losses.0 { top } else { losses.0 * 1.35 })))
+    Some((
+        (bores.0 / 1.07, bores.1 * 1.07),
+        (
+            losses.0 / 1.35,
+            if top > losses.0 { top } else { losses.0 * 1.35 },
+        ),
+    ))
 }
 
 #[cfg(test)]

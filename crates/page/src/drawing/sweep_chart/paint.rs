@@ -22,11 +22,7 @@ struct Painter<'a> {
     left_out: Vec<String>,
 }
 
-pub(super) fn paint(
-    chart: &SweepChart,
-    layout: &Layout,
-    pixels: &[Option<(f64, f64)>],
-) -> Painted {
+pub(super) fn paint(chart: &SweepChart, layout: &Layout, pixels: &[Option<(f64, f64)>]) -> Painted {
     let field = layout.field;
     let mut painter = Painter {
         chart,
@@ -34,7 +30,10 @@ pub(super) fn paint(
         pixels,
         text: layout.size.text(),
         svg: Svg::new(),
-        placer: Placer::new(Rect { y0: field.y0 - layout.size.text() * 1.05, ..field }),
+        placer: Placer::new(Rect {
+            y0: field.y0 - layout.size.text() * 1.05,
+            ..field
+        }),
         left_out: Vec::new(),
     };
     painter.veil();
@@ -45,14 +44,26 @@ pub(super) fn paint(
     painter.chosen();
     painter.labels();
     painter.key();
-    Painted { svg: painter.svg.finish(), left_out: painter.left_out }
+    Painted {
+        svg: painter.svg.finish(),
+        left_out: painter.left_out,
+    }
 }
+
+/// Under this share of the text's size a shape's broken outline is broken finer.
+const SMALL: f64 = 0.34;
 
 impl Painter<'_> {
     /// Radius of a full point and of a light one.
     fn radii(&self) -> (f64, f64) {
         let shown = |(p, at): &(&SweepPoint, &Option<(f64, f64)>)| !p.dominated && at.is_some();
-        let crowd = self.chart.points.iter().zip(self.pixels).filter(shown).count();
+        let crowd = self
+            .chart
+            .points
+            .iter()
+            .zip(self.pixels)
+            .filter(shown)
+            .count();
         // A crowd of full points gets smaller ones.
         let full = if crowd > 120 {
             3.2
@@ -68,9 +79,20 @@ impl Painter<'_> {
     /// Beyond the cap lies a light veil.
     fn veil(&mut self) {
         let field = self.layout.field;
-        if let Some(y) = self.chart.cap.as_ref().and_then(|c| self.layout.y.px(c.share)) {
+        if let Some(y) = self
+            .chart
+            .cap
+            .as_ref()
+            .and_then(|c| self.layout.y.px(c.share))
+        {
             let y = y.clamp(field.y0, field.y1);
-            self.svg.rect("d-veil", field.x0, field.y0, field.x1 - field.x0, y - field.y0);
+            self.svg.rect(
+                "d-veil",
+                field.x0,
+                field.y0,
+                field.x1 - field.x0,
+                y - field.y0,
+            );
         }
     }
 
@@ -78,7 +100,9 @@ impl Painter<'_> {
         let field = self.layout.field;
         let text = self.text;
         for (tick, label) in &self.layout.y_ticks {
-            let Some(y) = self.layout.y.px(tick.value) else { continue };
+            let Some(y) = self.layout.y.px(tick.value) else {
+                continue;
+            };
             self.svg.line("d-grid", (field.x0, y), (field.x1, y));
             let at = (field.x0 - text * 0.5, y + text * 0.36);
             self.svg.text("d-text d-soft", at, Anchor::End, text, label);
@@ -89,26 +113,38 @@ impl Painter<'_> {
         let end = self.layout.size.width - text * 0.5;
         let mut free_until = end;
         if !unit.is_empty() {
-            self.svg.text("d-text d-soft", (end, baseline), Anchor::End, text, unit);
+            self.svg
+                .text("d-text d-soft", (end, baseline), Anchor::End, text, unit);
             free_until = end - text_width(unit, text, false) - text * 0.6;
         }
         let mut free_from = 0.0;
         for (tick, label) in &self.layout.x_ticks {
-            let Some(x) = self.layout.x.px(tick.value) else { continue };
+            let Some(x) = self.layout.x.px(tick.value) else {
+                continue;
+            };
             self.svg.line("d-grid", (x, field.y0), (x, field.y1));
             let half = text_width(label, text, false) / 2.0;
             if x - half >= free_from && x + half <= free_until {
-                self.svg.text("d-text d-soft", (x, baseline), Anchor::Middle, text, label);
+                self.svg
+                    .text("d-text d-soft", (x, baseline), Anchor::Middle, text, label);
                 free_from = x + half + text * 0.5;
             }
         }
         let loss = &self.chart.words.loss;
-        self.svg.text("d-text d-soft", (text * 0.5, text), Anchor::Start, text, loss);
+        self.svg.text(
+            "d-text d-soft",
+            (text * 0.5, text),
+            Anchor::Start,
+            text,
+            loss,
+        );
     }
 
     fn limit_line(&mut self, class: &str, limit: &Limit) {
         let field = self.layout.field;
-        let Some(y) = self.layout.y.px(limit.share) else { return };
+        let Some(y) = self.layout.y.px(limit.share) else {
+            return;
+        };
         if y >= field.y0 - 0.5 && y <= field.y1 + 0.5 {
             self.svg.line(class, (field.x0, y), (field.x1, y));
             self.placer.avoid(&[(field.x0, y), (field.x1, y)], 2.0);
@@ -130,7 +166,9 @@ impl Painter<'_> {
     }
 
     fn drop_lines(&mut self) {
-        let Some((x, y)) = self.chosen_at() else { return };
+        let Some((x, y)) = self.chosen_at() else {
+            return;
+        };
         let field = self.layout.field;
         self.svg.line("d-drop", (x, y), (x, field.y1));
         self.svg.line("d-drop", (field.x0, y), (x, y));
@@ -155,44 +193,36 @@ impl Painter<'_> {
             .filter(|(p, _)| !p.chosen)
             .collect();
         order.sort_by_key(|(p, _)| rank(p));
-        // Light ones of a kind go into one path: seven hundred elements would be
-        // slow to draw, and nothing tells them apart.
-        let mut lights = [Path::new(), Path::new(), Path::new()];
-        for (p, at) in order {
-            let shape = Shape::of(p.family);
-            if p.dominated {
-                let [whole, broken, struck] = &mut lights;
-                let into = match p.verdict {
-                    Verdict::Unsettled => broken,
-                    Verdict::Fails => {
-                        strike(struck, at, light * 1.3);
-                        whole
-                    }
-                    Verdict::Holds | Verdict::Tight => whole,
-                };
-                shape.outline(into, at, light);
-                continue;
+        // Light ones go into one path: seven hundred elements would be slow to draw,
+        // and at their size no broken outline would be seen.
+        let (mut lights, mut struck) = (Path::new(), Path::new());
+        for (p, at) in order.iter().filter(|(p, _)| p.dominated) {
+            Shape::of(p.family).outline(&mut lights, *at, light);
+            if p.verdict == Verdict::Fails {
+                strike(&mut struck, *at, light * 1.3);
             }
-            let [whole, broken, struck] = core::mem::take(&mut lights);
-            self.lights(&whole, &broken, &struck);
-            self.point(shape, p.verdict, at, full);
-            let r = full * 1.1;
-            self.placer.take(Rect { x0: at.0 - r, y0: at.1 - r, x1: at.0 + r, y1: at.1 + r });
         }
-        let [whole, broken, struck] = lights;
-        self.lights(&whole, &broken, &struck);
-    }
-
-    fn lights(&mut self, whole: &Path, broken: &Path, struck: &Path) {
-        self.svg.path("d-shape-lesser", whole);
-        self.svg.path("d-shape-lesser d-shape-unsettled", broken);
-        self.svg.path("d-strike d-strike-lesser", struck);
+        self.svg.path("d-shape-lesser", &lights);
+        self.svg.path("d-strike d-strike-lesser", &struck);
+        for (p, at) in order.into_iter().filter(|(p, _)| !p.dominated) {
+            self.point(Shape::of(p.family), p.verdict, at, full);
+            let r = full * 1.1;
+            self.placer.take(Rect {
+                x0: at.0 - r,
+                y0: at.1 - r,
+                x1: at.0 + r,
+                y1: at.1 + r,
+            });
+        }
     }
 
     fn point(&mut self, shape: Shape, verdict: Verdict, at: (f64, f64), r: f64) {
         let mut path = Path::new();
         shape.outline(&mut path, at, r);
         let class = match verdict {
+            Verdict::Unsettled if r < SMALL * self.text => {
+                "d-shape d-shape-unsettled d-shape-small"
+            }
             Verdict::Unsettled => "d-shape d-shape-unsettled",
             Verdict::Fails => "d-shape d-shape-fails",
             Verdict::Holds | Verdict::Tight => "d-shape",
@@ -213,7 +243,9 @@ impl Painter<'_> {
 
     fn chosen(&mut self) {
         let Some(at) = self.chosen_at() else { return };
-        let Some(p) = self.chart.points.iter().find(|p| p.chosen) else { return };
+        let Some(p) = self.chart.points.iter().find(|p| p.chosen) else {
+            return;
+        };
         let (full, _) = self.radii();
         let ring = self.text * 1.05;
         self.svg.circle("d-ring-ground", at, ring);
@@ -242,7 +274,12 @@ impl Painter<'_> {
         let words = &self.chart.words;
         if let Some(at) = self.chosen_at() {
             let class = "d-text d-water d-strong d-halo";
-            let w = Words { text: &words.chosen, size: self.text, strong: true, class };
+            let w = Words {
+                text: &words.chosen,
+                size: self.text,
+                strong: true,
+                class,
+            };
             let mut places = around(at.0, at.1, self.text * 1.5, self.text);
             places.extend(around(at.0, at.1, self.text * 3.0, self.text));
             let led = (at, self.text * 1.05, self.text * 2.2);
@@ -271,15 +308,26 @@ impl Painter<'_> {
     /// At the line's right end if it can be, else along it; over it or under it.
     fn limit_label(&mut self, limit: &Limit, class: &str, strong: bool) {
         let field = self.layout.field;
-        let Some(y) = self.layout.y.px(limit.share) else { return };
-        let w = Words { text: &limit.label, size: self.text, strong, class };
+        let Some(y) = self.layout.y.px(limit.share) else {
+            return;
+        };
+        let w = Words {
+            text: &limit.label,
+            size: self.text,
+            strong,
+            class,
+        };
         let width = text_width(w.text, w.size, strong);
         let room = field.x1 - field.x0 - width;
         let mut places = Vec::new();
         for k in 0..=12 {
             let x = field.x1 - 3.0 - (room - 6.0).max(0.0) * f64::from(k) / 12.0;
             for y in [y - self.text * 0.4, y + self.text * 1.0] {
-                places.push(Place { x, y, anchor: Anchor::End });
+                places.push(Place {
+                    x,
+                    y,
+                    anchor: Anchor::End,
+                });
             }
         }
         // Over points rather than not at all: the line must have its name.
@@ -315,7 +363,8 @@ impl Painter<'_> {
                 Sign::Fails => self.point(Shape::Circle, Verdict::Fails, at, r),
             }
             let at = (at.0 + text * 0.75, at.1 + text * 0.36);
-            self.svg.text("d-text d-soft", at, Anchor::Start, text, &entry.text);
+            self.svg
+                .text("d-text d-soft", at, Anchor::Start, text, &entry.text);
         }
     }
 }
