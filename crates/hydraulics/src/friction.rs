@@ -19,8 +19,8 @@ mod law;
 pub use colebrook::{colebrook_factor, colebrook_factors, colebrook_white};
 pub use factor::{
     DarcyFactor, FrictionError, GREATEST_RELATIVE_ROUGHNESS, GREATEST_REYNOLDS, LAMINAR_LIMIT,
-    Regime, RelativeRoughness, ReynoldsNumber, TURBULENT_LIMIT, darcy_factor, darcy_weisbach,
-    factor_si, laminar, reynolds_number,
+    LEAST_REYNOLDS, Regime, RelativeRoughness, ReynoldsNumber, TURBULENT_LIMIT, darcy_factor,
+    darcy_weisbach, factor_si, laminar, reynolds_number,
 };
 pub use law::{
     BORE_RANGE_M, Friction, FrictionLaw, HAZEN_WILLIAMS_RANGE, MANNING_RANGE,

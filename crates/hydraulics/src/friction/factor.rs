@@ -18,6 +18,10 @@ pub const GREATEST_RELATIVE_ROUGHNESS: f64 = 0.1;
 /// Greatest Reynolds number accepted: ten times the end of Moody's diagram.
 pub const GREATEST_REYNOLDS: f64 = 1e9;
 
+/// Least Reynolds number accepted: below it water stands still, and nothing
+/// may underflow.
+pub const LEAST_REYNOLDS: f64 = 1e-100;
+
 /// Why there is no friction factor.
 #[derive(Debug, Clone, Copy, PartialEq)]
 #[non_exhaustive]
@@ -124,7 +128,7 @@ impl ReynoldsNumber {
     /// # Errors
     /// [`FrictionError::Reynolds`] when it is not above 0 and at most 1e9.
     pub fn new(value: f64) -> Result<Self, FrictionError> {
-        if value > 0.0 && value <= GREATEST_REYNOLDS {
+        if (LEAST_REYNOLDS..=GREATEST_REYNOLDS).contains(&value) {
             Ok(Self(value))
         } else {
             Err(FrictionError::Reynolds(value))
@@ -349,7 +353,7 @@ mod tests {
 
     #[test]
     fn numbers_outside_are_refused() {
-        for value in [0.0, -1.0, 1.1e9, f64::NAN, f64::INFINITY] {
+        for value in [0.0, -1.0, 1e-310, 1.1e9, f64::NAN, f64::INFINITY] {
             assert!(ReynoldsNumber::new(value).is_err());
         }
         for value in [-1e-9, 0.1001, f64::NAN] {

@@ -2,8 +2,8 @@
 
 use super::colebrook::colebrook_factor;
 use super::factor::{
-    FrictionError, GREATEST_RELATIVE_ROUGHNESS, GREATEST_REYNOLDS, Regime, TURBULENT_LIMIT,
-    factor_si,
+    FrictionError, GREATEST_RELATIVE_ROUGHNESS, GREATEST_REYNOLDS, LEAST_REYNOLDS, Regime,
+    TURBULENT_LIMIT, factor_si,
 };
 use crate::math;
 use crate::quantity::{Acceleration, Length, VolumeRate};
@@ -22,12 +22,10 @@ pub const MANNING_RANGE: (f64, f64) = (0.007, 0.035);
 
 /// Bores accepted, m: from a hair to a tunnel.
 pub const BORE_RANGE_M: (f64, f64) = (1e-6, 100.0);
-/// Reynolds number below which water stands still, so that nothing underflows.
-const STILL: f64 = 1e-100;
 
 /// Factor of the Hazen-Williams formula in SI units: 1.318 x 0.3048^0.37 of
 /// its first form in feet (Williams and Hazen, Hydraulic Tables, 1905).
-const HAZEN_WILLIAMS_SI: f64 = 0.849_1;
+const HAZEN_WILLIAMS_SI: f64 = 0.849_182;
 
 /// How the friction of a pipe is given.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -140,7 +138,7 @@ impl FrictionLaw {
 
     /// Kernel of [`Self::head_gradient`] on checked SI numbers.
     pub(crate) fn friction_si(&self, velocity: f64, d: f64, reynolds: f64, g: f64) -> Friction {
-        if velocity <= 0.0 || reynolds <= STILL {
+        if velocity <= 0.0 || reynolds < LEAST_REYNOLDS {
             return Friction {
                 gradient: 0.0,
                 velocity: 0.0,
