@@ -41,7 +41,9 @@ fn line(what: &str, ratio: f64, target: &str) {
 /// the same loop.
 fn friction() -> f64 {
     const N: usize = 8192;
-    let reynolds: Vec<f64> = (0..N).map(|i| 4e3 * 1.0015f64.powi(i32::try_from(i).unwrap_or(0))).collect();
+    let reynolds: Vec<f64> = (0..N)
+        .map(|i| 4e3 * 1.0015f64.powi(i32::try_from(i).unwrap_or(0)))
+        .collect();
     let reynolds: Vec<f64> = reynolds.iter().map(|r| r.min(9e8)).collect();
     let rough: Vec<f64> = (0..N).map(|i| 1e-6 + 5e-6 * i as f64).collect();
     let mut out = vec![0.0; N];
@@ -54,14 +56,22 @@ fn friction() -> f64 {
                 black_box(&out);
             },
             &mut || {
-                for ((o, re), e) in out2.iter_mut().zip(black_box(&reynolds)).zip(black_box(&rough)) {
+                for ((o, re), e) in out2
+                    .iter_mut()
+                    .zip(black_box(&reynolds))
+                    .zip(black_box(&rough))
+                {
                     *o = re.ln() + e.ln();
                 }
                 black_box(&out2);
             },
         ],
     );
-    line("Colebrook-White against two platform ln", kernel / logs, "target <= 1.2 native");
+    line(
+        "Colebrook-White against two platform ln",
+        kernel / logs,
+        "target <= 1.2 native",
+    );
     kernel / N as f64
 }
 
@@ -90,14 +100,33 @@ fn main() {
             },
         ],
     );
-    line("steady line with jets, against one friction factor", steady_s / one_factor, "");
-    line("whole evaluation, against the steady line", evaluate_s / steady_s, "");
-    line("reading the entries, against the steady line", resolve_s / steady_s, "");
-    line("one sweep row, against the steady line", sweep_s / total as f64 / steady_s, "");
+    line(
+        "steady line with jets, against one friction factor",
+        steady_s / one_factor,
+        "",
+    );
+    line(
+        "whole evaluation, against the steady line",
+        evaluate_s / steady_s,
+        "",
+    );
+    line(
+        "reading the entries, against the steady line",
+        resolve_s / steady_s,
+        "",
+    );
+    line(
+        "one sweep row, against the steady line",
+        sweep_s / total as f64 / steady_s,
+        "",
+    );
     line(
         "sweep of the catalogue, against one frame of 16 ms",
         sweep_s / 0.016,
         "below 1: no frame lost",
     );
-    println!("({total} pipes; {} stations in the demo book)", book.line.stations.len());
+    println!(
+        "({total} pipes; {} stations in the demo book)",
+        book.line.stations.len()
+    );
 }

@@ -1,0 +1,96 @@
+//! Books as older editions wrote them must open for ever.
+//!
+//! The figures compared here are our own output of the day the file was
+//! frozen: change detectors, no evidence that the figures are right.
+
+use workbook::format;
+use workbook::verdict::Verdict;
+use workbook::{EntryTrouble, Field, Trouble, evaluate};
+
+const FORMAT_1: &[u8] = include_bytes!("../data/books/format-1.json");
+
+#[test]
+fn format_1_opens_with_its_figures() {
+    let book = format::read(FORMAT_1).unwrap();
+    assert_eq!(book.format, 1);
+    assert!(book.invented);
+    let found = evaluate(&book);
+    // The one entry left unusable on purpose is kept as typed, and named.
+    assert_eq!(book.levels.tail_m.text, "about 117");
+    assert!(matches!(
+        found.troubles()[..],
+        [Trouble::Entry(
+            Field::TailLevel,
+            EntryTrouble::Unreadable(_)
+        )]
+    ));
+    assert_eq!(found.judged.verdict, Verdict::Unsettled);
+    let near = |a: f64, b: f64| assert!((a - b).abs() < 1e-9 * b, "{a} was {b}");
+    near(found.resolved.gross_head.clone().unwrap().m(), 68.3);
+    near(found.steady.loss.clone().unwrap().m(), 3.900_627_623_956_33);
+    near(
+        found.steady.solved.clone().unwrap().jet_power.value,
+        24_956.260_883_802,
+    );
+    // Typed with a decimal comma, as a fraction of an inch, with its own unit.
+    near(
+        book.value(Field::Own(1, workbook::field::OwnField::OutsideDiameter))
+            .unwrap()
+            .unwrap(),
+        0.2191,
+    );
+    near(
+        book.value(Field::Own(1, workbook::field::OwnField::Wall))
+            .unwrap()
+            .unwrap(),
+        0.00635,
+    );
+}
+
+#[test]
+fn what_is_written_again_is_what_was_read() {
+    let book = format::read(FORMAT_1).unwrap();
+    let again = format::write(&book).unwrap();
+    let before: serde_json::Value = serde_json::from_slice(FORMAT_1).unwrap();
+    let after: serde_json::Value = serde_json::from_str(&again).unwrap();
+    assert_eq!(before, after);
+}
+
+#[test]
+fn the_schema_knows_every_name_of_the_frozen_book() {
+    let schema: serde_json::Value = serde_json::from_str(&format::schema()).unwrap();
+    let book: serde_json::Value = serde_json::from_slice(FORMAT_1).unwrap();
+    check(&book, &schema, &schema, "book");
+}
+
+/// Follows a value along its schema, as far as names go.
+fn check(
+    value: &serde_json::Value,
+    schema: &serde_json::Value,
+    root: &serde_json::Value,
+    at: &str,
+) {
+    let schema = match schema.get("$ref").and_then(|r| r.as_str()) {
+        Some(reference) => root
+            .pointer(reference.trim_start_matches('#'))
+            .unwrap_or_else(|| panic!("{at}: {reference} leads nowhere")),
+        None => schema,
+    };
+    if let Some(object) = value.as_object()
+        && let Some(properties) = schema.get("properties")
+    {
+        for (name, inner) in object {
+            let property = properties
+                .get(name)
+                .unwrap_or_else(|| panic!("{at}.{name} is not in the schema"));
+            check(inner, property, root, &format!("{at}.{name}"));
+        }
+    }
+    if let Some(items) = value.as_array()
+        && let Some(item_schema) = schema.get("items")
+    {
+        for (i, inner) in items.iter().enumerate() {
+            check(inner, item_schema, root, &format!("{at}[{i}]"));
+        }
+    }
+}
