@@ -100,7 +100,7 @@ impl About<'_> {
                 text::caution_loss_body(
                     words,
                     &words.figure(Measure::share(*share)),
-                    &words.full(Measure::share(*cap)),
+                    &words.brief(Measure::share(*cap)),
                 ),
                 None,
             ),
@@ -115,18 +115,18 @@ impl About<'_> {
         let words = self.words;
         match assumption {
             Assumption::ForebayAtFirstStation(level) => {
-                text::assumption_forebay(words, &words.full(*level))
+                text::assumption_forebay(words, &words.brief(*level))
             }
             Assumption::HighestIsNormal(level) => {
-                text::assumption_highest(words, &words.full(*level))
+                text::assumption_highest(words, &words.brief(*level))
             }
             Assumption::JetsAtLastStation(level) => {
-                text::assumption_jets(words, &words.full(*level))
+                text::assumption_jets(words, &words.brief(*level))
             }
             Assumption::Preset(field, preset) => text::assumption_preset(
                 words,
                 &self.field(*field),
-                &words.full(Measure::new(preset.value, field.kind())),
+                &words.brief(Measure::new(preset.value, field.kind())),
                 &words.source(preset.source),
             ),
             Assumption::SeaLevel => words.say(Key::ASSUMPTION_SEA_LEVEL).to_owned(),

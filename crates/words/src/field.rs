@@ -95,7 +95,7 @@ impl Words {
     #[must_use]
     pub fn field_preset(self, field: Field) -> Option<String> {
         let preset = field.preset()?;
-        let value = self.full(Measure::new(preset.value, field.kind()));
+        let value = self.brief(Measure::new(preset.value, field.kind()));
         Some(text::hint_preset(self, &value, &self.source(preset.source)))
     }
 
@@ -111,7 +111,8 @@ impl Words {
                 text::entry_disagrees(self, &full(*text), &full(*kept))
             }
             EntryTrouble::OutOfRange { value, least, most } => {
-                text::entry_out_of_range(self, &full(*value), &full(*least), &full(*most))
+                let limit = |x: f64| self.brief(Measure::new(x, kind));
+                text::entry_out_of_range(self, &full(*value), &limit(*least), &limit(*most))
             }
             EntryTrouble::NotWhole { value } => text::entry_not_whole(self, &full(*value)),
             _ => self.say(Key::ENTRY_UNUSABLE).to_owned(),

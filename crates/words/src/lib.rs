@@ -17,6 +17,8 @@ mod file;
 pub mod language;
 mod name;
 mod number;
+#[cfg(test)]
+mod tests;
 pub mod text;
 mod trouble;
 mod verdict;

@@ -16,8 +16,6 @@ const THIN: char = '\u{202f}';
 const MINUS: char = '\u{2212}';
 /// Stands where no finite number is.
 const NONE: &str = "\u{2014}";
-/// Most decimals printed.
-const MOST_DECIMALS: i32 = 15;
 /// From here on a number is printed with an exponent, and is none that a
 /// penstock has.
 const HUGE: f64 = 1e15;
@@ -164,13 +162,19 @@ fn rule(kind: Kind, system: UnitSystem) -> Rule {
     }
 }
 
-/// Decimals that still mean something of a kind, when all are asked for.
-fn full_decimals(kind: Kind) -> i32 {
+/// Decimals that still mean something of a kind, in the unit it is shown in:
+/// beyond them stands noise of the change of units.
+fn most_decimals(kind: Kind) -> i32 {
     match kind {
         // A survey does not reach below the centimetre.
-        Kind::Distance | Kind::Level => 2,
-        Kind::Head => 3,
-        _ => MOST_DECIMALS,
+        Kind::Distance | Kind::Level | Kind::Temperature | Kind::Angle => 2,
+        Kind::Head | Kind::Mass => 3,
+        Kind::Share | Kind::PricePerLength => 4,
+        Kind::Pressure | Kind::Velocity | Kind::Time | Kind::MassPerLength => 5,
+        Kind::Flow | Kind::Power | Kind::Stress => 6,
+        // Roughness of smooth pipe, in inches.
+        Kind::Bore => 7,
+        Kind::Number => 9,
     }
 }
 
@@ -181,7 +185,7 @@ const FULL_FIGURES: i32 = 7;
 impl Rule {
     /// Decimals for this value; below zero, digits before the mark that are
     /// rounded away.
-    fn decimals(&self, x: f64) -> i32 {
+    fn decimals(&self, x: f64, most_decimals: i32) -> i32 {
         let size = x.abs();
         let wanted = self
             .steps
@@ -194,7 +198,7 @@ impl Rule {
         wanted
             .max(self.least - 1 - leading)
             .min(self.most - 1 - leading)
-            .min(MOST_DECIMALS)
+            .min(most_decimals)
     }
 }
 
@@ -292,10 +296,11 @@ impl Words {
             return NONE.to_owned();
         };
         let rule = rule(measure.kind, self.units);
-        let mut plain = fixed(x, rule.decimals(x));
+        let most = most_decimals(measure.kind);
+        let mut plain = fixed(x, rule.decimals(x, most));
         // What rounds up over a bound takes the digits from beyond it.
         if let Ok(rounded) = plain.parse::<f64>() {
-            plain = fixed(x, rule.decimals(rounded));
+            plain = fixed(x, rule.decimals(rounded, most));
         }
         dress(if rule.trim { trimmed(&plain) } else { &plain }, self.mark)
     }
@@ -308,13 +313,27 @@ impl Words {
             return NONE.to_owned();
         };
         let decimals = leading_place(x).map_or(0, |leading| {
-            (FULL_FIGURES - 1 - leading).clamp(0, full_decimals(measure.kind))
+            (FULL_FIGURES - 1 - leading).clamp(0, most_decimals(measure.kind))
         });
         let plain = fixed(x, decimals);
         self.with_unit(dress(trimmed(&plain), self.mark), measure.kind)
     }
 
-    /// The same for a value that an error carries, which may be no number.
+    /// A value that was set by a person, such as a limit or a preset: the
+    /// shorter of [`Words::figure`] and [`Words::full`], "3 m/s" and not
+    /// "3.00 m/s", "9.84 ft/s" and not "9.84252 ft/s".
+    #[must_use]
+    pub fn brief(self, measure: impl Into<Measure>) -> String {
+        let measure = measure.into();
+        let (figure, full) = (self.figure(measure), self.full(measure));
+        if full.len() < figure.len() {
+            full
+        } else {
+            figure
+        }
+    }
+
+    /// [`Words::full`] for a value that an error carries, which may be no number.
     pub(crate) fn full_or_dash(self, measure: Measure) -> String {
         if measure.value.is_finite() {
             self.full(measure)
@@ -464,6 +483,10 @@ mod tests {
             assert_eq!(easy(&words.figure(measure)), short);
             assert_eq!(easy(&words.full(measure)), full);
         }
+        let limit = Measure::new(3.0, Kind::Velocity);
+        assert_eq!(easy(&en.brief(limit)), "3 m/s");
+        assert_eq!(easy(&us.brief(limit)), "9.84 ft/s");
+        assert_eq!(easy(&en.brief(Measure::share(0.125))), "12.5 %");
         let price = Measure::new(12.5, Kind::PricePerLength);
         assert_eq!(easy(&es.price(price, "USD")), "12,50 USD/m");
         assert_eq!(
@@ -532,18 +555,24 @@ mod tests {
                     let unit = kind.default_unit(words.units);
                     let measure = Measure::new(unit.to_base(x), kind);
                     let rule = rule(kind, words.units);
-                    for (text, most) in [
-                        (words.figure(measure), rule.most),
-                        (words.full(measure), FULL_FIGURES),
+                    // Trimmed zeros hide the last digit: of a coefficient it
+                    // is the third figure, of the others the first decimal.
+                    let trimmed = match (rule.trim, kind) {
+                        (true, Kind::Number) => 0.5e-2 * size,
+                        (true, _) => 0.05,
+                        (false, _) => 0.0,
+                    };
+                    for (text, most, trimmed) in [
+                        (words.figure(measure), rule.most, trimmed),
+                        (words.full(measure), FULL_FIGURES, 0.0),
                     ] {
                         let back = read(&text, kind, unit, words.mark).unwrap().unwrap();
                         prop_assert_eq!(back.own_unit, !unit.symbol.is_empty());
                         let digit = half_digit(&text)
                             // Digits that the rule itself takes away.
                             .max(0.5 * size * format!("1e{}", 1 - most.min(17)).parse::<f64>().unwrap())
-                            // Zeros trimmed.
-                            .max(if rule.trim { 0.05 } else { 0.0 })
-                            .max(if matches!(kind, Kind::Distance | Kind::Level) { 0.005 } else { 0.0 });
+                            .max(trimmed)
+                            .max(format!("0.5e-{}", most_decimals(kind)).parse().unwrap());
                         let off = (unit.from_base(back.value) - x).abs();
                         prop_assert!(
                             off <= digit * (1.0 + 1e-9) + 1e-12 * size,
@@ -565,15 +594,14 @@ mod tests {
                     let text = words.full(measure);
                     let unit = kind.default_unit(system);
                     let base = read(&text, kind, unit, words.mark).unwrap().unwrap().value;
-                    let least = unit.to_base(0.005) - unit.to_base(0.0);
-                    (base, least)
+                    // Half of the last decimal that means something.
+                    let last = format!("0.5e-{}", most_decimals(kind)).parse().unwrap();
+                    (base, unit.to_base(last) - unit.to_base(0.0))
                 };
                 let (metric, a) = back(UnitSystem::Metric);
                 let (us, b) = back(UnitSystem::UsCustomary);
-                let capped = full_decimals(kind) < MOST_DECIMALS;
-                // Half a digit of each, at seven figures or at the survey's.
-                let digits = if capped { a + b } else { 0.0 };
-                let off = digits + 1e-6 * value + 1e-12;
+                // And half a digit at seven figures, of each.
+                let off = (a + b) * (1.0 + 1e-9) + 1e-6 * value;
                 prop_assert!((metric - us).abs() <= off, "{kind:?} {value}: {metric} {us}");
             }
         }

@@ -112,7 +112,7 @@ impl About<'_> {
             FigureKey::Share(id) => (Key::FIGURE_SHARE_USED, Some(id)),
             FigureKey::WaveSpeed(id) => (Key::FIGURE_WAVE_SPEED, Some(id)),
             FigureKey::QuickRise(id) => (Key::FIGURE_QUICK_SURGE, Some(id)),
-            FigureKey::Collapse(id) => (Key::FIGURE_COLLAPSE, Some(id)),
+            FigureKey::Collapse(id) => (Key::TERM_COLLAPSE_ALLOWED, Some(id)),
             FigureKey::GreatestPower => (Key::FIGURE_GREATEST_POWER_SHARE, None),
             FigureKey::Mass(id) => (Key::FIGURE_MASS, Some(id)),
         };

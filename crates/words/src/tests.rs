@@ -1,0 +1,823 @@
+//! Every finding there is says something whole, in every language.
+
+use crate::{About, Language, Words, capital};
+use hydraulics::fittings::FittingError;
+use hydraulics::line::{LineError, Point};
+use hydraulics::nozzle::NozzleError;
+use hydraulics::quantity::{AbsolutePressure, GaugePressure, Head, Level, PipeLength};
+use hydraulics::surge::{SurgeError, WaveError};
+use hydraulics::water::WaterError;
+use pipes::{Material, OwnPipeError, RatingError};
+use statics::{Input, WallError};
+use uom::si::acceleration::meter_per_second_squared;
+use uom::si::angle::degree;
+use uom::si::f64::{
+    Acceleration, Angle, Length, MassConcentration, MassDensity, Pressure,
+    ThermodynamicTemperature, Time, Velocity, VolumeRate,
+};
+use uom::si::length::meter;
+use uom::si::thermodynamic_temperature::degree_celsius;
+use uom::si::time::second;
+use uom::si::velocity::meter_per_second;
+use uom::si::volume_rate::cubic_meter_per_second;
+use workbook::book::{Book, FittingEntry, FittingKind, OwnPipeEntry, Price, RoughnessAge};
+use workbook::caution::{Caution, Sheet};
+use workbook::demo::demo;
+use workbook::entry::EntryTrouble;
+use workbook::evaluate::evaluate;
+use workbook::field::{Field, OWN_FIELDS};
+use workbook::figure::{Gap, Lack, Place, Trouble};
+use workbook::format::FileTrouble;
+use workbook::measure::Measure;
+use workbook::pipe_copy::PipeCopyError;
+use workbook::reading::Unreadable;
+use workbook::resolve::Assumption;
+use workbook::units::{Kind, UnitSystem};
+use workbook::verdict::{Check, CheckKind, StretchVerdict, Verdict, Weakest};
+
+fn m(x: f64) -> Length {
+    Length::new::<meter>(x)
+}
+
+fn celsius(x: f64) -> ThermodynamicTemperature {
+    ThermodynamicTemperature::new::<degree_celsius>(x)
+}
+
+fn flow(x: f64) -> VolumeRate {
+    VolumeRate::new::<cubic_meter_per_second>(x)
+}
+
+fn at(x: f64) -> PipeLength {
+    PipeLength::from_m(x)
+}
+
+/// A book with one of everything that can be named.
+fn book() -> Book {
+    let mut book = demo("demo");
+    book.line.stations[0].name = "Caja".to_owned();
+    book.line.fittings.push(FittingEntry {
+        id: 91,
+        at_station: book.line.stations[1].id,
+        kind: FittingKind::Own,
+        note: "Strainer".to_owned(),
+        ..FittingEntry::default()
+    });
+    book.own_pipes.push(OwnPipeEntry {
+        id: 1,
+        name: "Old pipe".to_owned(),
+        ..OwnPipeEntry::default()
+    });
+    book.prices.pipes.push(Price {
+        pipe: "own/1".to_owned(),
+        ..Price::default()
+    });
+    book
+}
+
+fn fields(book: &Book) -> Vec<Field> {
+    let mut all = book.fields();
+    all.extend([
+        Field::StationLevel(999),
+        Field::FittingK(999),
+        Field::FittingAngle(91),
+        Field::FittingRadius(91),
+        Field::FittingOpening(91),
+        Field::FittingK(91),
+        Field::Price(999),
+    ]);
+    all.extend(OWN_FIELDS.map(|own| Field::Own(999, own)));
+    all
+}
+
+/// Says it in every language and family of units, and checks each as a text.
+fn said(book: &Book, what: &str, say: impl Fn(About<'_>) -> String) -> Vec<String> {
+    let mut all = Vec::new();
+    for units in [UnitSystem::Metric, UnitSystem::UsCustomary] {
+        let texts = Language::ALL.map(|language| say(Words::new(language, units).about(book)));
+        for text in &texts {
+            whole(what, text);
+        }
+        assert_ne!(texts[0], texts[1], "{what} is not translated");
+        all.extend(texts);
+    }
+    all
+}
+
+fn whole(what: &str, text: &str) {
+    assert!(!text.trim().is_empty(), "{what} says nothing");
+    for bad in [
+        "{", "}", "  ", "NaN", "inf", "Some(", "::", "\"", "..", " .", " ,", ".;", "—",
+    ] {
+        assert!(!text.contains(bad), "{what}: {bad:?} in {text}");
+    }
+}
+
+fn sentences(book: &Book, what: &str, say: impl Fn(About<'_>) -> String) {
+    for text in said(book, what, say) {
+        assert!(text.ends_with('.'), "{what} is no sentence: {text}");
+        let first = text.chars().next().unwrap();
+        assert!(!first.is_lowercase(), "{what} has no capital: {text}");
+    }
+}
+
+fn fitting_errors() -> Vec<FittingError> {
+    vec![
+        FittingError::Coefficient(-1.0),
+        FittingError::Coefficient(-0.5),
+        FittingError::Bore(m(0.0)),
+        FittingError::NotNarrower {
+            wide: m(0.1),
+            narrow: m(0.2),
+        },
+        FittingError::Angle {
+            angle: Angle::new::<degree>(200.0),
+            low: 0.0,
+            high: 180.0,
+        },
+        FittingError::Ratio {
+            ratio: 0.1,
+            low: 0.5,
+            high: 10.0,
+        },
+    ]
+}
+
+fn nozzle_errors() -> Vec<NozzleError> {
+    vec![
+        NozzleError::Bore(m(0.0)),
+        NozzleError::VelocityCoefficient(1.2),
+        NozzleError::ContractionCoefficient(0.0),
+        NozzleError::NeedleAngle(Angle::new::<degree>(100.0)),
+        NozzleError::Stroke(m(-1.0)),
+        NozzleError::NetHead(Head::from_m(-1.0)),
+        NozzleError::Flow(flow(-1.0)),
+    ]
+}
+
+fn wall_errors() -> Vec<WallError> {
+    let mut all = vec![
+        WallError::NoBore {
+            wall: 0.1,
+            half_diameter: 0.09,
+        },
+        WallError::NothingLeft {
+            nominal: 0.003,
+            taken_off: 0.0031,
+        },
+    ];
+    for input in [
+        Input::Diameter,
+        Input::Wall,
+        Input::Pressure,
+        Input::Stress,
+        Input::Modulus,
+        Input::Poisson,
+        Input::Ovality,
+        Input::SafetyFactor,
+        Input::JointFactor,
+        Input::MillTolerance,
+        Input::Corrosion,
+        Input::ThreadDepth,
+        Input::YieldStrength,
+        Input::TensileStrength,
+        Input::DesignFactor,
+    ] {
+        all.push(WallError::NotFinite { input });
+        all.push(WallError::OutOfRange {
+            input,
+            value: 2.5,
+            least: 0.1,
+            greatest: 1.0,
+        });
+    }
+    all
+}
+
+fn line_errors() -> Vec<LineError> {
+    let point = Point {
+        chainage: at(1.0),
+        level: Level::from_m(2.0),
+    };
+    let mut all = vec![
+        LineError::TooFewPoints { count: 1 },
+        LineError::NoRun,
+        LineError::Forebay(Level::from_m(0.0)),
+        LineError::Gravity(Acceleration::new::<meter_per_second_squared>(0.0)),
+        LineError::PointNotFinite {
+            point: 1,
+            value: point,
+        },
+        LineError::ChainageNotRising {
+            point: 1,
+            before: at(2.0),
+            chainage: at(1.0),
+        },
+        LineError::SteeperThanVertical {
+            point: 1,
+            rise: Head::from_m(3.0),
+            length: at(1.0),
+        },
+        LineError::RunNotRising {
+            run: 1,
+            from: at(2.0),
+            to: at(1.0),
+        },
+        LineError::RunsEndElsewhere {
+            runs: at(2.0),
+            points: at(1.0),
+        },
+        LineError::LossOutside {
+            loss: 0,
+            at: at(1.0),
+        },
+        LineError::LossBore {
+            loss: 0,
+            bore: m(0.0),
+        },
+        LineError::Flow(flow(-1.0)),
+        LineError::NoNozzle,
+        LineError::NozzleWiderThanBranch {
+            nozzle: 0,
+            bore: m(0.1),
+            branch: m(0.05),
+        },
+        LineError::Branch {
+            k: -1.0,
+            bore: m(0.0),
+        },
+        LineError::NoHead {
+            forebay: Level::from_m(1.0),
+            axis: Level::from_m(2.0),
+        },
+        LineError::FlowTooGreat {
+            flow: flow(0.2),
+            greatest: flow(0.1),
+        },
+    ];
+    all.extend(
+        fitting_errors()
+            .into_iter()
+            .map(|error| LineError::Reducer { run: 0, error }),
+    );
+    all.extend(nozzle_errors().into_iter().map(LineError::Nozzle));
+    all
+}
+
+fn own_errors() -> Vec<OwnPipeError> {
+    let mut all = vec![
+        OwnPipeError::Blank {
+            field: "designation",
+        },
+        OwnPipeError::Blank { field: "source" },
+        OwnPipeError::Blank {
+            field: "rating symbol",
+        },
+        OwnPipeError::WallsCrossed {
+            least: 0.01,
+            greatest: 0.005,
+        },
+        OwnPipeError::NoBore {
+            wall_and_lining: 0.1,
+            half_diameter: 0.09,
+        },
+        OwnPipeError::StressNeedsSteel {
+            material: Material::Grp,
+        },
+        OwnPipeError::StressNeedsNominalWall,
+        OwnPipeError::ModuliCrossed {
+            short: 1e8,
+            long: 1e9,
+        },
+        OwnPipeError::DeratingDisordered { index: 1 },
+        OwnPipeError::DeratingEmpty,
+    ];
+    all.extend(wall_errors().into_iter().map(OwnPipeError::Wall));
+    for field in [
+        "outside_diameter",
+        "wall_min",
+        "poisson",
+        "supply",
+        "anything",
+    ] {
+        all.push(OwnPipeError::NotFinite { field });
+        all.push(OwnPipeError::NotPositive { field, value: 0.0 });
+        all.push(OwnPipeError::Missing { field });
+        all.push(OwnPipeError::OutOfRange {
+            field,
+            value: 2.0,
+            least: 0.0,
+            greatest: 0.5,
+        });
+    }
+    all
+}
+
+fn entry_troubles() -> Vec<EntryTrouble> {
+    let mut all: Vec<EntryTrouble> = [
+        Unreadable::NotANumber,
+        Unreadable::UnknownUnit {
+            unit: "furlong".to_owned(),
+        },
+        Unreadable::Marks,
+        Unreadable::OutOfRange,
+        Unreadable::Negative,
+        Unreadable::PlusMinus,
+    ]
+    .into_iter()
+    .map(EntryTrouble::Unreadable)
+    .collect();
+    all.extend([
+        EntryTrouble::Unit {
+            unit: "furlong".to_owned(),
+        },
+        EntryTrouble::Disagrees {
+            text: 1.0,
+            kept: 2.0,
+        },
+        EntryTrouble::OutOfRange {
+            value: 9.0,
+            least: 0.5,
+            most: 4.0,
+        },
+        EntryTrouble::NotWhole { value: 2.5 },
+    ]);
+    all
+}
+
+fn troubles() -> Vec<Trouble> {
+    let velocity = Velocity::new::<meter_per_second>(-1.0);
+    let (stretch, fitting, station) = (1, 91, 2);
+    let mut all = vec![
+        Trouble::StationBehind {
+            station,
+            back_m: 2.0,
+        },
+        Trouble::StationTooSteep {
+            station,
+            distance_m: 2.0,
+            fall_m: -3.0,
+        },
+        Trouble::StationRepeated { station },
+        Trouble::TooManyStations { count: 2001 },
+        Trouble::StretchStart { stretch },
+        Trouble::FittingStation { fitting },
+        Trouble::FittingStation { fitting: 999 },
+        Trouble::PipeUnknown {
+            stretch,
+            pipe: "nothing".to_owned(),
+        },
+        Trouble::NoHead {
+            forebay: Level::from_m(1.0),
+            jets: Level::from_m(2.0),
+        },
+        Trouble::ForebayOrder {
+            field: Field::ForebayLowest,
+        },
+        Trouble::TemperatureOrder {
+            field: Field::WarmestWater,
+        },
+        Trouble::Water(WaterError::Temperature(celsius(70.0))),
+        Trouble::Water(WaterError::Solids(MassConcentration::default())),
+        Trouble::Water(WaterError::GrainDensity(MassDensity::default())),
+        Trouble::Rating {
+            stretch,
+            why: RatingError::TooHot {
+                wall: celsius(50.0),
+                highest: celsius(40.0),
+            },
+        },
+        Trouble::Rating {
+            stretch,
+            why: RatingError::Temperature { kelvin: -1.0 },
+        },
+        Trouble::Rating {
+            stretch,
+            why: RatingError::NoDerating,
+        },
+        Trouble::Wave {
+            stretch,
+            why: WaveError::Poisson(0.7),
+        },
+    ];
+    all.extend(
+        entry_troubles()
+            .into_iter()
+            .map(|t| Trouble::Entry(Field::DesignFlow, t)),
+    );
+    all.extend(
+        fitting_errors()
+            .into_iter()
+            .map(|why| Trouble::Fitting { fitting, why }),
+    );
+    all.extend(nozzle_errors().into_iter().map(Trouble::Nozzle));
+    all.extend(line_errors().into_iter().map(Trouble::Line));
+    all.extend(
+        wall_errors()
+            .into_iter()
+            .map(|why| Trouble::Wall { stretch, why }),
+    );
+    all.extend(wall_errors().into_iter().map(|why| Trouble::Rating {
+        stretch,
+        why: RatingError::Wall(why),
+    }));
+    all.extend(
+        own_errors()
+            .into_iter()
+            .map(|why| Trouble::OwnPipe { id: 1, why }),
+    );
+    all.extend(
+        [
+            SurgeError::WaveSpeed(velocity),
+            SurgeError::Velocity(velocity),
+            SurgeError::PipeLength(at(0.0)),
+            SurgeError::Time(Time::new::<second>(-1.0)),
+            SurgeError::Gravity(Acceleration::default()),
+            SurgeError::Head(Head::from_m(0.0)),
+        ]
+        .map(|why| Trouble::Surge { stretch, why }),
+    );
+    all.extend(
+        [
+            PipeCopyError::Material("cheese".to_owned()),
+            PipeCopyError::Value {
+                field: "wall_min_m",
+                value: -1.0,
+            },
+            PipeCopyError::NoBore,
+            PipeCopyError::Derating,
+        ]
+        .map(|why| Trouble::PipeCopy {
+            pipe: "nothing".to_owned(),
+            why,
+        }),
+    );
+    all
+}
+
+fn lacks() -> Vec<Lack> {
+    vec![
+        Lack::Entry(Field::DesignFlow),
+        Lack::Entry(Field::StationLevel(1)),
+        Lack::Pipe(1),
+        Lack::Surge,
+        Lack::Rating(91),
+        Lack::Rating(999),
+        Lack::Source(2),
+    ]
+}
+
+#[test]
+fn every_field_has_label_hint_and_name() {
+    let book = book();
+    for field in fields(&book) {
+        let what = format!("{field:?}");
+        said(&book, &what, |w| w.words.field_label(field).to_owned());
+        sentences(&book, &what, |w| w.words.field_hint(field));
+        said(&book, &what, |w| w.field(field));
+        if field.preset().is_some() {
+            sentences(&book, &what, |w| w.words.field_preset(field).unwrap());
+        }
+        for trouble in entry_troubles() {
+            let what = format!("{field:?} {trouble:?}");
+            sentences(&book, &what, |w| w.words.entry_trouble(field, &trouble));
+        }
+    }
+}
+
+#[test]
+fn every_trouble_and_lack_says_what_and_what_to_do() {
+    let book = book();
+    for trouble in troubles() {
+        let what = format!("{trouble:?}");
+        sentences(&book, &what, |w| w.trouble(&trouble));
+        said(&book, &what, |w| w.place(&trouble.place()));
+    }
+    for lack in lacks() {
+        let gap = Gap::Unsettled(lack.clone());
+        sentences(&book, &format!("{lack:?}"), |w| w.gap(&gap));
+    }
+    for place in [
+        Place::Station(1),
+        Place::Stretch(1),
+        Place::Fitting(91),
+        Place::OwnPipe(1),
+        Place::OwnPipe(999),
+        Place::Pipe("nothing".to_owned()),
+        Place::Line,
+        Place::Jets,
+    ] {
+        said(&book, &format!("{place:?}"), |w| w.place(&place));
+    }
+}
+
+#[test]
+fn places_go_by_number_and_name() {
+    let book = book();
+    let en = Words::new(Language::English, UnitSystem::Metric).about(&book);
+    let es = Words::new(Language::Spanish, UnitSystem::Metric).about(&book);
+    let first = book.line.stations[0].id;
+    assert_eq!(en.station(first), "station 1 (Caja)");
+    assert_eq!(
+        es.field(Field::StationLevel(first)),
+        "Nivel, estación 1 (Caja)"
+    );
+    assert_eq!(en.own_pipe(1), "own pipe “Old pipe”");
+    assert!(en.fitting(91).starts_with("Strainer at station 2"));
+    let pipe = &book.pipes[0];
+    assert_eq!(en.pipe(&pipe.id), pipe.short);
+    assert_eq!(en.pipe("own/1"), en.own_pipe(1));
+}
+
+fn bar(x: f64) -> Measure {
+    Measure::new(x * 1e5, Kind::Pressure)
+}
+
+fn checks() -> Vec<Check> {
+    let mut all = Vec::new();
+    for kind in [
+        CheckKind::PassesFlow,
+        CheckKind::StandingPressure,
+        CheckKind::SurgePressure,
+        CheckKind::LowestPressure,
+        CheckKind::Collapse,
+    ] {
+        for found in [4.8, 9.5, 12.0] {
+            let check = Check::against(kind, bar(found), bar(10.0), 0.1);
+            all.push(check.clone().wanting(Lack::Surge));
+            all.push(Check {
+                weakest: Some(Weakest::Fitting(91)),
+                at: Some(at(151.0)),
+                ..check.clone()
+            });
+            all.push(Check {
+                weakest: Some(Weakest::Jets),
+                ..check
+            });
+        }
+        for lack in lacks() {
+            all.push(Check::unsettled(kind, Gap::Unsettled(lack)));
+        }
+        let bare = Check::unsettled(kind, Gap::Unsettled(Lack::Surge));
+        all.push(Check {
+            found: Some(bar(-0.2)),
+            ..bare.clone()
+        });
+        all.push(Check { gap: None, ..bare });
+    }
+    all
+}
+
+#[test]
+fn every_check_and_verdict_gives_its_reason() {
+    let book = book();
+    for verdict in [
+        Verdict::Holds,
+        Verdict::Tight,
+        Verdict::Unsettled,
+        Verdict::Fails,
+    ] {
+        said(&book, "verdict", |w| w.words.verdict(verdict).to_owned());
+        sentences(&book, "verdict", |w| {
+            w.words.verdict_means(verdict).to_owned()
+        });
+    }
+    let found = evaluate(&book).resolved;
+    let empty = evaluate(&Book::new("empty")).resolved;
+    for check in checks() {
+        let what = format!("{check:?}");
+        sentences(&book, &what, |w| w.check(&check));
+        said(&book, &what, |w| w.words.check_name(check.kind).to_owned());
+        let verdict = StretchVerdict::of(1, vec![check]).unwrap();
+        sentences(&book, &what, |w| w.stretch_verdict(&verdict, &found));
+        sentences(&book, &what, |w| w.stretch_verdict(&verdict, &empty));
+    }
+}
+
+#[test]
+fn the_demo_verdict_reads_as_a_sentence() {
+    let book = demo("demo");
+    let found = evaluate(&book);
+    let words = Words::new(Language::English, UnitSystem::Metric).about(&book);
+    for verdict in &found.judged.stretches {
+        let text = words.stretch_verdict(verdict, &found.resolved);
+        let pipe = found
+            .resolved
+            .stretches
+            .iter()
+            .find(|s| s.id == verdict.stretch)
+            .map(|s| s.pipe.as_ref().unwrap().short.clone())
+            .unwrap();
+        let word = capital(words.words.verdict(verdict.verdict));
+        assert!(text.starts_with(&format!("{word} in {pipe}, ")), "{text}");
+        assert!(text.contains("bar standing of"), "{text}");
+        if verdict.verdict == Verdict::Unsettled {
+            assert!(text.contains("surge is not solved yet"), "{text}");
+        }
+    }
+}
+
+#[test]
+fn every_caution_and_assumption_speaks() {
+    let book = book();
+    let velocity = Velocity::new::<meter_per_second>(3.4);
+    let all = [
+        Caution::SurgeUnsolved,
+        Caution::TemperatureAndSun { bare: vec![] },
+        Caution::TemperatureAndSun { bare: vec![1, 2] },
+        Caution::SubAtmospheric {
+            lengths: vec![(at(10.0), at(25.5)), (at(80.0), at(90.0))],
+            boils: true,
+        },
+        Caution::SubAtmospheric {
+            lengths: vec![(at(10.0), at(25.5))],
+            boils: false,
+        },
+        Caution::CollapseAndVents { weak: vec![1] },
+        Caution::VelocityAndSilt { fast: None },
+        Caution::VelocityAndSilt {
+            fast: Some((1, velocity)),
+        },
+        Caution::Freezing,
+        Caution::ThrustAtBends,
+        Caution::WeakJoints { unrated: vec![] },
+        Caution::WeakJoints {
+            unrated: vec![91, 999],
+        },
+        Caution::DepressuriseBeforeWork,
+        Caution::LocalCodesAndReview,
+        Caution::SourceNotSeen { stretches: vec![2] },
+        Caution::RegimeUncertain,
+        Caution::NearGreatestPower,
+        Caution::LossOverCap {
+            share: 0.123,
+            cap: 0.1,
+        },
+        Caution::Invented,
+    ];
+    let mut titles = Vec::new();
+    for caution in &all {
+        let what = format!("{caution:?}");
+        said(&book, &what, |w| w.caution(caution).title.to_owned());
+        sentences(&book, &what, |w| w.caution(caution).body);
+        titles.push(
+            Words::new(Language::English, UnitSystem::Metric)
+                .about(&book)
+                .caution(caution)
+                .title,
+        );
+    }
+    titles.dedup();
+    assert_eq!(titles.len(), 15, "one title for each caution: {titles:?}");
+    let preset = Field::ColdestWater.preset().unwrap();
+    for assumption in [
+        Assumption::ForebayAtFirstStation(Level::from_m(10.0)),
+        Assumption::HighestIsNormal(Level::from_m(10.0)),
+        Assumption::JetsAtLastStation(Level::from_m(10.0)),
+        Assumption::Preset(Field::ColdestWater, preset),
+        Assumption::SeaLevel,
+        Assumption::Roughness(RoughnessAge::Aged),
+        Assumption::Roughness(RoughnessAge::New),
+        Assumption::BranchBoreOfLastStretch(m(0.1)),
+        Assumption::NoEntrance,
+        Assumption::WarmestWaterUnknown,
+    ] {
+        sentences(&book, &format!("{assumption:?}"), |w| {
+            w.assumption(&assumption)
+        });
+    }
+}
+
+#[test]
+fn every_file_trouble_speaks() {
+    let book = book();
+    let why = || "expected value".to_owned();
+    for trouble in [
+        FileTrouble::TooLong { bytes: 9_000_000 },
+        FileTrouble::NotText,
+        FileTrouble::NotABook,
+        FileTrouble::NewerFormat { found: 2 },
+        FileTrouble::RepeatedNumber {
+            list: "stations",
+            id: 3,
+        },
+        FileTrouble::RepeatedNumber {
+            list: "pipes of one's own",
+            id: 3,
+        },
+        FileTrouble::TooManyRows {
+            list: "prices",
+            count: 2001,
+        },
+        FileTrouble::NoKey,
+    ] {
+        sentences(&book, &format!("{trouble:?}"), |w| {
+            w.words.file_trouble(&trouble)
+        });
+    }
+    for trouble in [
+        FileTrouble::NotJson {
+            line: 3,
+            column: 7,
+            why: why(),
+        },
+        FileTrouble::Content {
+            why: why(),
+            line: 12,
+        },
+    ] {
+        said(&book, &format!("{trouble:?}"), |w| {
+            w.words.file_trouble(&trouble)
+        });
+    }
+}
+
+#[test]
+fn the_next_entry_is_one_line() {
+    let mut books = vec![Book::new("empty"), demo("demo")];
+    books[1].line.stretches[0].pipe = None;
+    let mut broken = demo("demo");
+    broken.stream.design_flow_m3_s.text = "38 L".to_owned();
+    broken.stream.design_flow_m3_s.value = None;
+    books.push(broken);
+    for book in &books {
+        let next = evaluate(book).next.unwrap();
+        sentences(book, &format!("{next:?}"), |w| w.next(&next));
+    }
+}
+
+#[test]
+fn every_working_of_the_demo_names_its_parts() {
+    use workbook::working::FigureKey;
+    let book = demo("demo");
+    let found = evaluate(&book);
+    let fitting = book.line.fittings[0].id;
+    for key in [
+        FigureKey::GrossHead,
+        FigureKey::PipeLength,
+        FigureKey::Velocity(1),
+        FigureKey::FrictionLoss(1),
+        FigureKey::FittingLoss(fitting),
+        FigureKey::Loss,
+        FigureKey::LossShare,
+        FigureKey::NetHead,
+        FigureKey::JetVelocity,
+        FigureKey::NozzleBore,
+        FigureKey::JetDiameter,
+        FigureKey::JetPower,
+        FigureKey::Lowest,
+        FigureKey::Bore(1),
+        FigureKey::Standing(1),
+        FigureKey::Allowable(1),
+        FigureKey::Share(1),
+        FigureKey::WaveSpeed(1),
+        FigureKey::QuickRise(1),
+        FigureKey::Collapse(1),
+        FigureKey::GreatestPower,
+        FigureKey::Mass(1),
+    ] {
+        said(&book, &format!("{key:?}"), |w| w.figure_name(key));
+        for input in found.working(key).unwrap().inputs {
+            let what = format!("{input:?}");
+            said(&book, &what, |w| w.words.term(input.term).to_owned());
+            for language in Language::ALL {
+                whole(
+                    &what,
+                    &Words::new(language, UnitSystem::Metric).input(&input),
+                );
+            }
+        }
+    }
+}
+
+#[test]
+fn a_sheet_has_a_name() {
+    let book = book();
+    for sheet in [
+        Sheet::Stream,
+        Sheet::Line,
+        Sheet::Pipe,
+        Sheet::Jets,
+        Sheet::Surge,
+        Sheet::Hold,
+        Sheet::Worth,
+        Sheet::Gauge,
+        Sheet::Print,
+    ] {
+        said(&book, "sheet", |w| w.words.name(sheet).to_owned());
+    }
+}
+
+#[test]
+fn quantities_of_the_house_print_without_ado() {
+    let words = Words::new(Language::English, UnitSystem::Metric);
+    assert_eq!(words.figure(Head::from_m(47.34)), "47.3\u{202f}m");
+    assert_eq!(
+        words.figure(GaugePressure::from_pa(4.8e5)),
+        "4.80\u{202f}bar"
+    );
+    assert_eq!(
+        words.figure(AbsolutePressure::from_pa(0.7e5)),
+        "0.70\u{202f}bar"
+    );
+    assert_eq!(words.figure(Pressure::default()), "0.00\u{202f}bar");
+}
