@@ -17,6 +17,7 @@ mod file;
 pub mod language;
 mod name;
 mod number;
+mod phrase;
 #[cfg(test)]
 mod tests;
 pub mod text;

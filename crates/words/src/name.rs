@@ -1,7 +1,7 @@
 //! Names of the things a book is made of.
 
+use crate::Words;
 use crate::text::Key;
-use crate::{Language, Words};
 use pipes::Material;
 use workbook::book::{
     BoreSizing, DistanceKind, FittingKind, Laying, NozzleKind, OwnMaterial, OwnRating, Paper,
@@ -137,19 +137,6 @@ impl Words {
     pub fn name(self, thing: impl Named) -> &'static str {
         self.say(thing.key())
     }
-
-    /// What a source is called. Sources are cited as published; only what is
-    /// no publication is put into the language.
-    #[must_use]
-    pub fn source(self, source: &str) -> String {
-        if self.language == Language::English {
-            return source.to_owned();
-        }
-        source.replace(
-            Key::WORKING_COMMON_PRACTICE.of(Language::English),
-            self.say(Key::WORKING_COMMON_PRACTICE),
-        )
-    }
 }
 
 /// With a capital at the start, for a sentence or a column.
@@ -205,12 +192,5 @@ mod tests {
         assert_eq!(capital("ángulo"), "Ángulo");
         assert_eq!(lower("Ángulo"), "ángulo");
         assert_eq!((capital(""), lower(""), sentence("")), Default::default());
-    }
-
-    #[test]
-    fn only_what_is_no_publication_is_translated() {
-        let es = Words::new(Language::Spanish, UnitSystem::Metric);
-        assert_eq!(es.source("common practice"), "práctica común");
-        assert_eq!(es.source("ISO 4427-2:2019"), "ISO 4427-2:2019");
     }
 }
