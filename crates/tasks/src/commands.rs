@@ -1,7 +1,7 @@
 //! The list of commands, and `help`.
 
 use crate::trouble::Trouble;
-use crate::{post_build, say, serve, size, test};
+use crate::{bench, evaluate, post_build, proof, say, schema, serve, size, test};
 use std::process::ExitCode;
 
 type Run = fn(&[String]) -> Result<ExitCode, Trouble>;
@@ -33,10 +33,41 @@ const COMMANDS: &[Command] = &[
         trouble_code: 1,
     },
     Command {
+        name: "evaluate",
+        arguments: "FILE",
+        about: "prints the findings of a saved book as JSON; ends with 0 when all holds or is tight, \
+                1 when anything fails, 3 when nothing fails but something is unsettled, \
+                2 when the file cannot be read",
+        run: evaluate::run,
+        trouble_code: 2,
+    },
+    Command {
+        name: "bench",
+        arguments: "",
+        about: "prints speeds as ratios within one run",
+        run: bench::run,
+        trouble_code: 1,
+    },
+    Command {
         name: "size",
         arguments: "",
         about: "prints what the built page weighs, raw and as brotli, file by file",
         run: size::run,
+        trouble_code: 1,
+    },
+    Command {
+        name: "schema",
+        arguments: "",
+        about: "writes the schemas of the book's file and of the report into www/",
+        run: schema::run,
+        trouble_code: 1,
+    },
+    Command {
+        name: "proof",
+        arguments: "[properties|crash]...",
+        about: "longer campaigns, or those named: many cases of every property; \
+                killing the browser while it saves",
+        run: proof::run,
         trouble_code: 1,
     },
     Command {

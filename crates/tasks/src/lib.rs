@@ -3,11 +3,15 @@
 //! The static server is public, since the walk through the page in `tests/browser`
 //! serves the built page with it.
 
+mod bench;
 mod commands;
+mod evaluate;
 pub mod places;
 mod post_build;
 mod process;
+mod proof;
 mod say;
+mod schema;
 mod serve;
 pub mod server;
 mod setup;

@@ -166,19 +166,22 @@ fn walk(board: &mut Board, kit: &Kit, browser: &Browser) {
         say::trouble(&trouble);
         return;
     }
-    board.tests(
-        "walk through the page",
-        cargo()
-            .args(["test", "--no-fail-fast", "-p", "walkthrough"])
-            .env("CHROMIUM", &browser.chromium)
-            .env("CHROMEDRIVER", &browser.driver),
-        40 * MINUTE,
-    );
+    board.tests("walk through the page", &mut walks(browser), 40 * MINUTE);
+}
+
+/// The command that takes the walks through the built page.
+pub(crate) fn walks(browser: &Browser) -> Command {
+    let mut command = cargo();
+    command
+        .args(["test", "--no-fail-fast", "-p", "walkthrough"])
+        .env("CHROMIUM", &browser.chromium)
+        .env("CHROMEDRIVER", &browser.driver);
+    command
 }
 
 /// What ran, and how it went.
 #[derive(Debug, Default)]
-struct Board {
+pub(crate) struct Board {
     rows: Vec<(String, Tally, Duration)>,
 }
 
@@ -195,7 +198,7 @@ impl Board {
     }
 
     /// Runs a test runner and counts its tests.
-    fn tests(&mut self, name: &str, command: &mut Command, limit: Duration) {
+    pub(crate) fn tests(&mut self, name: &str, command: &mut Command, limit: Duration) {
         say::step(name);
         let begun = Instant::now();
         let tally = match process::counted(command, limit) {
@@ -219,7 +222,7 @@ impl Board {
         self.rows.push((name.to_owned(), tally, begun.elapsed()));
     }
 
-    fn close(&self) -> ExitCode {
+    pub(crate) fn close(&self) -> ExitCode {
         let mut sum = Tally::default();
         say::line("");
         for (name, tally, took) in &self.rows {

@@ -62,11 +62,15 @@ fn libraries(sysroot: &Path) -> PathBuf {
     sysroot.join("lib/rustlib").join(TARGET).join("lib")
 }
 
+/// Whether the standard library lies there, and the part that tests are built on.
 fn has_std(folder: &Path) -> bool {
-    rlibs(folder).iter().any(|path| {
-        path.file_name()
-            .is_some_and(|name| name.to_string_lossy().starts_with("libstd-"))
-    })
+    let names: Vec<String> = rlibs(folder)
+        .iter()
+        .filter_map(|path| Some(path.file_name()?.to_string_lossy().into_owned()))
+        .collect();
+    ["libstd-", "libtest-"]
+        .iter()
+        .all(|part| names.iter().any(|name| name.starts_with(part)))
 }
 
 fn rlibs(folder: &Path) -> Vec<PathBuf> {
@@ -151,7 +155,7 @@ fn build_std(kit: &Kit, folder: &Path) -> Result<(), Trouble> {
             .args([
                 "build",
                 "--release",
-                "-Zbuild-std=std,panic_abort",
+                "-Zbuild-std=std,panic_abort,test",
                 "--target",
                 TARGET,
             ])
