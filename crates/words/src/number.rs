@@ -366,6 +366,17 @@ impl Words {
         dress(&count.to_string(), self.mark)
     }
 
+    /// A plain number with so many decimals, for the ticks of an axis, which
+    /// must all have the same; a dash for what is no number.
+    #[must_use]
+    pub fn axis(self, x: f64, decimals: usize) -> String {
+        if x.is_finite() {
+            dress(&format!("{x:.decimals$}"), self.mark)
+        } else {
+            NONE.to_owned()
+        }
+    }
+
     /// A plain number as a person would type it.
     pub(crate) fn ungrouped(self, x: f64) -> String {
         dress(&format!("{x}"), self.mark).replace(THIN, "")
@@ -493,6 +504,9 @@ mod tests {
             en.figure(Measure::new(16e5, Kind::Pressure)),
             "16.0\u{202f}bar"
         );
+        assert_eq!(easy(&es.axis(-0.04, 1)), "0,0");
+        assert_eq!(easy(&es.axis(-12_345.0, 0)), "-12 345");
+        assert_eq!(en.axis(f64::NAN, 1), NONE);
         assert_eq!(en.count(12_000), "12\u{202f}000");
     }
 
