@@ -23,6 +23,7 @@ pub(crate) fn groups() -> Result<Vec<Group>, Box<dyn Error>> {
         ("Colebrook-White", colebrook()),
         ("water", water()?),
         ("steady line", steady_line()?),
+        ("demo book", demo_book()),
     ])
 }
 
@@ -191,4 +192,18 @@ fn steady_line() -> Result<Vec<String>, Box<dyn Error>> {
         }
     }
     Ok(lines)
+}
+
+/// Everything found in the demo book, and the sweep over the catalogue for it,
+/// in the form that Rust prints.
+fn demo_book() -> Vec<String> {
+    let book = workbook::demo::demo("demo");
+    let mut sweep = workbook::sweep::Sweep::new(&book);
+    let rows = sweep.advance(sweep.total());
+    let found = workbook::evaluate(&book);
+    format!("{found:#?}")
+        .lines()
+        .map(str::to_owned)
+        .chain(rows.iter().map(|row| format!("{row:?}")))
+        .collect()
 }

@@ -19,7 +19,7 @@ fn every_figure_has_its_native_bits() -> Result<(), String> {
 #[wasm_bindgen_test]
 fn no_figure_is_without_a_value() {
     // The reference prints every number; none of the grid's may be out of range.
-    for word in ["NaN", "inf"] {
-        assert!(!wasm_bits::NATIVE.contains(word), "{word}");
+    for word in wasm_bits::NATIVE.split(|character: char| !character.is_alphanumeric()) {
+        assert!(word != "NaN" && word != "inf", "{word}");
     }
 }
