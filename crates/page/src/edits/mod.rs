@@ -1,0 +1,48 @@
+//! Edits of the book's lists, each leaving the book whole: no stretch or
+//! fitting ever names a station that is gone.
+//!
+//! Plain functions on [`Book`], so that they are tested without a page.
+
+pub mod fittings;
+pub mod pipes;
+pub mod stations;
+pub mod stretches;
+
+use workbook::Book;
+use workbook::book::Id;
+
+/// A number no item of the list has.
+fn free_id(ids: impl Iterator<Item = Id>) -> Id {
+    ids.max().unwrap_or(0).saturating_add(1)
+}
+
+/// The place of a station in the line.
+fn place_of(book: &Book, station: Id) -> Option<usize> {
+    book.line.stations.iter().position(|s| s.id == station)
+}
+
+#[cfg(test)]
+pub(crate) mod check {
+    use super::*;
+
+    /// What every edit must leave as it found it.
+    pub(crate) fn is_whole(book: &Book) -> bool {
+        let starts: Option<Vec<usize>> = book
+            .line
+            .stretches
+            .iter()
+            .map(|s| place_of(book, s.from_station))
+            .collect();
+        let Some(starts) = starts else { return false };
+        let last = book.line.stations.len() - 1;
+        starts.first() == Some(&0)
+            && starts.windows(2).all(|w| w[0] < w[1])
+            && starts.iter().all(|s| *s < last)
+            && book
+                .line
+                .fittings
+                .iter()
+                .all(|f| place_of(book, f.at_station).is_some())
+            && workbook::format::read(workbook::format::write(book).unwrap().as_bytes()).is_ok()
+    }
+}

@@ -1,0 +1,44 @@
+//! One of many, in a list that opens.
+
+use leptos::prelude::*;
+
+/// A list to pick from: each option a value and its words. `id` is its `id` and
+/// `data-test`.
+pub fn picker(
+    id: &str,
+    label: Signal<String>,
+    options: Signal<Vec<(String, String)>>,
+    now: Signal<String>,
+    take: impl Fn(String) + 'static,
+) -> AnyView {
+    let options_view = move || {
+        options
+            .get()
+            .into_iter()
+            .map(|(value, words)| {
+                let chosen = value.clone();
+                view! {
+                    <option value=value prop:selected=move || now.get() == chosen>
+                        {words}
+                    </option>
+                }
+            })
+            .collect_view()
+    };
+    view! {
+        <div class="field">
+            <label class="field-label" for=id.to_owned()>{move || label.get()}</label>
+            <div class="field-line">
+                <select
+                    class="field-input"
+                    id=id.to_owned()
+                    data-test=id.to_owned()
+                    on:change=move |e| take(event_target_value(&e))
+                >
+                    {options_view}
+                </select>
+            </div>
+        </div>
+    }
+    .into_any()
+}

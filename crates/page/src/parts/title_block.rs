@@ -1,0 +1,126 @@
+//! The title block on top of every sheet: site, revision, saved mark, design
+//! flow, gross head.
+
+use crate::keeping::Saved;
+use crate::parts::books;
+use crate::parts::figures::figure_text;
+use crate::parts::working;
+use crate::platform::storage::Persistence;
+use crate::state::{State, state};
+use leptos::prelude::*;
+use words::{Key, Words, text};
+use workbook::caution::Sheet;
+use workbook::figure::Place;
+use workbook::working::FigureKey;
+use workbook::{Book, Field};
+
+/// What the book is called where no site was entered.
+#[must_use]
+pub fn name(book: &Book, words: Words) -> String {
+    let name = book.site.name.trim();
+    if name.is_empty() {
+        words.say(Key::STATE_UNTITLED).to_owned()
+    } else {
+        name.to_owned()
+    }
+}
+
+/// Title of the document.
+#[must_use]
+pub fn title(book: &Book, words: Words) -> String {
+    format!("{} · {}", name(book, words), words.say(Key::APP_NAME))
+}
+
+/// The header.
+#[component]
+pub fn TitleBlock() -> impl IntoView {
+    let state = state();
+    let name = move || state.book.with(|b| name(b, state.words.get()));
+    let trouble = move || matches!(state.saved.get(), Saved::Not(_));
+    view! {
+        <header class="titleblock">
+            <div class="titleblock-site">
+                <button
+                    type="button"
+                    data-test="books"
+                    aria-haspopup="dialog"
+                    on:click=move |_| books::open(state)
+                >
+                    {name}
+                </button>
+                <span
+                    class="titleblock-state"
+                    class:is-trouble=trouble
+                    data-test="saved"
+                    data-saved=move || saved_slug(&state.saved.get())
+                    role="status"
+                >
+                    {move || state_line(state)}
+                </span>
+            </div>
+            <button
+                type="button"
+                class="titleblock-figure"
+                data-test="title-flow"
+                on:click=move |_| {
+                    state.go_to(Sheet::Stream, &Place::Field(Field::DesignFlow));
+                }
+            >
+                <span class="figure">{move || flow(state)}</span>
+                <span class="figure-label">
+                    {move || state.words.get().say(Key::FIGURE_DESIGN_FLOW)}
+                </span>
+            </button>
+            <button
+                type="button"
+                class="titleblock-figure"
+                data-test="title-head"
+                on:click=move |_| working::open(state, FigureKey::GrossHead)
+            >
+                <span class="figure">{move || figure_text(state, FigureKey::GrossHead)}</span>
+                <span class="figure-label">
+                    {move || state.words.get().say(Key::FIGURE_GROSS_HEAD)}
+                </span>
+            </button>
+        </header>
+    }
+}
+
+fn flow(state: State) -> String {
+    let words = state.words.get();
+    state.findings.with(|f| match &f.resolved.design_flow {
+        Ok(flow) => words.figure(*flow),
+        Err(_) => "\u{2014}".to_owned(),
+    })
+}
+
+fn saved_slug(saved: &Saved) -> &'static str {
+    match saved {
+        Saved::Nothing => "nothing",
+        Saved::Saving => "saving",
+        Saved::Kept => "saved",
+        Saved::Not(_) => "not",
+    }
+}
+
+/// Invented, revision, saved mark.
+fn state_line(state: State) -> String {
+    let words = state.words.get();
+    let mut parts = Vec::new();
+    state.book.with(|b| {
+        if b.invented {
+            parts.push(words.say(Key::PAGE_INVENTED).to_owned());
+        }
+        parts.push(text::state_revision_short(words, &b.revision.to_string()));
+    });
+    match state.saved.get() {
+        Saved::Nothing => {}
+        Saved::Saving => parts.push(words.say(Key::STATE_SAVING).to_owned()),
+        Saved::Kept if state.persistence.get() == Persistence::MayBeCleared => {
+            parts.push(words.say(Key::PAGE_SAVED_FOR_NOW).to_owned());
+        }
+        Saved::Kept => parts.push(words.say(Key::STATE_SAVED).to_owned()),
+        Saved::Not(_) => parts.insert(0, words.say(Key::STATE_NOT_SAVED).to_owned()),
+    }
+    parts.join(" · ")
+}

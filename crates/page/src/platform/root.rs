@@ -1,0 +1,26 @@
+//! The document's own marks: language, theme, title.
+
+/// Sets an attribute of the root element.
+pub fn set(attribute: &str, value: &str) {
+    if let Some(root) = root() {
+        let _ = root.set_attribute(attribute, value);
+    }
+}
+
+/// An attribute of the root element.
+#[must_use]
+pub fn get(attribute: &str) -> Option<String> {
+    root()?.get_attribute(attribute)
+}
+
+/// Sets the title of the document: the browser offers it as the name of a
+/// printed file too.
+pub fn set_title(title: &str) {
+    if let Some(document) = super::window().document() {
+        document.set_title(title);
+    }
+}
+
+fn root() -> Option<web_sys::Element> {
+    super::window().document()?.document_element()
+}
