@@ -123,6 +123,11 @@ impl About<'_> {
             | Field::FittingAngle(id)
             | Field::FittingRadius(id)
             | Field::FittingOpening(id)
+            | Field::RackWidth(id)
+            | Field::RackLength(id)
+            | Field::RackBar(id)
+            | Field::RackGap(id)
+            | Field::RackClogged(id)
             | Field::FittingK(id)
             | Field::FittingRating(id) => self.fitting(id),
             Field::Own(id, _) => self.own_pipe(id),

@@ -52,6 +52,7 @@ named! {
         ButterflyValve => FITTING_BUTTERFLY_VALVE,
         TeeRun => FITTING_TEE_RUN,
         TeeBranch => FITTING_TEE_BRANCH,
+        TrashRack => FITTING_TRASH_RACK,
         Own => FITTING_OWN,
     }
     Laying {

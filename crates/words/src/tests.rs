@@ -50,6 +50,11 @@ fn fields(book: &Book) -> Vec<Field> {
         Field::FittingAngle(91),
         Field::FittingRadius(91),
         Field::FittingOpening(91),
+        Field::RackWidth(91),
+        Field::RackLength(91),
+        Field::RackBar(91),
+        Field::RackGap(91),
+        Field::RackClogged(91),
         Field::FittingK(91),
         Field::Price(999),
     ]);

@@ -256,6 +256,8 @@ pub struct StretchEntry {
 )]
 #[serde(rename_all = "snake_case")]
 pub enum FittingKind {
+    /// Trash rack before the inlet.
+    TrashRack,
     /// Entrance with a sharp edge, flush with the wall.
     #[default]
     EntranceSharp,
@@ -296,7 +298,8 @@ pub struct FittingEntry {
     /// How many of them in a row.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub count_number: Entry,
-    /// Deflection of a bend or mitre, degree.
+    /// Deflection of a bend or mitre, or a rack's angle from the horizontal,
+    /// degree.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub angle_deg: Entry,
     /// Bend radius over bore.
@@ -305,6 +308,21 @@ pub struct FittingEntry {
     /// Opening of a valve, as a share of full.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub opening_share: Entry,
+    /// Wetted width of a rack, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub rack_width_m: Entry,
+    /// Wetted length of a rack, along its bars, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub rack_length_m: Entry,
+    /// Thickness of a rack's bars, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub bar_m: Entry,
+    /// Clear gap between a rack's bars, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub gap_m: Entry,
+    /// Share of a rack that leaves and trash stop.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub clogged_share: Entry,
     /// The user's own loss coefficient K, on the velocity in the pipe there.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub k_number: Entry,

@@ -123,6 +123,17 @@ fn fittings() -> Vec<FittingEntry> {
             ..FittingEntry::default()
         },
         FittingEntry {
+            id: 5,
+            at_station: 1,
+            kind: FittingKind::TrashRack,
+            rack_width_m: typed(Field::RackWidth(5), "0.8", "m"),
+            rack_length_m: typed(Field::RackLength(5), "0.9", "m"),
+            bar_m: typed(Field::RackBar(5), "5", "mm"),
+            gap_m: typed(Field::RackGap(5), "12", "mm"),
+            angle_deg: typed(Field::FittingAngle(5), "60", "°"),
+            ..FittingEntry::default()
+        },
+        FittingEntry {
             id: 2,
             at_station: 7,
             kind: FittingKind::Bend,

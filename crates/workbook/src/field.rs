@@ -49,6 +49,16 @@ pub enum Field {
     FittingRadius(Id),
     /// Opening of a valve.
     FittingOpening(Id),
+    /// Wetted width of a rack.
+    RackWidth(Id),
+    /// Wetted length of a rack along its bars.
+    RackLength(Id),
+    /// Thickness of a rack's bars.
+    RackBar(Id),
+    /// Gap between a rack's bars.
+    RackGap(Id),
+    /// Share of a rack that is clogged.
+    RackClogged(Id),
     /// Loss coefficient of the user's own.
     FittingK(Id),
     /// Rating of a fitting.
@@ -162,7 +172,11 @@ impl Field {
             Field::ColdestWater | Field::WarmestWater | Field::ColdestWall | Field::WarmestWall => {
                 Kind::Temperature
             }
-            Field::StationDistance(_) | Field::StretchCover(_) => Kind::Distance,
+            Field::StationDistance(_)
+            | Field::StretchCover(_)
+            | Field::RackWidth(_)
+            | Field::RackLength(_) => Kind::Distance,
+            Field::RackBar(_) | Field::RackGap(_) => Kind::Bore,
             Field::FittingCount(_) | Field::JetCount => Kind::Number,
             Field::FittingAngle(_) => Kind::Angle,
             Field::FittingRadius(_)
@@ -171,9 +185,11 @@ impl Field {
             | Field::JetContraction
             | Field::BranchK
             | Field::CollapseSafety => Kind::Number,
-            Field::FittingOpening(_) | Field::TightMargin | Field::LossCap | Field::Spare => {
-                Kind::Share
-            }
+            Field::FittingOpening(_)
+            | Field::RackClogged(_)
+            | Field::TightMargin
+            | Field::LossCap
+            | Field::Spare => Kind::Share,
             Field::FittingRating(_) | Field::JetRating => Kind::Pressure,
             Field::JetBore | Field::BranchBore => Kind::Bore,
             Field::Price(_) => Kind::PricePerLength,
@@ -205,6 +221,10 @@ impl Field {
             Field::FittingAngle(_) => (0.5, 180.0),
             Field::FittingRadius(_) => (0.5, 50.0),
             Field::FittingOpening(_) => (0.05, 1.0),
+            Field::RackWidth(_) | Field::RackLength(_) => (0.05, 50.0),
+            Field::RackBar(_) => (0.0005, 0.1),
+            Field::RackGap(_) => (0.001, 1.0),
+            Field::RackClogged(_) => (0.0, 0.9),
             Field::FittingK(_) | Field::BranchK => (0.0, 1000.0),
             Field::FittingRating(_) | Field::JetRating => (1e4, 1e8),
             Field::JetCount => (1.0, 6.0),
@@ -244,6 +264,8 @@ impl Field {
             Field::JetContraction => common(1.0),
             Field::BranchK => common(0.2),
             Field::TightMargin | Field::LossCap => common(0.10),
+            // Half clogged is how a rack is found after a storm.
+            Field::RackClogged(_) => common(0.5),
             Field::VelocityHigh => common(3.0),
             Field::CollapseSafety => common(2.0),
             Field::Spare => common(0.05),
@@ -325,6 +347,11 @@ macro_rules! find_entry {
             | Field::FittingAngle(id)
             | Field::FittingRadius(id)
             | Field::FittingOpening(id)
+            | Field::RackWidth(id)
+            | Field::RackLength(id)
+            | Field::RackBar(id)
+            | Field::RackGap(id)
+            | Field::RackClogged(id)
             | Field::FittingK(id)
             | Field::FittingRating(id) => {
                 $book.line.fittings.$iter().find(|f| f.id == id).map(|f| match $field {
@@ -332,6 +359,11 @@ macro_rules! find_entry {
                     Field::FittingAngle(_) => $($borrow)+ f.angle_deg,
                     Field::FittingRadius(_) => $($borrow)+ f.radius_ratio_number,
                     Field::FittingOpening(_) => $($borrow)+ f.opening_share,
+                    Field::RackWidth(_) => $($borrow)+ f.rack_width_m,
+                    Field::RackLength(_) => $($borrow)+ f.rack_length_m,
+                    Field::RackBar(_) => $($borrow)+ f.bar_m,
+                    Field::RackGap(_) => $($borrow)+ f.gap_m,
+                    Field::RackClogged(_) => $($borrow)+ f.clogged_share,
                     Field::FittingK(_) => $($borrow)+ f.k_number,
                     _ => $($borrow)+ f.rating_pa,
                 })
@@ -467,6 +499,14 @@ impl Book {
 #[must_use]
 pub fn fitting_fields(kind: FittingKind, id: Id) -> Vec<Field> {
     match kind {
+        FittingKind::TrashRack => vec![
+            Field::RackWidth(id),
+            Field::RackLength(id),
+            Field::RackBar(id),
+            Field::RackGap(id),
+            Field::FittingAngle(id),
+            Field::RackClogged(id),
+        ],
         FittingKind::Bend => vec![Field::FittingAngle(id), Field::FittingRadius(id)],
         FittingKind::Mitre => vec![Field::FittingAngle(id)],
         FittingKind::GateValve | FittingKind::BallValve | FittingKind::ButterflyValve => {
@@ -490,9 +530,14 @@ mod tests {
 
     fn full_book() -> Book {
         let mut book = Book::new("test");
-        for (i, kind) in [FittingKind::Bend, FittingKind::GateValve, FittingKind::Own]
-            .into_iter()
-            .enumerate()
+        for (i, kind) in [
+            FittingKind::Bend,
+            FittingKind::GateValve,
+            FittingKind::TrashRack,
+            FittingKind::Own,
+        ]
+        .into_iter()
+        .enumerate()
         {
             let id = u32::try_from(i).unwrap() + 1;
             book.line.fittings.push(FittingEntry {

@@ -104,6 +104,11 @@ fn field_sheet(field: Field) -> Sheet {
         | Field::FittingAngle(_)
         | Field::FittingRadius(_)
         | Field::FittingOpening(_)
+        | Field::RackWidth(_)
+        | Field::RackLength(_)
+        | Field::RackBar(_)
+        | Field::RackGap(_)
+        | Field::RackClogged(_)
         | Field::FittingK(_)
         | Field::FittingRating(_) => Sheet::Line,
         Field::Own(..)

@@ -12,7 +12,8 @@ use crate::resolve::parts::{PlacedFitting, Shape, Stretch};
 use crate::resolve::{Assumption, JetSpec, Resolved};
 use hydraulics::constants::standard_gravity;
 use hydraulics::fittings::{
-    self, Entrance, FittingError, LossCoefficient, MitreWall, OpenValve, Tee, ValveOpening,
+    self, BarShape, Entrance, FittingError, LossCoefficient, MitreWall, OpenValve, Tee, TrashRack,
+    ValveOpening,
 };
 use hydraulics::friction::{
     DarcyFactor, FrictionLaw, RelativeRoughness, ReynoldsNumber, darcy_factor, reynolds_number,
@@ -27,6 +28,7 @@ use hydraulics::water::Water;
 use pipes::Pipe;
 use uom::si::angle::degree;
 use uom::si::f64::{Angle, Length, Velocity, VolumeRate};
+use uom::si::length::meter;
 use uom::si::velocity::meter_per_second;
 
 /// The lowest pressure of the line and its place.
@@ -291,6 +293,32 @@ fn fitting_loss(
                 None => Err(FittingError::Bore(pipe.bore())),
             }
         }
+        (
+            _,
+            Shape::Rack {
+                area_m2,
+                bar_m,
+                gap_m,
+                angle_deg,
+                clogged,
+            },
+        ) => TrashRack {
+            // Square edges lose the most of all shapes of bar.
+            shape: BarShape::Rectangular,
+            bar: Length::new::<meter>(bar_m),
+            gap: Length::new::<meter>(gap_m),
+            inclination: angle(angle_deg),
+            clogged_share: clogged,
+        }
+        .loss()
+        .and_then(|loss| {
+            // From the approach, over the rack's whole area, to the pipe.
+            let circle = Length::new::<meter>((4.0 * area_m2 / std::f64::consts::PI).sqrt());
+            Ok(fittings::Loss {
+                k: loss.k.referred(circle, pipe.bore())?,
+                ..loss
+            })
+        }),
         (_, Shape::Mitre { angle_deg }) => fittings::mitre_bend(angle(angle_deg), MitreWall::Rough),
         (kind, Shape::Valve { opening }) => valve_loss(kind, opening),
         (kind, Shape::Plain) => Ok(plain_loss(kind)),

@@ -5,7 +5,7 @@
 use crate::book::Id;
 use crate::figure::{CloneGap, Figure, Gap, Lack, Trouble};
 use crate::resolve::Resolved;
-use crate::resolve::parts::{Stretch, is_entrance};
+use crate::resolve::parts::{Stretch, bears_pressure};
 use crate::steady::Steady;
 use crate::transient::Transient;
 use crate::verdict::Weakest;
@@ -143,7 +143,7 @@ fn one(
     let unrated = found
         .fittings
         .iter()
-        .filter(|f| f.stretch == Some(stretch.id) && !is_entrance(f.kind))
+        .filter(|f| f.stretch == Some(stretch.id) && bears_pressure(f.kind))
         .filter(|f| matches!(f.rating, Ok(None)))
         .map(|f| f.id)
         .collect();

@@ -78,6 +78,19 @@ pub enum Shape {
         /// Radius over bore.
         radius: f64,
     },
+    /// A trash rack before the inlet.
+    Rack {
+        /// Wetted area, m².
+        area_m2: f64,
+        /// Thickness of a bar, m.
+        bar_m: f64,
+        /// Gap between bars, m.
+        gap_m: f64,
+        /// Angle from the horizontal, degree.
+        angle_deg: f64,
+        /// Share that is clogged.
+        clogged: f64,
+    },
     /// A mitre of this angle.
     Mitre {
         /// Deflection, degree.
@@ -256,9 +269,22 @@ pub fn is_entrance(kind: FittingKind) -> bool {
     )
 }
 
+/// Whether the line's pressure stands in it, so that its rating counts.
+#[must_use]
+pub fn bears_pressure(kind: FittingKind) -> bool {
+    !is_entrance(kind) && kind != FittingKind::TrashRack
+}
+
 fn shape(r: &mut Reader<'_>, entry: &FittingEntry) -> Figure<Shape> {
     let id = entry.id;
     Ok(match entry.kind {
+        FittingKind::TrashRack => Shape::Rack {
+            area_m2: r.needed(Field::RackWidth(id))? * r.needed(Field::RackLength(id))?,
+            bar_m: r.needed(Field::RackBar(id))?,
+            gap_m: r.needed(Field::RackGap(id))?,
+            angle_deg: r.needed(Field::FittingAngle(id))?,
+            clogged: r.needed(Field::RackClogged(id))?,
+        },
         FittingKind::Bend => Shape::Bend {
             angle_deg: r.needed(Field::FittingAngle(id))?,
             radius: r.needed(Field::FittingRadius(id))?,
