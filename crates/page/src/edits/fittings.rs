@@ -5,7 +5,8 @@ use workbook::Book;
 use workbook::book::{FittingEntry, FittingKind, Id};
 
 /// Every kind of fitting, in the order of the line.
-pub const KINDS: [FittingKind; 12] = [
+pub const KINDS: [FittingKind; 13] = [
+    FittingKind::TrashRack,
     FittingKind::EntranceSharp,
     FittingKind::EntranceRounded,
     FittingKind::EntranceBellmouth,

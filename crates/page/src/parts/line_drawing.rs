@@ -272,7 +272,8 @@ fn marks(
 
 fn glyph(kind: FittingKind) -> Glyph {
     match kind {
-        FittingKind::EntranceSharp
+        FittingKind::TrashRack
+        | FittingKind::EntranceSharp
         | FittingKind::EntranceProjecting
         | FittingKind::EntranceRounded
         | FittingKind::EntranceBellmouth => Glyph::Rack,
