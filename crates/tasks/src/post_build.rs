@@ -66,14 +66,19 @@ pub(crate) fn finish(folder: &Path) -> Result<(usize, String), Trouble> {
     Ok((contents.len(), version))
 }
 
-/// The files below a folder, as sorted paths with forward slashes.
+/// The files below a folder, as sorted paths with forward slashes; hidden ones,
+/// such as what a build that was stopped has left in its stage, do not count.
 pub(crate) fn files_below(folder: &Path) -> io::Result<Vec<String>> {
     let mut found = Vec::new();
     let mut folders = vec![(folder.to_path_buf(), String::new())];
     while let Some((folder, prefix)) = folders.pop() {
         for entry in fs::read_dir(folder)? {
             let entry = entry?;
-            let name = format!("{prefix}{}", entry.file_name().to_string_lossy());
+            let name = entry.file_name().to_string_lossy().into_owned();
+            if name.starts_with('.') {
+                continue;
+            }
+            let name = format!("{prefix}{name}");
             if entry.file_type()?.is_dir() {
                 folders.push((entry.path(), format!("{name}/")));
             } else {

@@ -41,16 +41,18 @@
 
 mod access;
 mod browser;
+mod files;
 mod find;
 mod page;
 mod print;
 mod serial;
+mod steps;
 mod view;
 mod watch;
 
 pub use page::{LIMIT, PATIENCE, Page, walk};
 pub use print::Paper;
-pub use thirtyfour::WebElement;
+pub use thirtyfour::{Key, WebElement};
 
 /// What a step of a walk returns; any error ends the walk.
 pub type Result<T = ()> = std::result::Result<T, Box<dyn std::error::Error + Send + Sync>>;
