@@ -8,9 +8,9 @@ use crate::history::{History, Touch};
 use crate::keeping::{Keeper, Saved};
 use crate::parts::books::Incoming;
 use crate::platform::storage::{Persistence, Record};
-use crate::platform::{clock, place, root, settings, update, viewport};
+use crate::platform::{clock, frame, place, root, settings, update, viewport};
+use crate::slices::Progress;
 use crate::sweep_table::Filter;
-use crate::sweeping::Swept;
 use crate::theme::Theme;
 use leptos::prelude::*;
 use std::sync::Arc;
@@ -20,6 +20,7 @@ use workbook::book::Id;
 use workbook::caution::Sheet;
 use workbook::figure::{Place, Trouble};
 use workbook::reading::DecimalMark;
+use workbook::sweep::Row;
 use workbook::working::FigureKey;
 use workbook::{Book, Entry, Field, Findings, evaluate};
 
@@ -31,6 +32,9 @@ pub const SHEETS: [Sheet; 5] = [
     Sheet::Jets,
     Sheet::Print,
 ];
+
+/// How long good news stays in view.
+const NOTICE_MS: u64 = 6000;
 
 /// Name of a sheet in the address and in `data-test` marks.
 #[must_use]
@@ -103,8 +107,11 @@ pub struct State {
     pub incoming: RwSignal<Option<Incoming>>,
     /// Which rows of the sweep are shown.
     pub filter: RwSignal<Filter>,
-    /// The sweep over every pipe.
-    pub sweep: RwSignal<Swept>,
+    /// Rows of the last sweep that was completed.
+    pub rows: RwSignal<Arc<Vec<Row>>>,
+    /// How far the sweep under way has come; none where the rows are of the
+    /// book as it stands.
+    pub sweeping: RwSignal<Option<Progress>>,
     /// Size of the window.
     pub window: RwSignal<(f64, f64)>,
     /// Whether a newer edition of the page waits.
@@ -166,7 +173,8 @@ impl State {
             stored: RwSignal::new(Vec::new()),
             incoming: RwSignal::new(None),
             filter: RwSignal::new(Filter::default()),
-            sweep: RwSignal::new(Swept::default()),
+            rows: RwSignal::new(Arc::new(Vec::new())),
+            sweeping: RwSignal::new(None),
             window: viewport::followed(),
             update: RwSignal::new(update::is_waiting()),
             ready: RwSignal::new(false),
@@ -238,7 +246,16 @@ impl State {
 
     /// Says something once.
     pub fn tell(self, text: String, trouble: bool) {
-        self.notice.set(Some(Notice { text, trouble }));
+        let notice = Notice { text, trouble };
+        self.notice.set(Some(notice.clone()));
+        if !trouble {
+            // Good news goes by itself.
+            frame::after(NOTICE_MS, move || {
+                if self.notice.get_untracked().as_ref() == Some(&notice) {
+                    self.notice.set(None);
+                }
+            });
+        }
     }
 
     /// Goes to a sheet.
@@ -265,7 +282,7 @@ impl State {
         self.go(sheet);
         let id = crate::slug::place(place);
         // The sheet draws itself first.
-        crate::platform::frame::after(60, move || {
+        frame::after(60, move || {
             place::focus(&id);
         });
     }
@@ -307,6 +324,11 @@ impl State {
         Effect::new(move |_| {
             let paper = book.with(|b| b.print.paper);
             root::set("class", &crate::theme::classes(theme.get(), paper));
+        });
+        Effect::new(move |_| {
+            // The foot of every printed page.
+            let foot = book.with(|b| crate::parts::title_block::foot(b, words.get()));
+            root::set_property("--print-foot", &foot);
         });
         Effect::new(move |_| {
             root::set_title(&book.with(|b| crate::parts::title_block::title(b, words.get())));

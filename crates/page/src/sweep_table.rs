@@ -36,20 +36,21 @@ pub enum Column {
     Verdict,
 }
 
-/// Every column, in the order of the table.
+/// Every column, in the order of the table: what is chosen by first, so that a
+/// phone shows it without moving sideways.
 pub const COLUMNS: [Column; 12] = [
     Column::Pipe,
     Column::Bore,
     Column::Velocity,
-    Column::Loss,
     Column::LossShare,
+    Column::Share,
+    Column::Verdict,
+    Column::Loss,
     Column::NetHead,
     Column::Power,
     Column::Standing,
     Column::Quick,
-    Column::Share,
     Column::Collapse,
-    Column::Verdict,
 ];
 
 /// What is shown.

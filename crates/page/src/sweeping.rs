@@ -18,17 +18,6 @@ const PART: usize = 8;
 /// A person types on: the sweep waits this long for the next key.
 const WAIT_MS: u64 = 40;
 
-/// Rows of the sweep, as far as it has come.
-#[derive(Debug, Clone, PartialEq, Default)]
-pub struct Swept {
-    /// Rows of the last sweep that was completed.
-    pub rows: Arc<Vec<Row>>,
-    /// Whether they are of the book as it stands.
-    pub current: bool,
-    /// How far the sweep under way has come.
-    pub progress: Progress,
-}
-
 thread_local! {
     static TICKETS: RefCell<Tickets> = RefCell::new(Tickets::default());
     static PIPES: Vec<Arc<Pipe>> =
@@ -43,10 +32,7 @@ pub fn follow(state: State) {
             return;
         }
         let ticket = TICKETS.with_borrow_mut(Tickets::issue);
-        state.sweep.update(|s| {
-            s.current = false;
-            s.progress = Progress::default();
-        });
+        state.sweeping.set(Some(Progress::default()));
         frame::after(WAIT_MS, move || begin(state, ticket, &book));
     });
 }
@@ -83,13 +69,10 @@ fn go_on(state: State, ticket: Ticket, mut sweep: Sweep, mut rows: Vec<Row>) {
         all: sweep.total(),
     };
     if parts.is_whole() {
-        state.sweep.set(Swept {
-            rows: Arc::new(rows),
-            current: true,
-            progress,
-        });
+        state.rows.set(Arc::new(rows));
+        state.sweeping.set(None);
     } else {
-        state.sweep.update(|s| s.progress = progress);
+        state.sweeping.set(Some(progress));
         frame::soon(move || go_on(state, ticket, sweep, rows));
     }
 }

@@ -317,7 +317,7 @@ pub fn NumberCell(
     };
     view! {
         <div class="field-line" on:focusin=move |_| on_enter.run(())>
-            {handle.input(Some(name), Some(next))}
+            {handle.minus()} {handle.input(Some(name), Some(next))}
             {move || other().map(|u| view! { <span class="field-unit">{u}</span> })}
         </div>
         {handle.below()}

@@ -65,6 +65,11 @@ pub fn pick_file() {
     place::press(FILE);
 }
 
+/// Opens the demo under a key of its own.
+pub fn open_demo(state: State) {
+    new_book(state, demo::demo(&clock::new_key()));
+}
+
 fn new_book(state: State, book: Book) {
     state.open(book);
     state.keep();
@@ -175,7 +180,7 @@ pub fn BooksDialog() -> impl IntoView {
                     {act(
                         "book-demo",
                         Key::DO_DEMO_BOOK,
-                        Callback::new(move |()| new_book(state, demo::demo(&clock::new_key()))),
+                        Callback::new(move |()| open_demo(state)),
                     )}
                     {act(
                         "book-file-open",

@@ -205,7 +205,7 @@ pub fn DrawingPanel() -> impl IntoView {
                 svg()
                     .unwrap_or_else(|| {
                         view! {
-                            <p class="drawing-caption" data-test="drawing-empty">
+                            <p class="drawing-empty" data-test="drawing-empty">
                                 {move || state.words.get().say(Key::SECTION_EMPTY)}
                             </p>
                         }

@@ -25,6 +25,27 @@ pub fn name(book: &Book, words: Words) -> String {
     }
 }
 
+/// The foot of every printed page, as a quoted string of a style sheet.
+#[must_use]
+pub fn foot(book: &Book, words: Words) -> String {
+    let revision = text::state_revision_short(words, &book.revision.to_string());
+    let plain = format!("{} · {revision}", name(book, words));
+    let mut quoted = String::from("\"");
+    for c in plain.chars() {
+        match c {
+            '"' | '\\' => {
+                quoted.push('\\');
+                quoted.push(c);
+            }
+            // A line break would end the string.
+            c if c.is_control() => quoted.push(' '),
+            c => quoted.push(c),
+        }
+    }
+    quoted.push('"');
+    quoted
+}
+
 /// Title of the document.
 #[must_use]
 pub fn title(book: &Book, words: Words) -> String {
@@ -123,4 +144,19 @@ fn state_line(state: State) -> String {
         Saved::Not(_) => parts.insert(0, words.say(Key::STATE_NOT_SAVED).to_owned()),
     }
     parts.join(" · ")
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use words::language::Language;
+    use workbook::units::UnitSystem;
+
+    #[test]
+    fn the_foot_is_one_quoted_string_whatever_the_name() {
+        let words = Words::new(Language::English, UnitSystem::Metric);
+        let mut book = Book::new("k");
+        book.site.name = "a \"b\" \\ c\nd".to_owned();
+        assert!(foot(&book, words).starts_with(r#""a \"b\" \\ c d · "#));
+    }
 }

@@ -71,9 +71,13 @@ pub fn verdict_line(stretch: Id) -> AnyView {
         let findings = state.findings.get();
         let class = format!("verdict is-{}", slug(found.verdict));
         let (lead, rest) = speak::stretch_verdict(words, &book, &findings, &found);
+        // One stretch at a time shows all it was checked for.
+        let looked_at =
+            state.stretch.get() == Some(stretch) || findings.judged.stretches.len() == 1;
         let checks: Vec<AnyView> = found
             .checks
             .iter()
+            .filter(|_| looked_at)
             .map(|check| {
                 let said = words.about(&book).check(check);
                 view! {

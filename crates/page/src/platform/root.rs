@@ -1,5 +1,7 @@
 //! The document's own marks: language, theme, title.
 
+use wasm_bindgen::JsCast;
+
 /// Sets an attribute of the root element.
 pub fn set(attribute: &str, value: &str) {
     if let Some(root) = root() {
@@ -11,6 +13,14 @@ pub fn set(attribute: &str, value: &str) {
 #[must_use]
 pub fn get(attribute: &str) -> Option<String> {
     root()?.get_attribute(attribute)
+}
+
+/// Sets a custom property of the root element's style, which the page's policy
+/// allows by script.
+pub fn set_property(name: &str, value: &str) {
+    if let Some(root) = root().and_then(|r| r.dyn_into::<web_sys::HtmlElement>().ok()) {
+        let _ = root.style().set_property(name, value);
+    }
 }
 
 /// Sets the title of the document: the browser offers it as the name of a

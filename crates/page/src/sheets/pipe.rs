@@ -132,23 +132,26 @@ fn stretch(state: State, id: Id) -> AnyView {
     });
     view! {
         <section
+            class="sheet-part"
             id=format!("stretch-{id}")
             tabindex="-1"
             class:chosen=chosen
             data-test=format!("stretch-{id}")
         >
-            <button
-                type="button"
-                class="button-quiet"
-                data-test=format!("stretch-pick-{id}")
-                aria-pressed=move || if chosen() { "true" } else { "false" }
-                on:click=move |_| {
-                    state.stretch.set(if chosen() { None } else { Some(id) });
-                }
-            >
-                <strong>{named}</strong>
-                <span class="quiet" data-test=format!("stretch-pipe-{id}")>{pipe}</span>
-            </button>
+            <h3>
+                <button
+                    type="button"
+                    class="button-quiet"
+                    data-test=format!("stretch-pick-{id}")
+                    aria-pressed=move || if chosen() { "true" } else { "false" }
+                    on:click=move |_| {
+                        state.stretch.set(if chosen() { None } else { Some(id) });
+                    }
+                >
+                    {named}
+                </button>
+            </h3>
+            <p class="quiet" data-test=format!("stretch-pipe-{id}")>{pipe}</p>
             {verdict_line(id)}
             {move || {
                 changed

@@ -82,7 +82,6 @@ pub fn PrintSheet() -> impl IntoView {
                     {move || state.words.get().say(Key::DO_OPEN_FILE)}
                 </button>
             </div>
-            <p class="quiet">{move || state.words.get().say(Key::PRINT_PREVIEW)}</p>
         </div>
         {move || paper(state)}
     }
@@ -95,6 +94,12 @@ fn paper(state: State) -> AnyView {
     let findings = state.findings.get();
     let schedule = schedule(&book, &findings);
     view! {
+        <div
+            class="print-scroll"
+            tabindex="0"
+            role="region"
+            aria-label=words.say(Key::PRINT_PREVIEW)
+        >
         <article class="print-sheet" data-test="print-sheet" lang=words.language.code()>
             {title_block(words, &book, &findings)} {notes::unsettled(words, &book, &findings)}
             {section(words, &book, &findings)}
@@ -107,6 +112,7 @@ fn paper(state: State) -> AnyView {
             {notes::assumptions(words, &book, &findings)}
             {notes::sources(words, &findings, &schedule)} {notes::review(words, &book)}
         </article>
+        </div>
     }
     .into_any()
 }

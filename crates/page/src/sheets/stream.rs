@@ -2,10 +2,11 @@
 
 use crate::inputs::choice::choice_of;
 use crate::inputs::{NumberField, TextLook, choice, text_field};
+use crate::parts::books;
 use crate::parts::cautions::cautions;
 use crate::platform::clock;
 use crate::sheets::{head, part};
-use crate::state::state;
+use crate::state::{State, state};
 use leptos::prelude::*;
 use words::Key;
 use words::language::Language;
@@ -22,6 +23,11 @@ const LANGUAGES: [(Language, &str, Key); 2] = [
     (Language::English, "en", Key::PAGE_ENGLISH),
     (Language::Spanish, "es", Key::PAGE_SPANISH),
 ];
+
+/// Whether this is an empty book that nothing was done to.
+fn is_untouched(state: State) -> bool {
+    state.book.with(|b| b.revision == 0 && !b.invented)
+}
 
 /// The sheet.
 #[component]
@@ -110,6 +116,26 @@ pub fn StreamSheet() -> impl IntoView {
     .into_any();
     view! {
         {head(Key::SHEET_STREAM, Key::STREAM_NOT_GAUGED)}
+        <Show when=move || is_untouched(state)>
+            <div class="buttons" data-test="first-start">
+                <button
+                    type="button"
+                    class="button"
+                    data-test="first-demo"
+                    on:click=move |_| books::open_demo(state)
+                >
+                    {move || state.words.get().say(Key::DO_DEMO_BOOK)}
+                </button>
+                <button
+                    type="button"
+                    class="button"
+                    data-test="first-file"
+                    on:click=move |_| books::pick_file()
+                >
+                    {move || state.words.get().say(Key::DO_OPEN_FILE)}
+                </button>
+            </div>
+        </Show>
         <div class="fields">
             <NumberField field=Field::DesignFlow doubt=true/>
         </div>

@@ -3,7 +3,7 @@
 
 use crate::edits::{fittings, stations, stretches};
 use crate::inputs::NumberCell;
-use crate::inputs::typing::{change_sign, next_unit, unit_of};
+use crate::inputs::typing::{next_unit, unit_of};
 use crate::platform::{frame, place};
 use crate::slug;
 use crate::speak;
@@ -114,6 +114,12 @@ pub(super) fn stations() -> AnyView {
             .book
             .with(|b| b.line.stations.iter().map(|s| s.id).collect::<Vec<Id>>())
     });
+    let selected = Memo::new(move |_| {
+        state
+            .station
+            .get()
+            .filter(|id| ids.with(|all| all.contains(id)))
+    });
     let distance_unit = Memo::new(move |_| column_unit(state, Side::Distance));
     let level_unit = Memo::new(move |_| column_unit(state, Side::Level));
     let unit_button = move |side: Side, unit: Memo<&'static str>| {
@@ -169,7 +175,7 @@ pub(super) fn stations() -> AnyView {
                 {say(Key::DO_ADD_STATION)}
             </button>
         </div>
-        {move || state.station.get().filter(|id| ids.with(|all| all.contains(id))).map(|id| tools(state, id))}
+        {move || selected.get().map(|id| tools(state, id))}
     }
     .into_any()
 }
@@ -225,7 +231,7 @@ fn row(
                     aria-pressed=move || if chosen() { "true" } else { "false" }
                     on:click=move |_| state.station.set(Some(id))
                 >
-                    {move || number.get()} " " <span class="quiet">{move || name.get()}</span>
+                    {move || format!("{} {}", number.get(), name.get())}
                 </button>
             </th>
             {cell(Side::Distance, distance_unit, Key::FIELD_STATION_DISTANCE)}
@@ -266,16 +272,6 @@ fn tools(state: State, id: Id) -> AnyView {
             }
         })
     };
-    let minus = Callback::new(move |()| {
-        let field = Field::StationLevel(id);
-        let now = state
-            .book
-            .with_untracked(|b| b.entry(field).cloned().unwrap_or_default());
-        let system = state.words.get_untracked().units;
-        let unit = unit_of(&now, Kind::Level, system);
-        state.type_entry(field, &change_sign(&now.text), unit);
-        focus(field);
-    });
     let delete = Callback::new(move |()| {
         let mut gone = false;
         state.act(|b| gone = stations::remove(b, id));
@@ -330,7 +326,6 @@ fn tools(state: State, id: Id) -> AnyView {
                 },
             )}
             <div class="buttons">
-                {tool("station-minus", Key::PAGE_MINUS_LEVEL, minus)}
                 {tool("station-above", Key::DO_INSERT_ABOVE, insert(false))}
                 {tool("station-below", Key::PAGE_INSERT_BELOW, insert(true))}
                 <Show when=may_split>{tool("station-split", Key::DO_ADD_STRETCH, split)}</Show>

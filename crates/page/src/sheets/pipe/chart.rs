@@ -129,9 +129,9 @@ pub(super) fn chart(state: State) -> AnyView {
         });
         let chosen = chosen_pipes(state);
         let size = room(state.window.get(), state.theme.get() == Theme::Outdoor);
-        state.sweep.with(|s| {
-            let places = shown(&s.rows, filter, cap);
-            let (chart, rows) = chart_of(&s.rows, &places, filter, (cap, greatest), &chosen, words);
+        state.rows.with(|all| {
+            let places = shown(all, filter, cap);
+            let (chart, rows) = chart_of(all, &places, filter, (cap, greatest), &chosen, words);
             let bore = |x: f64, d: usize| words.axis(x, d);
             let per_cent = |x: f64, d: usize| format!("{}\u{202f}%", words.axis(x, d));
             let drawing = draw(&chart, size, &bore, &per_cent).ok()?;
@@ -163,8 +163,8 @@ pub(super) fn chart(state: State) -> AnyView {
             let words = state.words.get();
             let row = rows.get(touched.get()?).copied()?;
             state
-                .sweep
-                .with(|s| s.rows.get(row).map(|r| read_row(words, r)))
+                .rows
+                .with(|rows| rows.get(row).map(|r| read_row(words, r)))
         };
         Some(view! {
             <svg

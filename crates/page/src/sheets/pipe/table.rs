@@ -15,6 +15,7 @@ use workbook::Measure;
 use workbook::figure::Figure;
 use workbook::sweep::Row;
 use workbook::units::Kind;
+use workbook::verdict::Verdict;
 
 /// Rows drawn at first: what a phone draws at once.
 const FIRST_ROWS: usize = 40;
@@ -106,7 +107,7 @@ pub(super) fn controls(state: State) -> AnyView {
         let words = state.words.get();
         let mut all = vec![(String::new(), words.say(Key::MATERIAL_ALL).to_owned())];
         for m in Material::ALL {
-            let any = state.sweep.with(|s| s.rows.iter().any(|r| r.material == m));
+            let any = state.rows.with(|rows| rows.iter().any(|r| r.material == m));
             if any {
                 all.push((m.slug().to_owned(), words.name(m).to_owned()));
             }
@@ -133,11 +134,9 @@ pub(super) fn controls(state: State) -> AnyView {
     };
     let progress = move || {
         let words = state.words.get();
-        state.sweep.with(|s| {
-            (!s.current).then(|| {
-                let (done, all) = (words.count(s.progress.done), words.count(s.progress.all));
-                text::sweep_running(words, &done, &all)
-            })
+        state.sweeping.get().map(|p| {
+            let (done, all) = (words.count(p.done), words.count(p.all));
+            text::sweep_running(words, &done, &all)
         })
     };
     let fit = [
@@ -189,7 +188,7 @@ pub(super) fn table(state: State) -> AnyView {
     let places = Memo::new(move |_| {
         let filter = state.filter.get();
         let cap = cap_of(state);
-        state.sweep.with(|s| shown(&s.rows, filter, cap))
+        state.rows.with(|rows| shown(rows, filter, cap))
     });
     let in_view = move || {
         let most = if all.get() { usize::MAX } else { FIRST_ROWS };
@@ -200,10 +199,10 @@ pub(super) fn table(state: State) -> AnyView {
         let words = state.words.get();
         let chosen = chosen_pipes(state);
         let visible = in_view();
-        state.sweep.with(|s| {
+        state.rows.with(|rows| {
             visible
                 .into_iter()
-                .filter_map(|i| s.rows.get(i))
+                .filter_map(|i| rows.get(i))
                 .map(|r| row(state, words, r, chosen.contains(&r.pipe)))
                 .collect_view()
         })
@@ -220,10 +219,12 @@ pub(super) fn table(state: State) -> AnyView {
             <table
                 class="table table-rows"
                 data-test="sweep-table"
-                aria-busy=move || if state.sweep.with(|s| s.current) { "false" } else { "true" }
+                aria-busy=move || if state.sweeping.with(Option::is_some) { "true" } else { "false" }
             >
                 <thead>
-                    <tr>{heads}</tr>
+                    <tr>
+                        {heads} <th scope="col">{say(Key::SWEEP_WHY)}</th>
+                    </tr>
                 </thead>
                 <tbody>{rows}</tbody>
             </table>
@@ -289,14 +290,6 @@ fn row(state: State, words: Words, row: &Row, chosen: bool) -> AnyView {
             choose(b, &pipe, stretch);
         });
     };
-    let cells: Vec<AnyView> = COLUMNS
-        .into_iter()
-        .filter(|c| !matches!(c, Column::Pipe | Column::Verdict))
-        .map(|c| {
-            let value = cell(words, row, c).unwrap_or_else(|| "\u{2014}".to_owned());
-            view! { <td class="num">{value}</td> }.into_any()
-        })
-        .collect();
     let verdict = row.verdict.verdict;
     let why = {
         let book = state.book.get_untracked();
@@ -305,6 +298,18 @@ fn row(state: State, words: Words, row: &Row, chosen: bool) -> AnyView {
             .map(|c| words.about(&book).check(c))
             .unwrap_or_default()
     };
+    let share = share_of(&row.verdict);
+    let cells: Vec<AnyView> = COLUMNS
+        .into_iter()
+        .filter(|c| *c != Column::Pipe)
+        .map(|c| {
+            if c == Column::Verdict {
+                return verdict_cell(words, verdict, share);
+            }
+            let value = cell(words, row, c).unwrap_or_else(speak::none);
+            view! { <td class="num">{value}</td> }.into_any()
+        })
+        .collect();
     let test = slug::pipe(&row.pipe);
     view! {
         <tr class:chosen=chosen data-test=format!("row-{test}")>
@@ -324,14 +329,22 @@ fn row(state: State, words: Words, row: &Row, chosen: bool) -> AnyView {
                     })}
             </th>
             {cells}
-            <td data-verdict=verdict_slug(verdict)>
-                {mark_svg(verdict, share_of(&row.verdict))} " "
-                <span class=format!("verdict-word is-{}", verdict_slug(verdict))>
-                    {words.verdict(verdict)}
-                </span>
-                " " <span class="quiet">{why}</span>
+            <td>
+                <p class="table-why">{why}</p>
             </td>
         </tr>
+    }
+    .into_any()
+}
+
+fn verdict_cell(words: Words, verdict: Verdict, share: Option<f64>) -> AnyView {
+    view! {
+        <td class="num" data-verdict=verdict_slug(verdict)>
+            {mark_svg(verdict, share)} " "
+            <span class=format!("verdict-word is-{}", verdict_slug(verdict))>
+                {words.verdict(verdict)}
+            </span>
+        </td>
     }
     .into_any()
 }

@@ -93,6 +93,8 @@ pub(super) fn unsettled(words: Words, book: &Book, findings: &Findings) -> AnyVi
                 </strong> " " {words.say(Key::PRINT_NOT_FOR_BUILDING)}
             </p>
             <ul class="print-notes">{stretches}</ul>
+        </section>
+        <section class="print-section" data-test="print-open">
             <h2>{words.say(Key::PRINT_UNSETTLED)}</h2>
             <ul class="print-notes">{open}</ul>
         </section>
