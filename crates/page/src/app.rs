@@ -64,8 +64,10 @@ pub fn App() -> impl IntoView {
                 {say(Key::PAGE_SKIP)}
             </a>
             <TitleBlock/>
-            <Banners/>
-            <NextEntry/>
+            <div class="notices">
+                <Banners/>
+                <NextEntry/>
+            </div>
             <DrawingPanel/>
             <main
                 class="sheet"

@@ -57,7 +57,7 @@ impl History {
         !self.future.is_empty()
     }
 
-    /// Changes the book. Returns whether anything changed; every change counts
+    /// Changes the book. Returns whether anything changed; every step counts
     /// one in [`Book::revision`], which never falls.
     pub fn edit(&mut self, touch: Touch, change: impl FnOnce(&mut Book)) -> bool {
         let mut book = (*self.now).clone();
@@ -66,9 +66,9 @@ impl History {
         if book == *self.now {
             return false;
         }
-        book.revision += 1;
         let joined = touch != Touch::Act && self.open.as_ref() == Some(&touch);
         if !joined {
+            book.revision += 1;
             self.past.push(Arc::clone(&self.now));
             if self.past.len() > MOST_STEPS {
                 self.past.remove(0);

@@ -96,7 +96,10 @@ impl Handle {
     fn turn_unit(self) {
         let next = next_unit(self.field.kind(), self.unit.get_untracked());
         let text = self.entry.with_untracked(|e| e.text.clone());
+        // A step of its own, apart from the typing before and after.
+        self.state.close_step();
         self.state.type_entry(self.field, &text, next);
+        self.state.close_step();
     }
 
     fn with_text(self, change: fn(&str) -> String) {
@@ -191,11 +194,15 @@ impl Handle {
         }
     }
 
-    fn below(self) -> impl IntoView {
+    /// What stands below the line; in a table only what is out of the
+    /// ordinary.
+    fn below(self, brief: bool) -> impl IntoView {
         let id = self.id();
         let preset = move || {
             let words = self.state.words.get();
-            if self.focused.get() {
+            if brief {
+                None
+            } else if self.focused.get() {
                 Some(words.field_hint(self.field))
             } else if self.entry.with(Entry::is_empty) {
                 words.field_preset(self.field)
@@ -287,7 +294,7 @@ pub fn NumberField(
             <div class="field-line">
                 {handle.minus()} {handle.input(None, None)} {doubt} {handle.unit()}
             </div>
-            {handle.below()}
+            {handle.below(false)}
         </div>
     }
     .into_any()
@@ -320,7 +327,7 @@ pub fn NumberCell(
             {handle.minus()} {handle.input(Some(name), Some(next))}
             {move || other().map(|u| view! { <span class="field-unit">{u}</span> })}
         </div>
-        {handle.below()}
+        {handle.below(true)}
     }
     .into_any()
 }

@@ -68,7 +68,8 @@ pub fn PipeSheet() -> impl IntoView {
                     let said = move || {
                         let words = state.words.get();
                         let book = state.book.get();
-                        speak::stretch(words, &book, &state.findings.get(), id)
+                        let name = speak::stretch(words, &book, &state.findings.get(), id);
+                        text::page_figures_of(words, &name)
                     };
                     view! {
                         <details class="sheet-part" data-test="stretch-figures">
@@ -135,10 +136,9 @@ fn stretch(state: State, id: Id) -> AnyView {
             class="sheet-part"
             id=format!("stretch-{id}")
             tabindex="-1"
-            class:chosen=chosen
             data-test=format!("stretch-{id}")
         >
-            <h3>
+            <h3 class:chosen=chosen>
                 <button
                     type="button"
                     class="button-quiet"

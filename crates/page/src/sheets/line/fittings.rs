@@ -26,15 +26,20 @@ pub(super) fn fittings() -> AnyView {
             .with(|b| b.line.fittings.iter().map(|f| f.id).collect::<Vec<Id>>())
     });
     let add_one = move |_| {
-        let station = state.station.get_untracked().or_else(|| {
-            state
-                .book
-                .with_untracked(|b| b.line.stations.first().map(|s| s.id))
-        });
+        // The first is the entrance, at the head of the line; then mostly bends.
+        let first = state.book.with_untracked(|b| b.line.fittings.is_empty());
+        let station = state
+            .station
+            .get_untracked()
+            .filter(|_| !first)
+            .or_else(|| {
+                state
+                    .book
+                    .with_untracked(|b| b.line.stations.first().map(|s| s.id))
+            });
         if let Some(station) = station {
             state.act(|b| {
-                // The first a line needs is its entrance; then mostly bends.
-                let kind = if b.line.fittings.is_empty() {
+                let kind = if first {
                     FittingKind::EntranceSharp
                 } else {
                     FittingKind::Bend

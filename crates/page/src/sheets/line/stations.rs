@@ -114,12 +114,7 @@ pub(super) fn stations() -> AnyView {
             .book
             .with(|b| b.line.stations.iter().map(|s| s.id).collect::<Vec<Id>>())
     });
-    let selected = Memo::new(move |_| {
-        state
-            .station
-            .get()
-            .filter(|id| ids.with(|all| all.contains(id)))
-    });
+    let open = RwSignal::new(None);
     let distance_unit = Memo::new(move |_| column_unit(state, Side::Distance));
     let level_unit = Memo::new(move |_| column_unit(state, Side::Level));
     let unit_button = move |side: Side, unit: Memo<&'static str>| {
@@ -161,7 +156,7 @@ pub(super) fn stations() -> AnyView {
                 <For
                     each=move || ids.get()
                     key=|id| *id
-                    children=move |id| row(state, id, distance_unit, level_unit)
+                    children=move |id| row(state, id, open, (distance_unit, level_unit))
                 />
             </tbody>
         </table>
@@ -175,7 +170,6 @@ pub(super) fn stations() -> AnyView {
                 {say(Key::DO_ADD_STATION)}
             </button>
         </div>
-        {move || selected.get().map(|id| tools(state, id))}
     }
     .into_any()
 }
@@ -183,9 +177,10 @@ pub(super) fn stations() -> AnyView {
 fn row(
     state: State,
     id: Id,
-    distance_unit: Memo<&'static str>,
-    level_unit: Memo<&'static str>,
+    open: RwSignal<Option<Id>>,
+    (distance_unit, level_unit): (Memo<&'static str>, Memo<&'static str>),
 ) -> AnyView {
+    let is_open = Memo::new(move |_| open.get() == Some(id));
     let number = Memo::new(move |_| {
         state
             .book
@@ -228,8 +223,11 @@ fn row(
                     type="button"
                     class="button-quiet"
                     data-test=format!("station-pick-{id}")
-                    aria-pressed=move || if chosen() { "true" } else { "false" }
-                    on:click=move |_| state.station.set(Some(id))
+                    aria-expanded=move || if is_open.get() { "true" } else { "false" }
+                    on:click=move |_| {
+                        state.station.set(Some(id));
+                        open.set(if is_open.get_untracked() { None } else { Some(id) });
+                    }
                 >
                     {move || format!("{} {}", number.get(), name.get())}
                 </button>
@@ -237,6 +235,11 @@ fn row(
             {cell(Side::Distance, distance_unit, Key::FIELD_STATION_DISTANCE)}
             {cell(Side::Level, level_unit, Key::FIELD_STATION_LEVEL)}
         </tr>
+        <Show when=move || is_open.get()>
+            <tr>
+                <td colspan="3">{tools(state, id)}</td>
+            </tr>
+        </Show>
     }
     .into_any()
 }

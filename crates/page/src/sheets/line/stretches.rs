@@ -83,7 +83,6 @@ fn one(state: State, id: Id) -> AnyView {
     view! {
         <fieldset
             class="sheet-part"
-            class:chosen=move || state.stretch.get() == Some(id)
             data-test=format!("line-stretch-{id}")
         >
             <legend>
@@ -93,7 +92,7 @@ fn one(state: State, id: Id) -> AnyView {
                     data-test=format!("line-stretch-pick-{id}")
                     on:click=move |_| state.stretch.set(Some(id))
                 >
-                    <strong>{named}</strong>
+                    <strong class:chosen=move || state.stretch.get() == Some(id)>{named}</strong>
                 </button>
             </legend>
             <div class="fields">

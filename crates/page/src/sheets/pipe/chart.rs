@@ -139,7 +139,14 @@ pub(super) fn chart(state: State) -> AnyView {
         })
     });
     (move || {
-        let Charted { drawing, rows } = found.get()?;
+        let Some(Charted { drawing, rows }) = found.get() else {
+            // Nothing to draw: say why, once the rows are there.
+            let any = state.rows.with(|r| !r.is_empty());
+            return any.then(|| {
+                let said = move || state.words.get().say(Key::SWEEP_NEEDS_LINE);
+                view! { <p class="quiet" data-test="sweep-empty">{said}</p> }.into_any()
+            });
+        };
         let picture = drawing.picture.clone();
         let (width, height) = (picture.width, picture.height);
         let drawing = StoredValue::new(drawing);
@@ -166,7 +173,7 @@ pub(super) fn chart(state: State) -> AnyView {
                 .rows
                 .with(|rows| rows.get(row).map(|r| read_row(words, r)))
         };
-        Some(view! {
+        let drawn = view! {
             <svg
                 class="drawing-svg"
                 viewBox=picture.view_box()
@@ -188,7 +195,8 @@ pub(super) fn chart(state: State) -> AnyView {
                         })
                 }}
             </p>
-        })
+        };
+        Some(drawn.into_any())
     })
     .into_any()
 }
