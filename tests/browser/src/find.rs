@@ -90,9 +90,19 @@ impl Page {
             match element.click().await {
                 Ok(()) => return Ok(()),
                 Err(error) if begun.elapsed() > PATIENCE => return Err(error.into()),
-                Err(_) => tokio::time::sleep(Duration::from_millis(50)).await,
+                Err(_) => self.bring_to_middle(element).await,
             }
         }
+    }
+
+    /// Scrolls, as a person does who sees a bar lie over what they want to tap.
+    pub(crate) async fn bring_to_middle(&self, element: &WebElement) {
+        if let (Ok(driver), Ok(argument)) = (self.driver(), element.to_json()) {
+            let script = "arguments[0].scrollIntoView({ block: 'center', behavior: 'instant' });";
+            // It may be gone: then finding it again is the caller's part.
+            let _ = driver.execute(script, vec![argument]).await;
+        }
+        tokio::time::sleep(Duration::from_millis(50)).await;
     }
 
     /// Replaces what stands in the field with that label, by keyboard, and leaves the field.

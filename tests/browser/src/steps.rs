@@ -23,12 +23,13 @@ impl Page {
         let begun = Instant::now();
         loop {
             // The page may draw it anew between finding and tapping.
-            match self.find_test(name).await?.click().await {
+            let element = self.find_test(name).await?;
+            match element.click().await {
                 Ok(()) => return Ok(()),
                 Err(error) if begun.elapsed() > PATIENCE => {
                     return Err(format!("{name} cannot be tapped: {error}").into());
                 }
-                Err(_) => tokio::time::sleep(Duration::from_millis(50)).await,
+                Err(_) => self.bring_to_middle(&element).await,
             }
         }
     }
