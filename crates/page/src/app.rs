@@ -63,12 +63,16 @@ pub fn App() -> impl IntoView {
             }>
                 {say(Key::PAGE_SKIP)}
             </a>
+            <h1 class="visually-hidden">{say(Key::APP_NAME)}</h1>
             <TitleBlock/>
             <div class="notices">
                 <Banners/>
                 <NextEntry/>
             </div>
-            <DrawingPanel/>
+            // The print shows the drawing itself.
+            <Show when=move || state.sheet.get() != Sheet::Print>
+                <DrawingPanel/>
+            </Show>
             <main
                 class="sheet"
                 id="sheet"

@@ -85,7 +85,7 @@ impl State {
 
     /// Begins the next write, unless one is under way.
     fn pump(self) {
-        let Some(write) = self.keeper.try_update_value(|k| k.queue.next()).flatten() else {
+        let Some(write) = self.keeper.try_update_value(|k| k.queue.begin()).flatten() else {
             return;
         };
         leptos::task::spawn_local(async move {

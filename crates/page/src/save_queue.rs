@@ -53,7 +53,7 @@ impl<T> SaveQueue<T> {
 
     /// The next write to begin, unless one is under way. The caller begins it,
     /// and says [`SaveQueue::done`] when it has ended, well or not.
-    pub fn next(&mut self) -> Option<Write<T>> {
+    pub fn begin(&mut self) -> Option<Write<T>> {
         if self.under_way.is_some() {
             return None;
         }
@@ -98,17 +98,17 @@ mod tests {
     fn one_at_a_time_and_the_last_wins() {
         let mut q = SaveQueue::default();
         q.push(keep("a", 1));
-        assert_eq!(q.next(), Some(keep("a", 1)));
+        assert_eq!(q.begin(), Some(keep("a", 1)));
         q.push(keep("a", 2));
         q.push(keep("a", 3));
-        assert_eq!(q.next(), None);
+        assert_eq!(q.begin(), None);
         assert!(!q.settled("a"));
         q.done();
         assert!(!q.settled("a") && q.settled("b"));
-        assert_eq!(q.next(), Some(keep("a", 3)));
+        assert_eq!(q.begin(), Some(keep("a", 3)));
         q.done();
         assert!(q.settled("a"));
-        assert_eq!(q.next(), None);
+        assert_eq!(q.begin(), None);
     }
 
     #[test]
@@ -116,10 +116,10 @@ mod tests {
         let mut q = SaveQueue::default();
         q.push(keep("a", 1));
         q.push(Write::Forget { id: "a".into() });
-        assert_eq!(q.next(), Some(Write::Forget { id: "a".into() }));
+        assert_eq!(q.begin(), Some(Write::Forget { id: "a".into() }));
         q.push(keep("a", 2));
         q.done();
-        assert_eq!(q.next(), Some(keep("a", 2)));
+        assert_eq!(q.begin(), Some(keep("a", 2)));
     }
 
     proptest! {
@@ -136,9 +136,9 @@ mod tests {
                 let w = if forget { Write::Forget { id } } else { keep(&id, u32::try_from(i).unwrap()) };
                 write(&mut wanted, w.clone());
                 q.push(w);
-                if step && let Some(w) = q.next() { write(&mut store, w); q.done(); }
+                if step && let Some(w) = q.begin() { write(&mut store, w); q.done(); }
             }
-            while let Some(w) = q.next() { write(&mut store, w); q.done(); }
+            while let Some(w) = q.begin() { write(&mut store, w); q.done(); }
             prop_assert_eq!(store, wanted);
         }
     }

@@ -9,7 +9,7 @@ use words::Key;
 use workbook::Book;
 
 /// What a text field asks for, beside where it stands.
-#[derive(Debug, Clone, Default)]
+#[derive(Debug, Clone, Copy, Default)]
 pub struct TextLook {
     /// Several lines.
     pub long: bool,

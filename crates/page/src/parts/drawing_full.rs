@@ -22,6 +22,17 @@ pub fn open(state: State) {
     place::open_dialog(DIALOG);
 }
 
+/// How the picture follows the fingers.
+#[derive(Debug, Clone, Copy, PartialEq)]
+enum Follow {
+    /// Not at all.
+    Stay,
+    /// Dragged by this much.
+    Drag((f64, f64)),
+    /// Zoomed by a factor about a point.
+    Zoom(f64, (f64, f64)),
+}
+
 /// Pointers that are down, with where they are; how far they have moved.
 #[derive(Debug, Clone, Default)]
 struct Grip {
@@ -32,24 +43,20 @@ struct Grip {
 impl Grip {
     /// Moves a pointer. Returns how the picture follows: drag, or zoom about a
     /// point.
-    fn moved_to(
-        &mut self,
-        id: i32,
-        to: (f64, f64),
-    ) -> (Option<(f64, f64)>, Option<(f64, (f64, f64))>) {
+    fn moved_to(&mut self, id: i32, to: (f64, f64)) -> Follow {
         let before = self.spread();
         let Some(pointer) = self.pointers.iter_mut().find(|p| p.0 == id) else {
-            return (None, None);
+            return Follow::Stay;
         };
         let by = (to.0 - pointer.1.0, to.1 - pointer.1.1);
         pointer.1 = to;
         self.moved += by.0.abs() + by.1.abs();
         if self.pointers.len() == 1 {
-            return (Some(by), None);
+            return Follow::Drag(by);
         }
         match (before, self.spread()) {
-            (Some((was, _)), Some((now, middle))) if was > 1.0 => (None, Some((now / was, middle))),
-            _ => (None, None),
+            (Some((was, _)), Some((now, middle))) if was > 1.0 => Follow::Zoom(now / was, middle),
+            _ => Follow::Stay,
         }
     }
 
@@ -118,11 +125,11 @@ pub fn DrawingFull() -> impl IntoView {
         let Some(at) = point(&e) else { return };
         let follow = grip.try_update_value(|g| g.moved_to(e.pointer_id(), at));
         match follow {
-            Some((Some(by), _)) => view.set(in_window.get_untracked().dragged(by)),
-            Some((_, Some((factor, middle)))) => {
+            Some(Follow::Drag(by)) => view.set(in_window.get_untracked().dragged(by)),
+            Some(Follow::Zoom(factor, middle)) => {
                 view.set(in_window.get_untracked().zoomed(factor, middle));
             }
-            _ => {}
+            Some(Follow::Stay) | None => {}
         }
     };
     let up = move |e: PointerEvent| {
@@ -222,11 +229,12 @@ mod tests {
     fn one_finger_drags_and_two_zoom() {
         let mut grip = Grip::default();
         grip.pointers.push((1, (0.0, 0.0)));
-        assert_eq!(grip.moved_to(1, (3.0, 4.0)), (Some((3.0, 4.0)), None));
+        assert_eq!(grip.moved_to(1, (3.0, 4.0)), Follow::Drag((3.0, 4.0)));
         grip.pointers.push((2, (13.0, 4.0)));
-        let (drag, zoom) = grip.moved_to(2, (23.0, 4.0));
-        assert_eq!(drag, None);
-        assert_eq!(zoom, Some((2.0, (13.0, 4.0))));
-        assert_eq!(grip.moved_to(9, (0.0, 0.0)), (None, None));
+        assert_eq!(
+            grip.moved_to(2, (23.0, 4.0)),
+            Follow::Zoom(2.0, (13.0, 4.0))
+        );
+        assert_eq!(grip.moved_to(9, (0.0, 0.0)), Follow::Stay);
     }
 }

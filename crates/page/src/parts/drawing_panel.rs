@@ -60,10 +60,10 @@ pub fn select(state: State, named: &Named, drawing: &LongSectionDrawing, at: (f6
             state.stretch.set(if same { None } else { id });
         }
         Some(HitWhat::Station(i)) => {
-            select_station(state, named.stations.get(i).copied().flatten())
+            select_station(state, named.stations.get(i).copied().flatten());
         }
         Some(HitWhat::Fitting(i)) => {
-            select_station(state, named.fittings.get(i).copied().flatten())
+            select_station(state, named.fittings.get(i).copied().flatten());
         }
         None => {}
     }

@@ -76,9 +76,9 @@ pub async fn list() -> Result<Vec<Record>, StoreTrouble> {
     let (_, store) = begin("readonly").await?;
     let found = store
         .get_all(None, None)
-        .map_err(other)?
+        .map_err(|e| other(&e))?
         .await
-        .map_err(other)?;
+        .map_err(|e| other(&e))?;
     let mut records: Vec<Record> = found.iter().map(record_of).collect();
     records.sort_by(|a, b| b.changed.cmp(&a.changed));
     Ok(records)
@@ -92,9 +92,9 @@ pub async fn load(id: &str) -> Result<Option<Record>, StoreTrouble> {
     let (_, store) = begin("readonly").await?;
     let found = store
         .get(JsValue::from_str(id))
-        .map_err(other)?
+        .map_err(|e| other(&e))?
         .await
-        .map_err(other)?;
+        .map_err(|e| other(&e))?;
     Ok(found.as_ref().map(record_of))
 }
 
@@ -107,15 +107,15 @@ pub async fn keep(record: &Record, known: Option<&str>) -> Result<Outcome, Store
     let (transaction, store) = begin("readwrite").await?;
     let found = store
         .get(JsValue::from_str(&record.id))
-        .map_err(other)?
+        .map_err(|e| other(&e))?
         .await
-        .map_err(other)?;
+        .map_err(|e| other(&e))?;
     if let Some(found) = found.as_ref()
         && Some(record_of(found).stamp.as_str()) != known
     {
         return Ok(Outcome::Foreign);
     }
-    store.put(&value_of(record), None).map_err(other)?;
+    store.put(&value_of(record), None).map_err(|e| other(&e))?;
     complete(&transaction).await?;
     Ok(Outcome::Kept)
 }
@@ -126,7 +126,7 @@ pub async fn keep(record: &Record, known: Option<&str>) -> Result<Outcome, Store
 /// [`StoreTrouble`].
 pub async fn forget(id: &str) -> Result<(), StoreTrouble> {
     let (transaction, store) = begin("readwrite").await?;
-    store.delete(JsValue::from_str(id)).map_err(other)?;
+    store.delete(JsValue::from_str(id)).map_err(|e| other(&e))?;
     complete(&transaction).await
 }
 
@@ -191,7 +191,7 @@ async fn begin(mode: &str) -> Result<(IdbTransaction, ObjectStore), StoreTrouble
     })?;
     let store = Transaction::from(transaction.clone())
         .object_store(BOOKS)
-        .map_err(other)?;
+        .map_err(|e| other(&e))?;
     Ok((transaction, store))
 }
 
@@ -231,8 +231,8 @@ fn named(thrown: &JsValue) -> StoreTrouble {
     trouble(&text("name"), &text("message"))
 }
 
-fn other(error: idb::Error) -> StoreTrouble {
-    match &error {
+fn other(error: &idb::Error) -> StoreTrouble {
+    match error {
         idb::Error::DomException(e) => named(e),
         _ => StoreTrouble::Other(error.to_string()),
     }

@@ -214,7 +214,7 @@ pub(super) fn table(state: State) -> AnyView {
             class="table-scroll"
             tabindex="0"
             role="region"
-            aria-label=say(Key::SWEEP_TITLE)
+            aria-label=count
         >
             <table
                 class="table table-rows"

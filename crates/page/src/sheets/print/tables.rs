@@ -62,11 +62,17 @@ fn orders(words: Words, line: &Line) -> Vec<String> {
     if line.orders.is_empty() {
         return vec![text::schedule_no_supply(words, &length)];
     }
+    // Ways it is sold: one of them is ordered, not all.
     line.orders
         .iter()
-        .map(|o| {
-            let each = words.figure(o.piece_mass);
-            format!("{} ({each})", order(words, o))
+        .enumerate()
+        .map(|(i, o)| {
+            let said = format!("{} ({})", order(words, o), words.figure(o.piece_mass));
+            if i == 0 {
+                said
+            } else {
+                text::page_or_else(words, &said)
+            }
         })
         .collect()
 }
@@ -164,7 +170,7 @@ fn schedule_row(words: Words, book: &Book, id: Id, line: &Figure<Line>) -> AnyVi
             {td(words.value(line.length))}
             <td>
                 {pipe.designation.clone()} " "
-                <small>{pipe.standard.clone()} " " {speak::memory(words, seen)}</small>
+                {pipe.standard.clone()} " " {speak::memory(words, seen)}
                 <div>{words.name(line.laying)}</div>
             </td>
             {td(words.value(Measure::bore(pipe.outside_diameter)))}
