@@ -1,6 +1,7 @@
 //! What goes on paper is what the workbook finds: the demo book is printed, and
 //! the PDF's text is held against figures that are computed here, natively.
 
+use pipes::SupplyKind;
 use serde_json::Value;
 use std::path::Path;
 use std::process::Command;
@@ -57,12 +58,16 @@ impl Pages {
 fn unreachable_text(what: &str, text: &str, pages: &[String]) -> usize {
     panic!(
         "{what}: {text:?} is on no page in one piece; the pages are {} long",
-        pages.iter().map(|p| p.len().to_string()).collect::<Vec<_>>().join(", ")
+        pages
+            .iter()
+            .map(|p| p.len().to_string())
+            .collect::<Vec<_>>()
+            .join(", ")
     );
 }
 
 /// A table as the page holds it: heads of the columns, and rows of cells.
-#[derive(Debug, serde::Deserialize)]
+#[derive(Debug)]
 struct Table {
     heads: Vec<String>,
     rows: Vec<Vec<String>>,
@@ -74,12 +79,13 @@ impl Table {
         let script = format!(
             "const table = document.querySelector('[data-test=\"{test}\"]');
              const cells = (row) => [...row.cells].map((cell) => cell.textContent);
-             return {{
-               heads: table.tHead ? cells(table.tHead.rows[0]) : [],
-               rows: [...table.rows].filter((row) => row.closest('thead') === null).map(cells),
-             }};"
+             return [
+               table.tHead ? cells(table.tHead.rows[0]) : [],
+               [...table.rows].filter((row) => row.closest('thead') === null).map(cells),
+             ];"
         );
-        Ok(serde_json::from_value(page.script(&script, vec![]).await?)?)
+        let (heads, rows) = serde_json::from_value(page.script(&script, vec![]).await?)?;
+        Ok(Self { heads, rows })
     }
 
     /// The cell of a row under a head.
@@ -129,13 +135,21 @@ async fn check_schedule(page: &Page, words: Words, book: &Book, found: &Findings
         };
         same(Key::SCHEDULE_FROM, Kind::Distance, words.value(line.from));
         same(Key::SCHEDULE_TO, Kind::Distance, words.value(line.to));
-        same(Key::SCHEDULE_LENGTH, Kind::Distance, words.value(line.length));
+        same(
+            Key::SCHEDULE_LENGTH,
+            Kind::Distance,
+            words.value(line.length),
+        );
         same(
             Key::SCHEDULE_OUTSIDE_DIAMETER,
             Kind::Bore,
             words.value(Measure::bore(pipe.outside_diameter)),
         );
-        same(Key::SCHEDULE_BORE, Kind::Bore, words.value(Measure::bore(pipe.bore())));
+        same(
+            Key::SCHEDULE_BORE,
+            Kind::Bore,
+            words.value(Measure::bore(pipe.bore())),
+        );
         same(Key::SCHEDULE_MASS, Kind::Mass, words.value(line.mass));
         same(
             Key::SCHEDULE_MASS_PER_LENGTH,
@@ -146,9 +160,18 @@ async fn check_schedule(page: &Page, words: Words, book: &Book, found: &Findings
         let least = words.value(Measure::bore(pipe.wall_min));
         assert!(wall.starts_with(&least), "wall {wall}, least {least}");
         let designation = table.cell(row, &head(words, Key::SCHEDULE_DESIGNATION, None));
-        assert!(flat(designation).contains(&flat(&pipe.designation)), "{designation}");
-        assert!(flat(designation).contains(&flat(&pipe.standard)), "{designation}");
-        assert_eq!(table.cell(row, &head(words, Key::SCHEDULE_RATING, None)), line.class);
+        assert!(
+            flat(designation).contains(&flat(&pipe.designation)),
+            "{designation}"
+        );
+        assert!(
+            flat(designation).contains(&flat(&pipe.standard)),
+            "{designation}"
+        );
+        assert_eq!(
+            table.cell(row, &head(words, Key::SCHEDULE_RATING, None)),
+            line.class
+        );
         let ordered = table.cell(row, &head(words, Key::SCHEDULE_ORDER, None));
         assert!(!line.orders.is_empty());
         for order in &line.orders {
@@ -158,10 +181,13 @@ async fn check_schedule(page: &Page, words: Words, book: &Book, found: &Findings
             ));
             let count = usize::try_from(order.pieces)?;
             let said = match order.kind {
-                workbook::schedule::SupplyKind::Bar => text::schedule_lengths(words, count, &piece),
-                workbook::schedule::SupplyKind::Coil => text::schedule_coils(words, count, &piece),
+                SupplyKind::Bar => text::schedule_lengths(words, count, &piece),
+                SupplyKind::Coil => text::schedule_coils(words, count, &piece),
             };
-            assert!(flat(ordered).contains(&flat(&said)), "{ordered} lacks {said}");
+            assert!(
+                flat(ordered).contains(&flat(&said)),
+                "{ordered} lacks {said}"
+            );
         }
         let walls = &line.walls;
         let same = |key: Key, kind: Kind, wanted: String| {
@@ -209,12 +235,21 @@ fn check_text(pages: &Pages, words: Words, book: &Book, found: &Findings) -> Res
         FigureKey::Loss,
         FigureKey::JetPower,
     ] {
-        let figure = found.working(key).map_err(|gap| format!("{key:?}: {gap:?}"))?;
+        let figure = found
+            .working(key)
+            .map_err(|gap| format!("{key:?}: {gap:?}"))?;
         let row = format!("{} {}", about.figure_name(key), words.figure(figure.result));
         pages.holds("nozzles", &row);
     }
-    let jets = found.resolved.jets.as_ref().map_err(|gap| format!("{gap:?}"))?;
-    pages.holds("nozzles", &format!("{} × {}", jets.count, words.name(jets.kind)));
+    let jets = found
+        .resolved
+        .jets
+        .as_ref()
+        .map_err(|gap| format!("{gap:?}"))?;
+    pages.holds(
+        "nozzles",
+        &format!("{} × {}", jets.count, words.name(jets.kind)),
+    );
     for assumption in found.assumptions() {
         pages.holds("assumption", &about.assumption(assumption));
     }
@@ -229,16 +264,26 @@ fn check_text(pages: &Pages, words: Words, book: &Book, found: &Findings) -> Res
     let first = &pages.0[0];
     let place = |text: &str| first.find(&flat(text));
     let (open, table) = (place(&surge), place(words.say(Key::SCHEDULE_DESIGNATION)));
-    assert!(open.is_some() && (table.is_none() || open < table), "{open:?} {table:?}");
+    assert!(
+        open.is_some() && (table.is_none() || open < table),
+        "{open:?} {table:?}"
+    );
     let verdict = text::verdict_book(words, words.verdict(found.judged.verdict));
     assert_eq!(pages.holds("verdict", &verdict), 0);
-    assert_eq!(pages.holds("not for building", words.say(Key::PRINT_NOT_FOR_BUILDING)), 0);
+    assert_eq!(
+        pages.holds("not for building", words.say(Key::PRINT_NOT_FOR_BUILDING)),
+        0
+    );
     for stretch in &found.judged.stretches {
         let said = about.stretch_verdict(stretch, &found.resolved);
         assert_eq!(pages.holds("verdict of a stretch", &said), 0);
     }
     assert_eq!(pages.holds("invented", words.say(Key::PRINT_INVENTED)), 0);
-    for key in [Key::PRINT_REVIEWER, Key::PRINT_LICENCE, Key::PRINT_SIGNATURE] {
+    for key in [
+        Key::PRINT_REVIEWER,
+        Key::PRINT_LICENCE,
+        Key::PRINT_SIGNATURE,
+    ] {
         pages.holds("place of the reviewer", words.say(key));
     }
     Ok(())
@@ -258,7 +303,7 @@ async fn check_print(page: &Page, words: Words, paper: Paper, name: &str) -> Res
     let book = demo::demo("any");
     let found = evaluate(&book);
     let (choice, size) = match paper {
-        Paper::A4 => ("paper-a4", "595"),
+        Paper::A4 => ("paper-a4", "594.96 x 841.92"),
         Paper::Letter => ("paper-letter", "612 x 792"),
     };
     page.tap_choice(choice).await?;
@@ -363,8 +408,11 @@ fn the_print_speaks_spanish_through_and_through() {
         page.open_demo().await?;
         page.sheet("stream").await?;
         page.tap_choice("language-es").await?;
-        page.until("the page is Spanish", "return document.documentElement.lang === 'es';")
-            .await?;
+        page.until(
+            "the page is Spanish",
+            "return document.documentElement.lang === 'es';",
+        )
+        .await?;
         page.sheet("print").await?;
         let words = Words::new(Language::Spanish, UnitSystem::Metric);
         let english = Words::new(Language::English, UnitSystem::Metric);
@@ -375,11 +423,18 @@ fn the_print_speaks_spanish_through_and_through() {
         assert!(heads.len() > 30, "{heads:?}");
         for key in HEADINGS {
             pages.holds("heading", words.say(key));
-            assert!(heads.iter().any(|head| head == words.say(key)), "{}", words.say(key));
+            assert!(
+                heads.iter().any(|head| head == words.say(key)),
+                "{}",
+                words.say(key)
+            );
         }
         for key in COLUMNS {
             let said = words.say(key);
-            assert!(heads.iter().any(|head| head.starts_with(said)), "{said} in {heads:?}");
+            assert!(
+                heads.iter().any(|head| head.starts_with(said)),
+                "{said} in {heads:?}"
+            );
             pages.holds("head of a column", said);
         }
         for key in HEADINGS.into_iter().chain(COLUMNS) {
@@ -395,7 +450,10 @@ fn the_print_speaks_spanish_through_and_through() {
             );
         }
         let language: Value = page
-            .script("return document.querySelector('[data-test=print-sheet]').lang;", vec![])
+            .script(
+                "return document.querySelector('[data-test=print-sheet]').lang;",
+                vec![],
+            )
             .await?;
         assert_eq!(language, "es");
         Ok(())
