@@ -63,7 +63,6 @@ pub fn App() -> impl IntoView {
             }>
                 {say(Key::PAGE_SKIP)}
             </a>
-            <h1 class="visually-hidden">{say(Key::APP_NAME)}</h1>
             <TitleBlock/>
             <div class="notices">
                 <Banners/>

@@ -60,6 +60,7 @@ pub fn TitleBlock() -> impl IntoView {
     let trouble = move || matches!(state.saved.get(), Saved::Not(_));
     view! {
         <header class="titleblock">
+            <h1 class="visually-hidden">{move || state.words.get().say(Key::APP_NAME)}</h1>
             <div class="titleblock-site">
                 <button
                     type="button"
