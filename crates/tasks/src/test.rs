@@ -120,7 +120,16 @@ fn lint(board: &mut Board, kit: &Kit) {
 fn native(board: &mut Board) {
     board.tests(
         "native",
-        cargo().args(["test", "--no-fail-fast"]),
+        // The page's pure modules too; what needs a browser comes after.
+        cargo().args([
+            "test",
+            "--no-fail-fast",
+            "--workspace",
+            "--exclude",
+            "walkthrough",
+            "--exclude",
+            "wasm-bits",
+        ]),
         40 * MINUTE,
     );
 }

@@ -65,29 +65,34 @@ pub enum RatingCopy {
         seen: bool,
     },
     /// By the stress in a steel wall.
-    Stress {
-        /// Grade.
-        grade: String,
-        /// Yield strength, Pa.
-        yield_pa: Cited,
-        /// Tensile strength, Pa.
-        tensile_pa: Cited,
-        /// Shares of strength for lasting pressure.
-        normal: SharesCopy,
-        /// Shares of strength in surge.
-        transient: SharesCopy,
-        /// Shares of strength in the site test.
-        test: SharesCopy,
-        /// Joint factor.
-        joint_share: Cited,
-        /// Corrosion allowance, m.
-        corrosion_m: Cited,
-        /// Mill tolerance, a share of the wall.
-        mill_tolerance_share: Cited,
-        /// Depth of thread, m.
-        #[serde(default, skip_serializing_if = "Option::is_none")]
-        thread_depth_m: Option<Cited>,
-    },
+    Stress(Box<StressCopy>),
+}
+
+/// What rates a steel wall by stress.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields)]
+pub struct StressCopy {
+    /// Grade.
+    pub grade: String,
+    /// Yield strength, Pa.
+    pub yield_pa: Cited,
+    /// Tensile strength, Pa.
+    pub tensile_pa: Cited,
+    /// Shares of strength for lasting pressure.
+    pub normal: SharesCopy,
+    /// Shares of strength in surge.
+    pub transient: SharesCopy,
+    /// Shares of strength in the site test.
+    pub test: SharesCopy,
+    /// Joint factor.
+    pub joint_share: Cited,
+    /// Corrosion allowance, m.
+    pub corrosion_m: Cited,
+    /// Mill tolerance, a share of the wall.
+    pub mill_tolerance_share: Cited,
+    /// Depth of thread, m.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub thread_depth_m: Option<Cited>,
 }
 
 /// Shares of a steel's strength.
@@ -272,7 +277,7 @@ impl PipeCopy {
                 source: c.source.clone(),
                 seen: seen(c.attested),
             },
-            Rating::Stress(s) => RatingCopy::Stress {
+            Rating::Stress(s) => RatingCopy::Stress(Box::new(StressCopy {
                 grade: s.grade.clone(),
                 yield_pa: cite(&s.yield_strength, pa),
                 tensile_pa: cite(&s.tensile_strength, pa),
@@ -283,7 +288,7 @@ impl PipeCopy {
                 corrosion_m: cite(&s.corrosion, metres),
                 mill_tolerance_share: cite(&s.mill_tolerance, |x| x),
                 thread_depth_m: s.thread_depth.as_ref().map(|t| cite(t, metres)),
-            },
+            })),
         };
         PipeCopy {
             id: pipe.id.clone(),
@@ -356,28 +361,17 @@ impl PipeCopy {
                 source: source.clone(),
                 attested: attested(*seen),
             }),
-            RatingCopy::Stress {
-                grade,
-                yield_pa,
-                tensile_pa,
-                normal,
-                transient,
-                test,
-                joint_share,
-                corrosion_m,
-                mill_tolerance_share,
-                thread_depth_m,
-            } => Rating::Stress(Box::new(SteelRating {
-                grade: grade.clone(),
-                yield_strength: uncite(yield_pa, pressure),
-                tensile_strength: uncite(tensile_pa, pressure),
-                normal: unshares(normal),
-                transient: unshares(transient),
-                test: unshares(test),
-                joint_factor: uncite(joint_share, |x| x),
-                corrosion: uncite(corrosion_m, length),
-                mill_tolerance: uncite(mill_tolerance_share, |x| x),
-                thread_depth: thread_depth_m.as_ref().map(|t| uncite(t, length)),
+            RatingCopy::Stress(s) => Rating::Stress(Box::new(SteelRating {
+                grade: s.grade.clone(),
+                yield_strength: uncite(&s.yield_pa, pressure),
+                tensile_strength: uncite(&s.tensile_pa, pressure),
+                normal: unshares(&s.normal),
+                transient: unshares(&s.transient),
+                test: unshares(&s.test),
+                joint_factor: uncite(&s.joint_share, |x| x),
+                corrosion: uncite(&s.corrosion_m, length),
+                mill_tolerance: uncite(&s.mill_tolerance_share, |x| x),
+                thread_depth: s.thread_depth_m.as_ref().map(|t| uncite(t, length)),
             })),
         };
         let pipe = Pipe {
@@ -484,29 +478,23 @@ impl PipeCopy {
                 within("pressure_pa", *pressure_pa, 1.0, 1e9)?;
                 within("at_degc", *at_degc, -100.0, 500.0)?;
             }
-            RatingCopy::Stress {
-                yield_pa,
-                tensile_pa,
-                normal,
-                transient,
-                test,
-                joint_share,
-                corrosion_m,
-                mill_tolerance_share,
-                thread_depth_m,
-                ..
-            } => {
-                within("yield_pa", yield_pa.value, 1e6, 1e11)?;
-                within("tensile_pa", tensile_pa.value, 1e6, 1e11)?;
-                for s in [normal, transient, test] {
-                    within("of_yield", s.of_yield, 0.01, 1.0)?;
-                    within("of_tensile", s.of_tensile.unwrap_or(1.0), 0.01, 1.0)?;
+            RatingCopy::Stress(s) => {
+                within("yield_pa", s.yield_pa.value, 1e6, 1e11)?;
+                within("tensile_pa", s.tensile_pa.value, 1e6, 1e11)?;
+                for share in [&s.normal, &s.transient, &s.test] {
+                    within("of_yield", share.of_yield, 0.01, 1.0)?;
+                    within("of_tensile", share.of_tensile.unwrap_or(1.0), 0.01, 1.0)?;
                 }
-                within("joint_share", joint_share.value, 0.01, 1.0)?;
-                within("corrosion_m", corrosion_m.value, 0.0, 1.0)?;
-                within("mill_tolerance_share", mill_tolerance_share.value, 0.0, 0.9)?;
-                if let Some(t) = thread_depth_m {
-                    within("thread_depth_m", t.value, 0.0, 1.0)?;
+                within("joint_share", s.joint_share.value, 0.01, 1.0)?;
+                within("corrosion_m", s.corrosion_m.value, 0.0, 1.0)?;
+                within(
+                    "mill_tolerance_share",
+                    s.mill_tolerance_share.value,
+                    0.0,
+                    0.9,
+                )?;
+                if let Some(depth) = &s.thread_depth_m {
+                    within("thread_depth_m", depth.value, 0.0, 1.0)?;
                 }
             }
         }

@@ -1,5 +1,6 @@
 //! Laws every book obeys, shown on the invented demo book and on altered
 //! copies of it.
+#![allow(clippy::unwrap_used, reason = "a helper of tests fails as a test does")]
 
 use proptest::prelude::*;
 use workbook::demo::demo;

@@ -4,10 +4,6 @@
 //! timed in turns does. Each ratio is printed with its target where there is
 //! one. Nothing here fails: a benchmark informs.
 
-#![expect(
-    clippy::disallowed_methods,
-    reason = "the platform's own logarithm is what the friction kernel is measured against"
-)]
 #![expect(clippy::print_stdout, reason = "a benchmark prints")]
 
 use hydraulics::friction::colebrook_factors;

@@ -2,6 +2,7 @@
 //!
 //! The figures compared here are our own output of the day the file was
 //! frozen: change detectors, no evidence that the figures are right.
+#![allow(clippy::panic, reason = "a helper of tests fails as a test does")]
 
 use workbook::format;
 use workbook::verdict::Verdict;
