@@ -73,7 +73,10 @@ pub struct Steady {
     pub stretches: Vec<(Id, Figure<RunLoss>)>,
     /// What each fitting loses.
     pub fittings: Vec<(Id, Figure<FittingLoss>)>,
-    /// The lowest pressure.
+    /// The grade line at the same flow from the lowest forebay level, where
+    /// one is entered: what the lowest pressures are read from.
+    pub low: Figure<Grade>,
+    /// The lowest pressure, from the lowest forebay level.
     pub lowest: Figure<Lowest>,
     /// Lengths below atmospheric pressure.
     pub suction: Figure<Vec<SuctionStretch>>,
@@ -155,14 +158,14 @@ pub fn steady(found: &Resolved) -> Steady {
             (s.id, run)
         })
         .collect();
-    // Of a line that cannot pass the flow, the grade line is arithmetic only.
-    let running = match &solved {
+    let low = match &solved {
+        // Of a line that cannot pass the flow, the grade line is arithmetic only.
         Err(gap @ Gap::Wrong(Trouble::Line(LineError::FlowTooGreat { .. }))) => Err(gap.clone()),
-        _ => grade.clone(),
+        _ => low_grade(found, &line, &grade),
     };
-    let lowest = running.clone_gap().and_then(lowest);
-    let suction = running.clone().map(|g| g.below_atmosphere());
-    let vapour = vapour(found, &running);
+    let lowest = low.clone_gap().and_then(lowest);
+    let suction = low.clone_gap().map(Grade::below_atmosphere);
+    let vapour = vapour(found, &low);
     Steady {
         flow,
         grade,
@@ -172,6 +175,7 @@ pub fn steady(found: &Resolved) -> Steady {
         loss_share,
         stretches,
         fittings,
+        low,
         lowest,
         suction,
         vapour,
@@ -476,6 +480,18 @@ fn branch_loss(flow: &Figure<VolumeRate>, branch: &Figure<Branch>) -> Figure<Hea
     LossCoefficient::new(branch.k)
         .map(|k| k.head(velocity, standard_gravity()))
         .map_err(|_| Gap::needs(Field::BranchK))
+}
+
+fn low_grade(found: &Resolved, line: &Figure<Line>, grade: &Figure<Grade>) -> Figure<Grade> {
+    let grade = grade.clone_gap()?;
+    let Some(level) = found.forebay.lowest.clone()? else {
+        return Ok(grade.clone());
+    };
+    let mut spec = line.clone_gap()?.spec().clone();
+    spec.forebay = level;
+    Line::new(spec)
+        .and_then(|line| line.grade(grade.flow))
+        .map_err(|why| Gap::Wrong(Trouble::Line(why)))
 }
 
 fn lowest(grade: &Grade) -> Figure<Lowest> {

@@ -287,21 +287,14 @@ fn collapse(found: &Resolved, stretch: &Stretch) -> Figure<CollapseFigures> {
 }
 
 fn lowest(found: &Resolved, steady: &Steady, index: usize) -> Figure<PressureAt> {
-    steady.lowest.clone()?;
-    let water = found.cold_water.clone()?;
-    let normal = found.forebay.normal.clone()?;
-    let drop = match found.forebay.lowest.clone()? {
-        Some(low) => (normal - low).pressure(water.density(), standard_gravity()),
-        None => GaugePressure::from_pa(0.0),
-    };
     steady
-        .grade
+        .low
         .clone_gap()?
         .nodes
         .iter()
         .filter(|n| n.run == index)
         .map(|n| PressureAt {
-            pressure: n.pressure - drop,
+            pressure: n.pressure,
             at: n.chainage,
         })
         .reduce(|low, other| {

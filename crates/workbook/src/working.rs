@@ -472,7 +472,11 @@ impl Findings {
 
     fn lowest_working(&self) -> Figure<Working> {
         let lowest = self.steady.lowest.clone()?;
-        let grade = self.steady.grade.clone_gap()?;
+        let grade = self.steady.low.clone_gap()?;
+        let forebay = match self.resolved.forebay.lowest.clone()? {
+            Some(level) => level,
+            None => self.resolved.forebay.normal.clone()?,
+        };
         let node = grade
             .nodes
             .get(grade.lowest)
@@ -481,11 +485,7 @@ impl Findings {
             formula: "p = ρ g (z_forebay − h − V²/(2 g) − z): grade line above the pipe",
             sources: vec!["energy equation (Bernoulli with losses)".to_owned()],
             inputs: vec![
-                input(
-                    "z_forebay",
-                    Term::ForebayLevel,
-                    self.resolved.forebay.normal.clone()?,
-                ),
+                input("z_forebay", Term::ForebayLevel, forebay),
                 input("z", Term::PipeLevel, node.level),
                 input("V", Term::Velocity, node.velocity),
                 self.water_density()?,
