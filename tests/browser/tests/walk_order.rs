@@ -283,6 +283,14 @@ fn a_first_book_is_entered_by_touch_and_keyboard() {
             agrees(page, &found, words, key).await?;
         }
         page.screenshot("order-jets-360").await?;
+        page.sheet("line").await?;
+        for key in [
+            FigureKey::GrossHead,
+            FigureKey::PipeLength,
+            FigureKey::Lowest,
+        ] {
+            agrees(page, &found, words, key).await?;
+        }
         // All is entered: the line that asked for more is gone.
         page.until(
             "nothing more is asked for",

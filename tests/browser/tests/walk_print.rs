@@ -208,6 +208,11 @@ async fn check_schedule(page: &Page, words: Words, book: &Book, found: &Findings
             Kind::Share,
             shown(words, &walls.share.clone().map(Measure::share)),
         );
+        same(
+            Key::FIGURE_LOWEST_PRESSURE,
+            Kind::Pressure,
+            shown(words, &walls.lowest.clone().map(|l| l.pressure)),
+        );
     }
     let totals = table.rows.last().ok_or("no totals")?.join(" ");
     for total in [shown(words, &schedule.length), shown(words, &schedule.mass)] {
@@ -250,6 +255,12 @@ fn check_text(pages: &Pages, words: Words, book: &Book, found: &Findings) -> Res
         "nozzles",
         &format!("{} × {}", jets.count, words.name(jets.kind)),
     );
+    // The drawing and the table of pressures name the same lowest pressure.
+    let lowest = found
+        .working(FigureKey::Lowest)
+        .map_err(|gap| format!("{gap:?}"))?;
+    let lowest = text::page_lowest_of(words, &words.figure(lowest.result));
+    pages.holds("lowest pressure in the drawing", &lowest);
     for assumption in found.assumptions() {
         pages.holds("assumption", &about.assumption(assumption));
     }

@@ -177,7 +177,12 @@ const LOOK: &str = "
       const top = document.elementFromPoint(x, y);
       return top && (drawn.contains(top) || top.contains(drawn));
     });
-    if (!seen) trouble += ' is hidden with the focus: ' + one.outerHTML.slice(0, 160);
+    if (!seen) {
+      const over = document.elementFromPoint(box.x + box.width / 2, box.y + 10);
+      trouble += ' is hidden with the focus at ' + Math.round(box.y) + ' px under '
+        + (over?.closest('[class]')?.outerHTML.slice(0, 60) ?? 'the edge') + ': '
+        + one.outerHTML.slice(0, 160);
+    }
     return [one.dataset.walk ?? '', trouble];";
 
 async fn tab_through(page: &Page, sheet: &str) -> Result<Vec<String>> {
