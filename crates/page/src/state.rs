@@ -234,6 +234,8 @@ impl State {
         self.stretch.set(None);
         self.station.set(None);
         self.saved.set(Saved::Nothing);
+        // What was said was said of the other book.
+        self.notice.set(None);
         self.history.set(History::new(book));
         self.ready.set(true);
     }
