@@ -52,9 +52,11 @@ pub fn App() -> impl IntoView {
             class="app"
             data-test="app"
             data-ready=move || if state.ready.get() { "yes" } else { "no" }
-            on:focusin=move |_| state.writing.set(place::is_writing())
+            on:focusin=move |_| state.writing.set(place::is_writing() || place::is_keyed())
             on:focusout=move |_| {
-                frame::after(GROW_MS, move || state.writing.set(place::is_writing()));
+                frame::after(GROW_MS, move || {
+                    state.writing.set(place::is_writing() || place::is_keyed());
+                });
             }
         >
             <a class="skip-link" href="#sheet" on:click=|e| {

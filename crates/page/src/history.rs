@@ -67,6 +67,19 @@ impl History {
             return false;
         }
         let joined = touch != Touch::Act && self.open.as_ref() == Some(&touch);
+        if joined
+            && self
+                .past
+                .last()
+                .is_some_and(|p| same_but_revision(p, &book))
+        {
+            // Typed, and taken back by hand: no step is left to undo.
+            self.past.pop();
+            self.future.clear();
+            self.open = None;
+            self.now = Arc::new(book);
+            return true;
+        }
         if !joined {
             book.revision += 1;
             self.past.push(Arc::clone(&self.now));
@@ -126,6 +139,13 @@ impl History {
     }
 }
 
+/// Whether two states say the same, whichever came later.
+fn same_but_revision(a: &Book, b: &Book) -> bool {
+    let mut a = a.clone();
+    a.revision = b.revision;
+    a == *b
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -179,6 +199,22 @@ mod tests {
         h.rename("new", "copy");
         h.undo();
         assert_eq!(h.now().id, "new");
+    }
+
+    #[test]
+    fn typing_taken_back_by_hand_leaves_no_step() {
+        let mut h = History::new(Book::new("k"));
+        assert!(type_flow(&mut h, "3"));
+        assert!(type_flow(&mut h, "38"));
+        assert!(h.edit(Touch::Field(Field::DesignFlow), |b| {
+            b.stream.design_flow_m3_s = Entry::default();
+        }));
+        assert!(!h.can_undo());
+        assert!(h.now().stream.design_flow_m3_s.is_empty());
+        // The next key stroke is a step again.
+        assert!(type_flow(&mut h, "4"));
+        assert!(h.undo());
+        assert!(h.now().stream.design_flow_m3_s.is_empty());
     }
 
     proptest! {

@@ -55,7 +55,7 @@ impl State {
     /// Has the book as it stands written to the store.
     pub fn keep(self) {
         let book = self.book.get_untracked();
-        settings::set(settings::BOOK, &book.id);
+        note_open(&book.id);
         self.saved.set(Saved::Saving);
         self.keeper.update_value(|k| {
             k.queue.push(Write::Keep {
@@ -161,11 +161,7 @@ impl State {
         leptos::task::spawn_local(async move {
             match storage::list().await {
                 Ok(records) => {
-                    let last = settings::get(settings::BOOK);
-                    let found = records
-                        .iter()
-                        .find(|r| Some(&r.id) == last.as_ref())
-                        .or(records.first());
+                    let found = to_open(&records, settings::get(settings::BOOK).as_deref());
                     if let Some(record) = found {
                         self.open_record(record);
                     }
@@ -197,6 +193,23 @@ impl State {
     }
 }
 
+/// Notes that this book is the one open, and when.
+pub fn note_open(id: &str) {
+    settings::set(settings::BOOK, &format!("{} {id}", clock::now_iso()));
+}
+
+/// The book to open at the start: the one last open, as noted, unless another
+/// was changed after that. The note is kept less strictly than the books are:
+/// a browser killed in the middle may bring back an old one.
+fn to_open<'a>(records: &'a [Record], note: Option<&str>) -> Option<&'a Record> {
+    let newest = records.iter().max_by(|a, b| a.changed.cmp(&b.changed))?;
+    let noted = note.and_then(|n| n.split_once(' ')).and_then(|(when, id)| {
+        let record = records.iter().find(|r| r.id == id)?;
+        (when >= newest.changed.as_str()).then_some(record)
+    });
+    Some(noted.unwrap_or(newest))
+}
+
 /// What a trouble with the store means.
 #[must_use]
 pub fn store_trouble(words: Words, why: &StoreTrouble) -> String {
@@ -204,5 +217,35 @@ pub fn store_trouble(words: Words, why: &StoreTrouble) -> String {
         StoreTrouble::Unavailable => words.say(Key::STATE_NO_STORAGE).to_owned(),
         StoreTrouble::Full => words.say(Key::STATE_FULL).to_owned(),
         StoreTrouble::Other(why) => text::state_not_saved_why(words, why),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn record(id: &str, changed: &str) -> Record {
+        Record {
+            id: id.to_owned(),
+            json: String::new(),
+            changed: changed.to_owned(),
+            name: String::new(),
+            stamp: String::new(),
+        }
+    }
+
+    #[test]
+    fn the_newest_edit_wins_over_a_stale_note() {
+        let books = [
+            record("a", "2026-01-02T10:00:00Z"),
+            record("b", "2026-01-02T12:00:00Z"),
+        ];
+        let opened = |note| to_open(&books, note).map(|r| r.id.as_str());
+        assert_eq!(opened(Some("2026-01-02T13:00:00Z a")), Some("a"));
+        assert_eq!(opened(Some("2026-01-02T11:00:00Z a")), Some("b"));
+        assert_eq!(opened(Some("2026-01-02T13:00:00Z gone")), Some("b"));
+        assert_eq!(opened(Some("garbage")), Some("b"));
+        assert_eq!(opened(None), Some("b"));
+        assert_eq!(to_open(&[], None), None);
     }
 }

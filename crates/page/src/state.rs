@@ -230,7 +230,7 @@ impl State {
     /// Opens another book in place of this one; what of this one is not
     /// written yet still waits in the queue.
     pub fn open(self, book: Book) {
-        settings::set(settings::BOOK, &book.id);
+        crate::keeping::note_open(&book.id);
         self.stretch.set(None);
         self.station.set(None);
         self.saved.set(Saved::Nothing);
@@ -242,12 +242,17 @@ impl State {
 
     /// Gives the book another key and name: another window wrote to the old.
     pub(crate) fn rename(self, id: &str, name: &str) {
-        settings::set(settings::BOOK, id);
+        crate::keeping::note_open(id);
         self.history.update(|h| h.rename(id, name));
     }
 
     /// Says something once.
     pub fn tell(self, text: String, trouble: bool) {
+        // A trouble said under an open dialog would not be seen.
+        if trouble {
+            place::close_dialogs();
+            place::to_top();
+        }
         let notice = Notice { text, trouble };
         self.notice.set(Some(notice.clone()));
         if !trouble {
@@ -300,8 +305,14 @@ impl State {
     pub fn type_entry(self, field: Field, text: &str, unit: &str) {
         let mark = self.words.get_untracked().mark;
         self.edit(Touch::Field(field), |book| {
+            let usual = field.kind().default_unit(book.units).symbol;
             if let Some(entry) = book.entry_mut(field) {
-                *entry = Entry::typed(text, unit, field.kind(), mark);
+                // Emptied again, a field is as it was before anything was typed.
+                *entry = if text.is_empty() && unit == usual {
+                    Entry::default()
+                } else {
+                    Entry::typed(text, unit, field.kind(), mark)
+                };
             }
         });
     }

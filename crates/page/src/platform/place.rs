@@ -67,6 +67,16 @@ pub fn is_writing() -> bool {
     }
 }
 
+/// Whether the keyboard's focus stands in the sheet, shown as such: the
+/// drawing then makes room, so that nothing focused lies behind it.
+#[must_use]
+pub fn is_keyed() -> bool {
+    super::window()
+        .document()
+        .and_then(|d| d.query_selector("#sheet :focus-visible").ok().flatten())
+        .is_some()
+}
+
 /// Whether a key stroke goes to something that has its own undo: a text
 /// being written that is not one of the page's fields.
 #[must_use]
@@ -91,6 +101,17 @@ pub fn close_dialog(id: &str) {
     if let Some(dialog) = dialog(id)
         && dialog.open()
     {
+        dialog.close();
+    }
+}
+
+/// Closes whichever dialog is open.
+pub fn close_dialogs() {
+    let open = super::window()
+        .document()
+        .and_then(|d| d.query_selector("dialog[open]").ok().flatten())
+        .and_then(|e| e.dyn_into::<web_sys::HtmlDialogElement>().ok());
+    if let Some(dialog) = open {
         dialog.close();
     }
 }

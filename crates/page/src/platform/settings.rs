@@ -8,7 +8,7 @@ const PREFIX: &str = "fallwright.";
 pub const LANGUAGE: &str = "language";
 /// Theme of the page.
 pub const THEME: &str = "theme";
-/// Key of the book last open.
+/// The book last open: when, and its key.
 pub const BOOK: &str = "book";
 
 /// The setting of this name, if the browser kept one.
