@@ -91,6 +91,11 @@ async function show(what, detail) {
     return;
   }
   troubled = true;
+  // The page is dead: nothing of it may be reached behind the overlay.
+  const dead = document.querySelector(".app");
+  if (dead) {
+    dead.hidden = true;
+  }
   const overlay = document.getElementById("trouble");
   const wanted = (root.lang || navigator.language || "en").slice(0, 2);
   const said = [...overlay.querySelectorAll("[lang]")];

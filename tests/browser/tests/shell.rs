@@ -9,9 +9,10 @@ fn starts_and_keeps_to_itself() {
         page.viewport(360, 800).await?;
         page.goto("").await?;
         page.until_offline_ready().await?;
-        assert_eq!(
-            page.script("return document.title", vec![]).await?,
-            "Fallwright"
+        let title = page.script("return document.title", vec![]).await?;
+        assert!(
+            title.as_str().is_some_and(|t| t.ends_with("Fallwright")),
+            "{title}"
         );
         let requests = page.requests().await?;
         assert!(

@@ -224,6 +224,16 @@ fn a_first_book_is_entered_by_touch_and_keyboard() {
             .await?;
         let third = page.text("next").await?;
         assert_eq!(third, "Next: choose a pipe for stretch 1.");
+        // The keyboard put away, the drawing grows again: a tap before it has
+        // would land on what slides under the finger.
+        page.script("document.activeElement.blur();", vec![])
+            .await?;
+        page.until(
+            "the drawing stands again",
+            "return document.querySelector('.drawing') !== null
+               && document.querySelector('.drawing.is-shrunk') === null;",
+        )
+        .await?;
         page.tap_test("next").await?;
         page.find_test("sheet-pipe").await?;
         let chosen = choose_pipe(page).await?;
