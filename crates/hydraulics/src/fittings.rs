@@ -8,7 +8,7 @@
 //! Fixed values lie in small tables (`data/*.csv`) with their sources at the
 //! head; those that follow geometry are functions: [`sudden_contraction`],
 //! [`gradual_contraction`], [`sudden_expansion`], [`gradual_expansion`],
-//! [`smooth_bend`], [`mitre_bend`], [`valve`], [`TrashRack`].
+//! [`smooth_bend`], [`mitre_bend`], [`valve()`], [`TrashRack`].
 
 mod bend;
 mod fixed;

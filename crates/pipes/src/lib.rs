@@ -1,7 +1,7 @@
 //! The pipe catalogue: materials, published size tables as data files,
 //! temperature derating, and the user's own pipes.
 //!
-//! [`catalogue`] gives every pipe of the standard series; [`OwnPipe`] and
+//! [`catalogue()`] gives every pipe of the standard series; [`OwnPipe`] and
 //! [`plate_steel`] make a [`Pipe`] of the user's own. A [`Pipe`] stands on its
 //! own, so that a book can carry a copy. Every datum says where it comes from
 //! ([`Sourced`]) and whether that source was seen ([`Attested`]).
