@@ -24,7 +24,7 @@ pub struct Series {
 
 /// Edition of the catalogue. A test holds it to the data files: whoever changes
 /// a figure changes this too.
-const EDITION: &str = "2026-12-01";
+const EDITION: &str = "2026-12-01.2";
 
 /// Every pipe of the standard series.
 #[derive(Debug)]
@@ -135,7 +135,7 @@ mod tests {
 
     #[test]
     fn the_edition_changes_with_the_data() {
-        let known = ("2026-12-01", 16_142_118_821_090_757_623);
+        let known = ("2026-12-01.2", 2_283_766_130_529_138_061);
         assert_eq!(
             (EDITION, fingerprint()),
             known,

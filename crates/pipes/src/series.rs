@@ -29,7 +29,7 @@ const COLUMNS: [&str; 11] = [
 const PSI: f64 = 0.453_592_37 * 9.806_65 / (0.0254 * 0.0254);
 
 /// The data files, one per series, in catalogue order.
-pub(crate) const FILES: [File; 11] = [
+pub(crate) const FILES: [File; 12] = [
     File {
         name: "pe100_iso4427.csv",
         text: include_str!("../data/series/pe100_iso4427.csv"),
@@ -73,6 +73,10 @@ pub(crate) const FILES: [File; 11] = [
     File {
         name: "ductile_iron_k9.csv",
         text: include_str!("../data/series/ductile_iron_k9.csv"),
+    },
+    File {
+        name: "grp_iso23856.csv",
+        text: include_str!("../data/series/grp_iso23856.csv"),
     },
 ];
 

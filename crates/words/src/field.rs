@@ -58,7 +58,9 @@ fn keys(field: Field) -> (Key, Option<Key>) {
 fn own_keys(own: OwnField) -> (Key, Key) {
     match own {
         OwnField::OutsideDiameter => (Key::FIELD_OWN_OUTSIDE, Key::HINT_OWN_OUTSIDE),
+        OwnField::Bore => (Key::FIELD_OWN_BORE, Key::HINT_OWN_BORE),
         OwnField::Wall => (Key::FIELD_OWN_WALL, Key::HINT_OWN_WALL),
+        OwnField::Lining => (Key::FIELD_OWN_LINING, Key::HINT_OWN_LINING),
         OwnField::Rating => (Key::FIELD_OWN_RATING, Key::HINT_OWN_RATING),
         OwnField::RatingTemperature => (
             Key::FIELD_OWN_RATING_TEMPERATURE,
@@ -69,6 +71,7 @@ fn own_keys(own: OwnField) -> (Key, Key) {
         OwnField::JointFactor => (Key::FIELD_OWN_JOINT, Key::HINT_OWN_JOINT),
         OwnField::Corrosion => (Key::FIELD_OWN_CORROSION, Key::HINT_OWN_CORROSION),
         OwnField::MillTolerance => (Key::FIELD_OWN_MILL, Key::HINT_OWN_MILL),
+        OwnField::Thread => (Key::FIELD_OWN_THREAD, Key::HINT_OWN_THREAD),
         OwnField::RoughnessNew => (Key::FIELD_OWN_ROUGHNESS_NEW, Key::HINT_OWN_ROUGHNESS_NEW),
         OwnField::RoughnessAged => (Key::FIELD_OWN_ROUGHNESS_AGED, Key::HINT_OWN_ROUGHNESS_AGED),
         OwnField::ModulusShort => (Key::FIELD_OWN_MODULUS_SHORT, Key::HINT_OWN_MODULUS_SHORT),

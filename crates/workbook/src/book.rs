@@ -364,6 +364,17 @@ pub enum OwnRating {
     SteelStress,
 }
 
+/// Which diameter of a pipe of the user's own is given.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum OwnSizing {
+    /// The outside diameter, as tube is ordered.
+    #[default]
+    Outside,
+    /// The bore, as pipe rolled from plate is ordered.
+    Bore,
+}
+
 /// A pipe of the user's own.
 #[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields)]
@@ -383,7 +394,27 @@ pub struct OwnPipeEntry {
     /// How it is rated.
     #[serde(default)]
     pub rated: OwnRating,
-    /// Outside diameter, m.
+    /// Which diameter is given.
+    #[serde(default, skip_serializing_if = "is_outside")]
+    pub sized: OwnSizing,
+    /// Grade of steel by its name in the catalogue, whose strengths stand
+    /// where none are entered; blank for none.
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    pub grade: String,
+    /// Whether its ends are threaded, and the wall under the thread rates it.
+    #[serde(default, skip_serializing_if = "core::ops::Not::not")]
+    pub threaded: bool,
+    /// Bore, where that is given, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub bore_m: Entry,
+    /// Depth of its thread, m; where none is entered, the one usual for the
+    /// diameter.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub thread_m: Entry,
+    /// Thickness of its lining, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub lining_m: Entry,
+    /// Outside diameter, where that is given, m.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub outside_diameter_m: Entry,
     /// Smallest wall, m.
@@ -425,6 +456,14 @@ pub struct OwnPipeEntry {
     /// Supply length, m.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub supply_length_m: Entry,
+}
+
+#[expect(
+    clippy::trivially_copy_pass_by_ref,
+    reason = "the shape serde asks for"
+)]
+fn is_outside(sized: &OwnSizing) -> bool {
+    *sized == OwnSizing::Outside
 }
 
 /// Whether nozzle bores are solved for the design flow or given.

@@ -98,8 +98,12 @@ pub enum Field {
 pub enum OwnField {
     /// Outside diameter.
     OutsideDiameter,
+    /// Bore.
+    Bore,
     /// Smallest wall.
     Wall,
+    /// Thickness of the lining.
+    Lining,
     /// Pressure rating.
     Rating,
     /// Temperature the rating stands to.
@@ -114,6 +118,8 @@ pub enum OwnField {
     Corrosion,
     /// Mill tolerance.
     MillTolerance,
+    /// Depth of thread.
+    Thread,
     /// Roughness new.
     RoughnessNew,
     /// Roughness aged.
@@ -127,9 +133,11 @@ pub enum OwnField {
 }
 
 /// Every [`OwnField`], in the order they are asked for.
-pub const OWN_FIELDS: [OwnField; 14] = [
+pub const OWN_FIELDS: [OwnField; 17] = [
     OwnField::OutsideDiameter,
+    OwnField::Bore,
     OwnField::Wall,
+    OwnField::Lining,
     OwnField::Rating,
     OwnField::RatingTemperature,
     OwnField::Yield,
@@ -137,6 +145,7 @@ pub const OWN_FIELDS: [OwnField; 14] = [
     OwnField::JointFactor,
     OwnField::Corrosion,
     OwnField::MillTolerance,
+    OwnField::Thread,
     OwnField::RoughnessNew,
     OwnField::RoughnessAged,
     OwnField::ModulusShort,
@@ -272,7 +281,10 @@ impl Field {
             Field::ColdestWater => common(5.0),
             Field::FittingAngle(_) => common(90.0),
             Field::FittingRadius(_) => common(1.5),
-            Field::Own(_, OwnField::JointFactor) => common(0.8),
+            Field::Own(_, OwnField::JointFactor) => Some(Preset {
+                value: 0.85,
+                source: "ASME B31.3 Table 302.3.4, longitudinal weld not fully examined",
+            }),
             Field::Own(_, OwnField::Corrosion) => common(0.001),
             Field::Own(_, OwnField::MillTolerance) => Some(Preset {
                 value: 0.125,
@@ -287,7 +299,10 @@ impl OwnField {
     fn kind(self) -> Kind {
         match self {
             OwnField::OutsideDiameter
+            | OwnField::Bore
             | OwnField::Wall
+            | OwnField::Lining
+            | OwnField::Thread
             | OwnField::Corrosion
             | OwnField::RoughnessNew
             | OwnField::RoughnessAged => Kind::Bore,
@@ -304,13 +319,15 @@ impl OwnField {
 
     fn range(self) -> (f64, f64) {
         match self {
-            OwnField::OutsideDiameter => (0.005, 5.0),
+            OwnField::OutsideDiameter | OwnField::Bore => (0.005, 5.0),
             OwnField::Wall => (0.0002, 0.5),
             OwnField::Rating => (1e4, 1e8),
             OwnField::RatingTemperature => (0.0, 90.0),
             OwnField::Yield | OwnField::Tensile => (1e7, 2e9),
             OwnField::JointFactor => (0.3, 1.0),
             OwnField::Corrosion => (0.0, 0.02),
+            OwnField::Lining => (0.0, 0.1),
+            OwnField::Thread => (0.0002, 0.01),
             OwnField::MillTolerance => (0.0, 0.3),
             OwnField::RoughnessNew | OwnField::RoughnessAged => (0.0, 0.02),
             OwnField::ModulusShort | OwnField::ModulusLong => (1e7, 1e12),
@@ -371,7 +388,10 @@ macro_rules! find_entry {
             Field::Own(id, own) => {
                 $book.own_pipes.$iter().find(|p| p.id == id).map(|p| match own {
                     OwnField::OutsideDiameter => $($borrow)+ p.outside_diameter_m,
+                    OwnField::Bore => $($borrow)+ p.bore_m,
                     OwnField::Wall => $($borrow)+ p.wall_m,
+                    OwnField::Lining => $($borrow)+ p.lining_m,
+                    OwnField::Thread => $($borrow)+ p.thread_m,
                     OwnField::Rating => $($borrow)+ p.rating_pa,
                     OwnField::RatingTemperature => $($borrow)+ p.rating_degc,
                     OwnField::Yield => $($borrow)+ p.yield_pa,

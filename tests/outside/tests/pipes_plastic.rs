@@ -3,7 +3,9 @@
 #![expect(clippy::unwrap_used, reason = "the helpers of a test may fail it")]
 
 use pipes::{Attested, Pipe, catalogue};
+use uom::si::f64::ThermodynamicTemperature;
 use uom::si::length::{inch, millimeter};
+use uom::si::thermodynamic_temperature::degree_celsius;
 
 mod pipes_common;
 use pipes_common::{class, close, number, pipe, rows};
@@ -425,4 +427,46 @@ fn pe4710_walls_diameters_and_ratings() {
         }
     }
     assert_eq!(checked, 5);
+}
+
+/// The nominal stiffness is by definition E I / dm^3 with I = t^3 / 12 (EN
+/// 1796 and ISO 7685, from memory): every wall gives its class at least that,
+/// and, where the least wall of 3 mm does not govern, hardly more.
+#[test]
+fn grp_walls_give_the_class_its_stiffness_and_cannot_hold() {
+    let pipes: Vec<_> = catalogue()
+        .pipes
+        .iter()
+        .filter(|pipe| pipe.series == "grp-iso23856")
+        .collect();
+    assert_eq!(pipes.len(), 150);
+    for pipe in pipes {
+        let class: f64 = pipe
+            .designation
+            .rsplit(' ')
+            .next()
+            .unwrap()
+            .parse()
+            .unwrap();
+        let size: f64 = pipe.designation.split(' ').nth(2).unwrap().parse().unwrap();
+        let wall = pipe.wall_min.get::<millimeter>();
+        close(&pipe.id, pipe.bore().get::<millimeter>(), size, 1e-9);
+        let mean = pipe.outside_diameter.get::<millimeter>() - wall;
+        let modulus = pipe.modulus_short.value.get::<uom::si::pressure::pascal>();
+        let stiffness = modulus / 12.0 * (wall / mean).powi(3);
+        assert!(stiffness >= class, "{}: {stiffness} N/m2", pipe.id);
+        assert!(
+            wall <= 3.0 || stiffness < 1.1 * class,
+            "{}: {stiffness} N/m2",
+            pipe.id
+        );
+        assert_eq!(pipe.dimensions.attested, Attested::FromMemory);
+        let at = ThermodynamicTemperature::new::<degree_celsius>(20.0);
+        assert_eq!(
+            pipe.allowable(at).unwrap().attested,
+            Attested::FromMemory,
+            "{}",
+            pipe.id
+        );
+    }
 }

@@ -5,7 +5,7 @@ use crate::inputs::{NumberField, TextLook, choice, picker, text_field};
 use crate::state::{State, state};
 use leptos::prelude::*;
 use words::{Key, capital};
-use workbook::book::{Id, OwnMaterial, OwnPipeEntry, OwnRating};
+use workbook::book::{Id, OwnMaterial, OwnPipeEntry, OwnRating, OwnSizing};
 use workbook::field::{OWN_FIELDS, OwnField};
 use workbook::figure::{Place, Trouble};
 use workbook::{Book, Field};
@@ -36,17 +36,52 @@ fn find_mut(book: &mut Book, id: Id) -> Option<&mut OwnPipeEntry> {
     book.own_pipes.iter_mut().find(|p| p.id == id)
 }
 
-/// Whether a pipe rated so has a use for this figure.
-#[must_use]
-pub fn asks_for(rated: OwnRating, field: OwnField) -> bool {
-    match field {
-        OwnField::Rating | OwnField::RatingTemperature => rated == OwnRating::Pressure,
-        OwnField::Yield
-        | OwnField::Tensile
-        | OwnField::JointFactor
-        | OwnField::Corrosion
-        | OwnField::MillTolerance => rated == OwnRating::SteelStress,
-        _ => true,
+const SIZED: [(OwnSizing, &str, Key); 2] = [
+    (OwnSizing::Outside, "outside", Key::OPTION_SIZED_OUTSIDE),
+    (OwnSizing::Bore, "bore", Key::OPTION_SIZED_BORE),
+];
+
+const ENDS: [(bool, &str, Key); 2] = [
+    (false, "plain", Key::OPTION_ENDS_PLAIN),
+    (true, "threaded", Key::OPTION_ENDS_THREADED),
+];
+
+/// What decides which figures a pipe is asked for.
+#[derive(Debug, Clone, PartialEq, Eq, Default)]
+pub struct Asked {
+    /// How it is rated.
+    pub rated: OwnRating,
+    /// Which diameter is given.
+    pub sized: OwnSizing,
+    /// Whether its steel is of a grade the catalogue knows.
+    pub graded: bool,
+    /// Whether its ends are threaded.
+    pub threaded: bool,
+}
+
+impl Asked {
+    fn of(pipe: &OwnPipeEntry) -> Asked {
+        Asked {
+            rated: pipe.rated,
+            sized: pipe.sized,
+            graded: !pipe.grade.is_empty(),
+            threaded: pipe.threaded,
+        }
+    }
+
+    /// Whether such a pipe has a use for this figure.
+    #[must_use]
+    pub fn needs(&self, field: OwnField) -> bool {
+        let by_stress = self.rated == OwnRating::SteelStress;
+        match field {
+            OwnField::OutsideDiameter => self.sized == OwnSizing::Outside,
+            OwnField::Bore => self.sized == OwnSizing::Bore,
+            OwnField::Rating | OwnField::RatingTemperature => !by_stress,
+            OwnField::Yield | OwnField::Tensile => by_stress && !self.graded,
+            OwnField::JointFactor | OwnField::Corrosion | OwnField::MillTolerance => by_stress,
+            OwnField::Thread => by_stress && self.threaded,
+            _ => true,
+        }
     }
 }
 
@@ -84,10 +119,25 @@ pub fn OwnPipes() -> impl IntoView {
 
 fn one(state: State, id: Id) -> AnyView {
     let say = move |key: Key| move || state.words.get().say(key);
-    let rated = Memo::new(move |_| {
+    let asked = Memo::new(move |_| {
         state
             .book
-            .with(|b| find(b, id).map_or(OwnRating::Pressure, |p| p.rated))
+            .with(|b| find(b, id).map(Asked::of).unwrap_or_default())
+    });
+    let by_stress = Memo::new(move |_| asked.with(|a| a.rated == OwnRating::SteelStress));
+    let grade = Signal::derive(move || {
+        state
+            .book
+            .with(|b| find(b, id).map(|p| p.grade.clone()).unwrap_or_default())
+    });
+    let grades = Signal::derive(move || {
+        let known = pipes::catalogue().steel_grades().into_iter();
+        core::iter::once((
+            String::new(),
+            state.words.get().say(Key::OPTION_GRADE_OWN).to_owned(),
+        ))
+        .chain(known.map(|name| (name.to_owned(), name.to_owned())))
+        .collect()
     });
     let material = Signal::derive(move || {
         let now = state
@@ -113,10 +163,10 @@ fn one(state: State, id: Id) -> AnyView {
         Some(state.book.with(|b| words.about(b).trouble(&found)))
     };
     let fields = move || {
-        let rated = rated.get();
+        let asked = asked.get();
         OWN_FIELDS
             .into_iter()
-            .filter(|f| asks_for(rated, *f))
+            .filter(|f| asked.needs(*f))
             .map(|f| view! { <NumberField field=Field::Own(id, f)/> })
             .collect_view()
     };
@@ -177,6 +227,44 @@ fn one(state: State, id: Id) -> AnyView {
                             p.rated = value;
                         }
                     },
+                )}
+                <Show when=move || by_stress.get()>
+                    {picker(
+                        &format!("own-{id}-grade"),
+                        Signal::derive(move || say(Key::FIELD_OWN_GRADE)().to_owned()),
+                        grades,
+                        grade,
+                        move |value| {
+                            state
+                                .act(|b| {
+                                    if let Some(p) = find_mut(b, id) {
+                                        p.grade = value;
+                                    }
+                                });
+                        },
+                    )}
+                    {choice(
+                        &format!("own-{id}-ends"),
+                        Key::FIELD_OWN_ENDS,
+                        &ENDS,
+                        move |b| find(b, id).is_some_and(|p| p.threaded),
+                        move |b, value| {
+                            if let Some(p) = find_mut(b, id) {
+                                p.threaded = value;
+                            }
+                        },
+                    )}
+                </Show>
+                {choice(
+                    &format!("own-{id}-sized"),
+                    Key::FIELD_OWN_SIZED,
+                    &SIZED,
+                    move |b| find(b, id).map_or(OwnSizing::Outside, |p| p.sized),
+                    move |b, value| {
+                        if let Some(p) = find_mut(b, id) {
+                            p.sized = value;
+                        }
+                    },
                 )} {fields}
             </div>
             <p class="field-trouble" data-test=format!("own-{id}-trouble")>{trouble}</p>
@@ -218,15 +306,37 @@ fn one(state: State, id: Id) -> AnyView {
 mod tests {
     use super::*;
 
+    fn count(asked: &Asked) -> usize {
+        OWN_FIELDS.into_iter().filter(|f| asked.needs(*f)).count()
+    }
+
     #[test]
     fn each_way_of_rating_asks_for_its_own_figures() {
-        let asked = |rated| {
-            OWN_FIELDS
-                .into_iter()
-                .filter(|f| asks_for(rated, *f))
-                .count()
+        let by_pressure = Asked::default();
+        assert_eq!(count(&by_pressure), 10);
+        let by_stress = Asked {
+            rated: OwnRating::SteelStress,
+            ..Asked::default()
         };
-        assert_eq!(asked(OwnRating::Pressure), 9);
-        assert_eq!(asked(OwnRating::SteelStress), 12);
+        assert_eq!(count(&by_stress), 13);
+        let graded = Asked {
+            graded: true,
+            ..by_stress.clone()
+        };
+        assert_eq!(count(&graded), 11);
+        let threaded = Asked {
+            threaded: true,
+            ..by_stress.clone()
+        };
+        assert_eq!(count(&threaded), 14);
+    }
+
+    #[test]
+    fn one_diameter_is_asked_for() {
+        let by_bore = Asked {
+            sized: OwnSizing::Bore,
+            ..Asked::default()
+        };
+        assert!(by_bore.needs(OwnField::Bore) && !by_bore.needs(OwnField::OutsideDiameter));
     }
 }
