@@ -228,8 +228,19 @@ pub fn resolve(book: &Book) -> Resolved {
     let atmosphere = atmosphere(r);
     let limits = limits(r);
     // Entries no figure needs yet are still refused where they are wrong.
-    for field in [Field::TailLevel, Field::GaugeLevel, Field::ColdestWall] {
+    for field in [
+        Field::TailLevel,
+        Field::GaugeLevel,
+        Field::ColdestWall,
+        Field::KnownFall,
+        Field::BendRadius,
+        Field::JointDeflection,
+        Field::AirSlopeChange,
+    ] {
         let _ = r.optional(field);
+    }
+    for station in &book.line.stations {
+        let _ = r.optional(Field::StationTurn(station.id));
     }
     for i in 0..book.prices.pipes.len() {
         let _ = r.optional(Field::Price(i));

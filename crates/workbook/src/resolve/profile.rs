@@ -259,6 +259,7 @@ mod tests {
                 name: String::new(),
                 distance_m: Entry::typed(distance, "m", Kind::Distance, DecimalMark::Point),
                 level_m: Entry::typed(level, "m", Kind::Level, DecimalMark::Point),
+                ..Station::default()
             })
             .collect();
         book
