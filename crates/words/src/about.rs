@@ -117,7 +117,13 @@ impl About<'_> {
 
     fn place_of(self, field: Field) -> Option<String> {
         Some(match field {
-            Field::StationDistance(id) | Field::StationLevel(id) => self.station(id),
+            Field::StationDistance(id)
+            | Field::StationLevel(id)
+            | Field::StationForeSight(id)
+            | Field::StationBackSight(id)
+            | Field::StationStaffBack(id)
+            | Field::StationStaffFore(id)
+            | Field::StationTurn(id) => self.station(id),
             Field::StretchCover(id) => self.stretch(id),
             Field::FittingCount(id)
             | Field::FittingAngle(id)

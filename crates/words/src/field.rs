@@ -25,6 +25,13 @@ fn keys(field: Field) -> (Key, Option<Key>) {
         Field::WarmestWall => (Key::FIELD_WARMEST_WALL, Key::HINT_WARMEST_WALL),
         Field::StationDistance(_) => (Key::FIELD_STATION_DISTANCE, Key::HINT_STATION_DISTANCE),
         Field::StationLevel(_) => (Key::FIELD_STATION_LEVEL, Key::HINT_STATION_LEVEL),
+        Field::StationForeSight(_) => (Key::FIELD_STATION_FORE_SIGHT, Key::HINT_STATION_FORE_SIGHT),
+        Field::StationBackSight(_) => (Key::FIELD_STATION_BACK_SIGHT, Key::HINT_STATION_BACK_SIGHT),
+        Field::StationStaffBack(_) => (Key::FIELD_STATION_STAFF_BACK, Key::HINT_STATION_STAFF_BACK),
+        Field::StationStaffFore(_) => (Key::FIELD_STATION_STAFF_FORE, Key::HINT_STATION_STAFF_FORE),
+        Field::StationTurn(_) => (Key::FIELD_STATION_TURN, Key::HINT_STATION_TURN),
+        Field::KnownFall => (Key::FIELD_KNOWN_FALL, Key::HINT_KNOWN_FALL),
+        Field::BendRadius => (Key::FIELD_BEND_RADIUS, Key::HINT_BEND_RADIUS),
         Field::StretchCover(_) => (Key::FIELD_STRETCH_COVER, Key::HINT_STRETCH_COVER),
         Field::FittingCount(_) => (Key::FIELD_FITTING_COUNT, Key::HINT_FITTING_COUNT),
         Field::FittingAngle(_) => (Key::FIELD_FITTING_ANGLE, Key::HINT_FITTING_ANGLE),
@@ -51,6 +58,8 @@ fn keys(field: Field) -> (Key, Option<Key>) {
         Field::VelocityHigh => (Key::FIELD_VELOCITY_HIGH, Key::HINT_VELOCITY_HIGH),
         Field::CollapseSafety => (Key::FIELD_COLLAPSE_SAFETY, Key::HINT_COLLAPSE_SAFETY),
         Field::Spare => (Key::FIELD_SPARE, Key::HINT_SPARE),
+        Field::JointDeflection => (Key::FIELD_JOINT_DEFLECTION, Key::HINT_JOINT_DEFLECTION),
+        Field::AirSlopeChange => (Key::FIELD_AIR_SLOPE_CHANGE, Key::HINT_AIR_SLOPE_CHANGE),
     };
     (label, Some(hint))
 }

@@ -4,8 +4,8 @@ use crate::Words;
 use crate::text::Key;
 use pipes::Material;
 use workbook::book::{
-    BoreSizing, DistanceKind, FittingKind, Laying, NozzleKind, OwnMaterial, OwnRating, Paper,
-    Reckoning, RoughnessAge,
+    Approach, BendKind, BoreSizing, DistanceKind, FittingKind, Laying, NozzleKind, OwnMaterial,
+    OwnRating, Paper, Reckoning, RoughnessAge, SurveyWay,
 };
 use workbook::caution::Sheet;
 use workbook::units::{Kind, UnitSystem};
@@ -81,6 +81,20 @@ named! {
     DistanceKind {
         Slope => OPTION_SLOPE,
         Horizontal => OPTION_HORIZONTAL,
+    }
+    SurveyWay {
+        Level => OPTION_BY_LEVEL,
+        Angle => OPTION_BY_ANGLE,
+        Staff => OPTION_BY_STAFF,
+    }
+    BendKind {
+        Smooth => OPTION_BEND_SMOOTH,
+        Mitre => OPTION_BEND_MITRE,
+        Joints => OPTION_BEND_JOINTS,
+    }
+    Approach {
+        Lateral => OPTION_APPROACH_LATERAL,
+        Symmetrical => OPTION_APPROACH_SYMMETRICAL,
     }
     Reckoning {
         FromStart => OPTION_FROM_START,

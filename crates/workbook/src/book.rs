@@ -174,6 +174,51 @@ pub enum Reckoning {
     FromPrevious,
 }
 
+/// How the level of a station was found. Every way but the first reckons from
+/// the station before; the first station of a line always has a level.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum SurveyWay {
+    /// Its level is entered.
+    #[default]
+    Level,
+    /// By clinometer: fore sight from the station before, and a back sight
+    /// from here, if one was taken.
+    Angle,
+    /// By staff or water hose: readings at the station before and here.
+    Staff,
+}
+
+/// How the pipe is turned at a station.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum BendKind {
+    /// A smooth bend.
+    #[default]
+    Smooth,
+    /// A mitre bend.
+    Mitre,
+    /// The joints, or the pipe's own flexing, take it up: no bend piece.
+    Joints,
+}
+
+/// How the water comes to the intake.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum Approach {
+    /// From the side, or past a corner: the careful choice.
+    #[default]
+    Lateral,
+    /// Straight, and alike from both sides.
+    Symmetrical,
+}
+
+/// Whether a choice is the one taken where none was made: left out of the
+/// file.
+fn is_usual<T: Default + PartialEq>(choice: &T) -> bool {
+    *choice == T::default()
+}
+
 /// The surveyed line.
 #[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields, default)]
@@ -182,6 +227,20 @@ pub struct LineEntries {
     pub distance_kind: DistanceKind,
     /// Running from the start, or leg by leg.
     pub reckoning: Reckoning,
+    /// Known fall from the first station to the last, m: what the survey is
+    /// closed on.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub known_fall_m: Entry,
+    /// Whether the closing error is spread over the legs levelled by angle or
+    /// staff.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub spread_error: bool,
+    /// How the pipe is turned where a station does not say.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub bend: BendKind,
+    /// Radius over bore of the smooth bends that come from the survey.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub bend_radius_number: Entry,
     /// Stations from the forebay down, in the order of the line.
     pub stations: Vec<Station>,
     /// Stretches in the order of the line; each runs to where the next begins.
@@ -199,12 +258,40 @@ pub struct Station {
     /// A name, if it has one.
     #[serde(default, skip_serializing_if = "String::is_empty")]
     pub name: String,
+    /// How its level was found.
+    #[serde(default, skip_serializing_if = "is_usual")]
+    pub way: SurveyWay,
+    /// Kind of this station's distance, where it is not the line's. One that
+    /// differs from the line's is counted from the station before.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub distance_kind: Option<DistanceKind>,
     /// Distance, of the line's [`DistanceKind`] and [`Reckoning`], m.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub distance_m: Entry,
     /// Level, m.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub level_m: Entry,
+    /// Sight from the station before to this one: degree above the
+    /// horizontal, below zero downhill.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub fore_sight_deg: Entry,
+    /// Sight from this station back to the one before: degree above the
+    /// horizontal, so above zero where the line falls.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub back_sight_deg: Entry,
+    /// Staff or hose reading at the station before; of several steps the sum,
+    /// m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub staff_back_m: Entry,
+    /// Staff or hose reading here; of several steps the sum, m.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub staff_fore_m: Entry,
+    /// Turn of the line on the plan, degree; to the left below zero.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub plan_turn_deg: Entry,
+    /// How the pipe is turned here, where not as the line's.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub bend: Option<BendKind>,
 }
 
 /// How a stretch is laid.
@@ -572,6 +659,16 @@ pub struct Limits {
     /// Spare pipe to order, as a share of the length.
     #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub spare_share: Entry,
+    /// Deflection that joints or flexing take up without a bend piece, degree.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub joint_deflection_deg: Entry,
+    /// Steepening downhill at which air collects: fall per length of pipe
+    /// below the station less that above it.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub air_slope_change_share: Entry,
+    /// How the water comes to the intake: what submergence it needs.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub intake_approach: Approach,
 }
 
 /// Sheet size of the print.

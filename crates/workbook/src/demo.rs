@@ -57,6 +57,7 @@ pub fn demo(id: &str) -> Book {
             name: name.to_owned(),
             distance_m: typed(Field::StationDistance(id), distance, "m"),
             level_m: typed(Field::StationLevel(id), level, "m"),
+            ..Station::default()
         })
         .collect();
     let catalogue = pipes::catalogue();

@@ -88,7 +88,7 @@ impl Findings {
         };
         add(self.steady.solved.as_ref().err());
         add(self.steady.grade.as_ref().err());
-        for (_, loss) in &self.steady.fittings {
+        for (_, loss) in self.steady.fittings.iter().chain(&self.steady.bends) {
             add(loss.as_ref().err());
         }
         for (_, quick) in &self.transient.quick {

@@ -4,7 +4,7 @@
 //! Findings point at entries by [`Field`], and so does the page: one name,
 //! one field, one reason beside it.
 
-use crate::book::{Book, FittingKind, Id};
+use crate::book::{Book, FittingKind, Id, SurveyWay};
 use crate::entry::{Entry, EntryTrouble};
 use crate::units::Kind;
 
@@ -39,6 +39,20 @@ pub enum Field {
     StationDistance(Id),
     /// Level of a station.
     StationLevel(Id),
+    /// Sight from the station before to this one.
+    StationForeSight(Id),
+    /// Sight from this station back to the one before.
+    StationBackSight(Id),
+    /// Staff or hose reading at the station before.
+    StationStaffBack(Id),
+    /// Staff or hose reading at this station.
+    StationStaffFore(Id),
+    /// Turn of the line on the plan at a station.
+    StationTurn(Id),
+    /// Known fall from the first station to the last.
+    KnownFall,
+    /// Radius over bore of the bends that come from the survey.
+    BendRadius,
     /// Cover over a stretch.
     StretchCover(Id),
     /// How many of a fitting.
@@ -91,6 +105,10 @@ pub enum Field {
     CollapseSafety,
     /// Spare pipe to order.
     Spare,
+    /// Deflection taken up without a bend piece.
+    JointDeflection,
+    /// Steepening at which air collects.
+    AirSlopeChange,
 }
 
 /// A figure of a pipe of the user's own.
@@ -181,7 +199,14 @@ impl Field {
             Field::ColdestWater | Field::WarmestWater | Field::ColdestWall | Field::WarmestWall => {
                 Kind::Temperature
             }
+            Field::KnownFall => Kind::Head,
+            Field::StationForeSight(_)
+            | Field::StationBackSight(_)
+            | Field::StationTurn(_)
+            | Field::JointDeflection => Kind::Angle,
             Field::StationDistance(_)
+            | Field::StationStaffBack(_)
+            | Field::StationStaffFore(_)
             | Field::StretchCover(_)
             | Field::RackWidth(_)
             | Field::RackLength(_) => Kind::Distance,
@@ -189,6 +214,7 @@ impl Field {
             Field::FittingCount(_) | Field::JetCount => Kind::Number,
             Field::FittingAngle(_) => Kind::Angle,
             Field::FittingRadius(_)
+            | Field::BendRadius
             | Field::FittingK(_)
             | Field::JetVelocityCoefficient
             | Field::JetContraction
@@ -198,7 +224,8 @@ impl Field {
             | Field::RackClogged(_)
             | Field::TightMargin
             | Field::LossCap
-            | Field::Spare => Kind::Share,
+            | Field::Spare
+            | Field::AirSlopeChange => Kind::Share,
             Field::FittingRating(_) | Field::JetRating => Kind::Pressure,
             Field::JetBore | Field::BranchBore => Kind::Bore,
             Field::Price(_) => Kind::PricePerLength,
@@ -225,6 +252,15 @@ impl Field {
             Field::ColdestWater | Field::WarmestWater => (0.0, 60.0),
             Field::ColdestWall | Field::WarmestWall => (-40.0, 90.0),
             Field::StationDistance(_) => (0.0, 50_000.0),
+            Field::StationForeSight(_) | Field::StationBackSight(_) => (-90.0, 90.0),
+            // Sums of several steps, too.
+            Field::StationStaffBack(_) | Field::StationStaffFore(_) => (0.0, 500.0),
+            Field::StationTurn(_) => (-180.0, 180.0),
+            Field::KnownFall => (0.0, 5000.0),
+            // The range of the bend's equation, hydraulics::fittings.
+            Field::BendRadius => (0.5, 20.0),
+            Field::JointDeflection => (0.0, 45.0),
+            Field::AirSlopeChange => (0.005, 1.0),
             Field::StretchCover(_) => (0.0, 10.0),
             Field::FittingCount(_) => (1.0, 100.0),
             Field::FittingAngle(_) => (0.5, 180.0),
@@ -257,6 +293,25 @@ impl Field {
         matches!(self, Field::FittingCount(_) | Field::JetCount)
     }
 
+    /// The value of an entry of this name in its base unit, checked against
+    /// kind and range; none where nothing was entered.
+    ///
+    /// # Errors
+    /// [`EntryTrouble`] where what was entered cannot be used.
+    pub fn value_of(self, entry: &Entry) -> Result<Option<f64>, EntryTrouble> {
+        let Some(value) = entry.usable(self.kind())? else {
+            return Ok(None);
+        };
+        let (least, most) = self.range();
+        if !(least..=most).contains(&value) {
+            return Err(EntryTrouble::OutOfRange { value, least, most });
+        }
+        if self.whole() && value.fract() != 0.0 {
+            return Err(EntryTrouble::NotWhole { value });
+        }
+        Ok(Some(value))
+    }
+
     /// What stands in when the entry is left empty, if anything does.
     #[must_use]
     pub fn preset(self) -> Option<Preset> {
@@ -280,7 +335,11 @@ impl Field {
             Field::Spare => common(0.05),
             Field::ColdestWater => common(5.0),
             Field::FittingAngle(_) => common(90.0),
-            Field::FittingRadius(_) => common(1.5),
+            Field::FittingRadius(_) | Field::BendRadius => common(1.5),
+            // What a push-fit socket of middling bore takes; each maker gives
+            // its own.
+            Field::JointDeflection => common(3.0),
+            Field::AirSlopeChange => common(0.1),
             Field::Own(_, OwnField::JointFactor) => Some(Preset {
                 value: 0.85,
                 source: "ASME B31.3 Table 302.3.4, longitudinal weld not fully examined",
@@ -357,6 +416,21 @@ macro_rules! find_entry {
             Field::StationLevel(id) => {
                 $book.line.stations.$iter().find(|s| s.id == id).map(|s| $($borrow)+ s.level_m)
             }
+            Field::StationForeSight(id)
+            | Field::StationBackSight(id)
+            | Field::StationStaffBack(id)
+            | Field::StationStaffFore(id)
+            | Field::StationTurn(id) => {
+                $book.line.stations.$iter().find(|s| s.id == id).map(|s| match $field {
+                    Field::StationForeSight(_) => $($borrow)+ s.fore_sight_deg,
+                    Field::StationBackSight(_) => $($borrow)+ s.back_sight_deg,
+                    Field::StationStaffBack(_) => $($borrow)+ s.staff_back_m,
+                    Field::StationStaffFore(_) => $($borrow)+ s.staff_fore_m,
+                    _ => $($borrow)+ s.plan_turn_deg,
+                })
+            }
+            Field::KnownFall => Some($($borrow)+ $book.line.known_fall_m),
+            Field::BendRadius => Some($($borrow)+ $book.line.bend_radius_number),
             Field::StretchCover(id) => {
                 $book.line.stretches.$iter().find(|s| s.id == id).map(|s| $($borrow)+ s.cover_m)
             }
@@ -421,6 +495,8 @@ macro_rules! find_entry {
             Field::VelocityHigh => Some($($borrow)+ $book.limits.velocity_high_m_s),
             Field::CollapseSafety => Some($($borrow)+ $book.limits.collapse_safety_number),
             Field::Spare => Some($($borrow)+ $book.limits.spare_share),
+            Field::JointDeflection => Some($($borrow)+ $book.limits.joint_deflection_deg),
+            Field::AirSlopeChange => Some($($borrow)+ $book.limits.air_slope_change_share),
         }
     };
 }
@@ -444,20 +520,8 @@ impl Book {
     /// # Errors
     /// [`EntryTrouble`] where what was entered cannot be used.
     pub fn value(&self, field: Field) -> Result<Option<f64>, EntryTrouble> {
-        let Some(entry) = self.entry(field) else {
-            return Ok(None);
-        };
-        let Some(value) = entry.usable(field.kind())? else {
-            return Ok(None);
-        };
-        let (least, most) = field.range();
-        if !(least..=most).contains(&value) {
-            return Err(EntryTrouble::OutOfRange { value, least, most });
-        }
-        if field.whole() && value.fract() != 0.0 {
-            return Err(EntryTrouble::NotWhole { value });
-        }
-        Ok(Some(value))
+        self.entry(field)
+            .map_or(Ok(None), |entry| field.value_of(entry))
     }
 
     /// Every entry that the book has a place for, in the order of the sheets.
@@ -477,9 +541,17 @@ impl Book {
             Field::ColdestWall,
             Field::WarmestWall,
         ]);
-        for s in &self.line.stations {
-            all.extend([Field::StationDistance(s.id), Field::StationLevel(s.id)]);
+        let last = self.line.stations.len().saturating_sub(1);
+        for (i, s) in self.line.stations.iter().enumerate() {
+            // Nothing lies before the first station to sight from, and the
+            // line turns only between two legs.
+            let way = if i == 0 { SurveyWay::Level } else { s.way };
+            all.extend(station_fields(way, s.id));
+            if i > 0 && i < last {
+                all.push(Field::StationTurn(s.id));
+            }
         }
+        all.extend([Field::KnownFall, Field::BendRadius]);
         all.extend(
             self.line
                 .stretches
@@ -510,9 +582,27 @@ impl Book {
             Field::VelocityHigh,
             Field::CollapseSafety,
             Field::Spare,
+            Field::JointDeflection,
+            Field::AirSlopeChange,
         ]);
         all
     }
+}
+
+/// The entries that place a station levelled in this way.
+#[must_use]
+pub fn station_fields(way: SurveyWay, id: Id) -> Vec<Field> {
+    let mut fields = vec![Field::StationDistance(id)];
+    match way {
+        SurveyWay::Level => fields.push(Field::StationLevel(id)),
+        SurveyWay::Angle => {
+            fields.extend([Field::StationForeSight(id), Field::StationBackSight(id)]);
+        }
+        SurveyWay::Staff => {
+            fields.extend([Field::StationStaffBack(id), Field::StationStaffFore(id)]);
+        }
+    }
+    fields
 }
 
 /// The entries that decide the loss of a fitting of this kind.
@@ -550,6 +640,13 @@ mod tests {
 
     fn full_book() -> Book {
         let mut book = Book::new("test");
+        for (id, way) in (3..).zip([SurveyWay::Level, SurveyWay::Angle, SurveyWay::Staff]) {
+            book.line.stations.push(crate::book::Station {
+                id,
+                way,
+                ..Default::default()
+            });
+        }
         for (i, kind) in [
             FittingKind::Bend,
             FittingKind::GateValve,

@@ -68,6 +68,15 @@ pub enum Trouble {
         /// The later station.
         station: Id,
     },
+    /// A horizontal distance with a sight straight up or down: no fall
+    /// follows from them.
+    StationUpright {
+        /// The station.
+        station: Id,
+    },
+    /// The closing error is to be spread, but no leg since the last level
+    /// entered was levelled by angle or staff.
+    NothingToSpread,
     /// More stations than the book takes.
     TooManyStations {
         /// How many there are.
@@ -132,6 +141,13 @@ pub enum Trouble {
     Fitting {
         /// The fitting.
         fitting: Id,
+        /// Why.
+        why: FittingError,
+    },
+    /// The loss of a bend from the survey cannot be found.
+    Bend {
+        /// The station.
+        station: Id,
         /// Why.
         why: FittingError,
     },
@@ -204,7 +220,10 @@ impl Trouble {
             | Trouble::TemperatureOrder { field } => Place::Field(*field),
             Trouble::StationBehind { station, .. }
             | Trouble::StationTooSteep { station, .. }
-            | Trouble::StationRepeated { station } => Place::Station(*station),
+            | Trouble::StationRepeated { station }
+            | Trouble::StationUpright { station }
+            | Trouble::Bend { station, .. } => Place::Station(*station),
+            Trouble::NothingToSpread => Place::Field(Field::KnownFall),
             Trouble::StretchStart { stretch }
             | Trouble::PipeUnknown { stretch, .. }
             | Trouble::Rating { stretch, .. }

@@ -99,6 +99,15 @@ fn field_sheet(field: Field) -> Sheet {
         | Field::GaugeLevel
         | Field::StationDistance(_)
         | Field::StationLevel(_)
+        | Field::StationForeSight(_)
+        | Field::StationBackSight(_)
+        | Field::StationStaffBack(_)
+        | Field::StationStaffFore(_)
+        | Field::StationTurn(_)
+        | Field::KnownFall
+        | Field::BendRadius
+        | Field::JointDeflection
+        | Field::AirSlopeChange
         | Field::StretchCover(_)
         | Field::FittingCount(_)
         | Field::FittingAngle(_)

@@ -94,7 +94,7 @@ pub fn read(
             let doubt_unit = match rest.trim() {
                 "" => typed_unit,
                 // "38 ± 5 %": a share of the value itself.
-                "%" if kind != Kind::Share => {
+                "%" if kind != Kind::Share && typed_unit.symbol != "%" => {
                     let share = value.abs() * number / 100.0;
                     return finish(value, Some(share), ambiguous, own.is_some());
                 }

@@ -2,14 +2,16 @@
 //! stretches, pipes and fittings looked up, levels and limits with what
 //! stands in for those left empty; entries that cannot be used are named.
 
+pub mod bends;
 pub mod own_pipe;
 pub mod parts;
 pub mod profile;
 
 use crate::book::{Book, BoreSizing, NozzleKind, RoughnessAge};
-use crate::entry::EntryTrouble;
+use crate::entry::{Entry, EntryTrouble};
 use crate::field::{Field, Preset};
 use crate::figure::{Figure, Gap, Trouble};
+use bends::Turn;
 use hydraulics::air::standard_pressure;
 use hydraulics::quantity::{AbsolutePressure, GaugePressure, Head, Level};
 use hydraulics::water::Water;
@@ -44,6 +46,8 @@ pub enum Assumption {
     NoEntrance,
     /// No warmest water was entered: boiling is judged with the coldest.
     WarmestWaterUnknown,
+    /// The bends that come from the survey are rated as the pipe is.
+    BendsRatedAsPipe,
 }
 
 /// Levels of the forebay.
@@ -114,6 +118,8 @@ pub struct Resolved {
     pub stretches: Vec<Stretch>,
     /// Fittings on the line.
     pub fittings: Vec<PlacedFitting>,
+    /// The turn at every station between two legs.
+    pub turns: Vec<Turn>,
     /// Nozzles.
     pub jets: Figure<JetSpec>,
     /// Water as cold as it gets: the most viscous, so the most is lost.
@@ -155,7 +161,21 @@ pub(crate) struct Reader<'a> {
 impl Reader<'_> {
     /// The value, if one was entered.
     pub(crate) fn optional(&mut self, field: Field) -> Figure<Option<f64>> {
-        self.book.value(field).map_err(|why: EntryTrouble| {
+        let found = self.book.value(field);
+        self.usable(field, found)
+    }
+
+    /// The value of an entry at hand, if one was entered.
+    pub(crate) fn optional_of(&mut self, field: Field, entry: &Entry) -> Figure<Option<f64>> {
+        self.usable(field, field.value_of(entry))
+    }
+
+    fn usable(
+        &mut self,
+        field: Field,
+        found: Result<Option<f64>, EntryTrouble>,
+    ) -> Figure<Option<f64>> {
+        found.map_err(|why| {
             let trouble = Trouble::Entry(field, why);
             self.note(trouble.clone());
             Gap::Wrong(trouble)
@@ -222,13 +242,21 @@ pub fn resolve(book: &Book) -> Resolved {
     let gross_head = gross_head(r, &forebay.normal, &jet_axis);
     let stretches = parts::stretches(r, &profile);
     let fittings = parts::fittings(r, &profile, &stretches);
+    let turns = bends::turns(r, &profile, &stretches);
     let jets = jets(r);
     let (cold_water, warm_water) = waters(r);
     let warmest_wall = warmest_wall(r);
     let atmosphere = atmosphere(r);
     let limits = limits(r);
     // Entries no figure needs yet are still refused where they are wrong.
-    for field in [Field::TailLevel, Field::GaugeLevel, Field::ColdestWall] {
+    for field in [
+        Field::TailLevel,
+        Field::GaugeLevel,
+        Field::ColdestWall,
+        Field::BendRadius,
+        Field::JointDeflection,
+        Field::AirSlopeChange,
+    ] {
         let _ = r.optional(field);
     }
     for i in 0..book.prices.pipes.len() {
@@ -243,6 +271,7 @@ pub fn resolve(book: &Book) -> Resolved {
         gross_head,
         stretches,
         fittings,
+        turns,
         jets,
         cold_water,
         warm_water,

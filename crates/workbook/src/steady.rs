@@ -8,6 +8,7 @@
 use crate::book::{BoreSizing, FittingKind, Id, RoughnessAge};
 use crate::field::Field;
 use crate::figure::{CloneGap, Figure, Gap, Lack, Trouble};
+use crate::resolve::bends::{Made, Turn};
 use crate::resolve::parts::{PlacedFitting, Shape, Stretch};
 use crate::resolve::{Assumption, JetSpec, Resolved};
 use hydraulics::constants::standard_gravity;
@@ -43,7 +44,7 @@ pub struct Lowest {
 /// The loss of one fitting, as figured.
 #[derive(Debug, Clone, PartialEq)]
 pub struct FittingLoss {
-    /// The fitting.
+    /// The fitting; of a bend from the survey, its station.
     pub id: Id,
     /// Loss coefficient of all of them together, on the velocity in the pipe
     /// there.
@@ -73,6 +74,8 @@ pub struct Steady {
     pub stretches: Vec<(Id, Figure<RunLoss>)>,
     /// What each fitting loses.
     pub fittings: Vec<(Id, Figure<FittingLoss>)>,
+    /// What each bend from the survey loses, by its station.
+    pub bends: Vec<(Id, Figure<FittingLoss>)>,
     /// The grade line at the same flow from the lowest forebay level, where
     /// one is entered: what the lowest pressures are read from.
     pub low: Figure<Grade>,
@@ -116,7 +119,20 @@ pub fn steady(found: &Resolved) -> Steady {
             (f.id, loss)
         })
         .collect();
-    let line = parts.clone_gap().and_then(|p| line(found, p, &fittings));
+    let bends: Vec<(Id, Figure<FittingLoss>)> = found
+        .turns
+        .iter()
+        .filter(|turn| !matches!(turn.made, Ok(Made::Taken | Made::ByHand(_))))
+        .map(|turn| {
+            let loss = parts
+                .clone_gap()
+                .and_then(|p| bend_loss(turn, p, found, trial.as_ref().ok()));
+            (turn.station, loss)
+        })
+        .collect();
+    let line = parts
+        .clone_gap()
+        .and_then(|p| line(found, p, &fittings, &bends));
     let branch = branch(found, &parts, &mut assumptions);
     let template = template(found, &branch);
 
@@ -175,6 +191,7 @@ pub fn steady(found: &Resolved) -> Steady {
         loss_share,
         stretches,
         fittings,
+        bends,
         low,
         lowest,
         suction,
@@ -201,6 +218,7 @@ fn line(
     found: &Resolved,
     parts: &Parts<'_>,
     fittings: &[(Id, Figure<FittingLoss>)],
+    bends: &[(Id, Figure<FittingLoss>)],
 ) -> Figure<Line> {
     let stations = found.profile.whole()?;
     let age = found.limits.clone()?.roughness;
@@ -214,7 +232,19 @@ fn line(
             },
         });
     }
-    let mut losses = Vec::with_capacity(fittings.len());
+    let mut losses = Vec::with_capacity(fittings.len() + bends.len());
+    let mut pieces = bends.iter().peekable();
+    for turn in &found.turns {
+        // The bends are a part of the turns, in their order.
+        let Some((_, loss)) = pieces.next_if(|(station, _)| *station == turn.station) else {
+            continue;
+        };
+        losses.push(LocalLoss {
+            at: turn.at,
+            k: LossCoefficient::new(loss.clone()?.k).map_err(|why| bend_trouble(turn, why))?,
+            bore: bend_pipe(turn, parts)?.bore(),
+        });
+    }
     for (placed, (_, loss)) in found.fittings.iter().zip(fittings) {
         let loss = loss.clone()?;
         losses.push(LocalLoss {
@@ -331,6 +361,54 @@ fn fitting_loss(
     Ok(FittingLoss {
         id: placed.id,
         k: loss.k.get() * f64::from(count),
+        source: loss.source,
+        seen: loss.attested == fittings::Attested::Seen,
+    })
+}
+
+fn bend_trouble(turn: &Turn, why: FittingError) -> Gap {
+    Gap::Wrong(Trouble::Bend {
+        station: turn.station,
+        why,
+    })
+}
+
+fn bend_pipe<'a>(turn: &Turn, parts: &Parts<'a>) -> Figure<&'a Pipe> {
+    parts
+        .pipes
+        .iter()
+        .find(|(s, _)| Some(s.id) == turn.stretch)
+        .map(|(_, pipe)| *pipe)
+        .ok_or_else(|| {
+            // It lies in no stretch only where one has no place itself.
+            let gap = parts.pipes.iter().find_map(|(s, _)| s.span.clone().err());
+            gap.unwrap_or(Gap::Unsettled(Lack::Pipe(1)))
+        })
+}
+
+/// The loss of a bend from the survey.
+fn bend_loss(
+    turn: &Turn,
+    parts: &Parts<'_>,
+    found: &Resolved,
+    flow: Option<&VolumeRate>,
+) -> Figure<FittingLoss> {
+    let made = turn.made.clone()?;
+    let angle = Angle::new::<degree>(turn.deflection_deg.clone()?);
+    let pipe = bend_pipe(turn, parts)?;
+    let loss = match made {
+        Made::Smooth { radius } => {
+            let age = found.limits.clone()?.roughness;
+            bend_factor(pipe, age, flow, &parts.water)
+                .ok_or(FittingError::Bore(pipe.bore()))
+                .and_then(|f| fittings::smooth_bend(angle, radius, f))
+        }
+        _ => fittings::mitre_bend(angle, MitreWall::Rough),
+    }
+    .map_err(|why| bend_trouble(turn, why))?;
+    Ok(FittingLoss {
+        id: turn.station,
+        k: loss.k.get(),
         source: loss.source,
         seen: loss.attested == fittings::Attested::Seen,
     })

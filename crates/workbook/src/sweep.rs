@@ -91,6 +91,9 @@ impl Sweep {
             for fitting in &mut base.fittings {
                 fitting.stretch = fitting.at.is_ok().then_some(only.id);
             }
+            for turn in &mut base.turns {
+                turn.stretch = Some(only.id);
+            }
             base.stretches = vec![only];
         }
         let own = own_pipes(book);

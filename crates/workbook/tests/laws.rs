@@ -216,8 +216,17 @@ fn energy_balances_from_forebay_to_jet() {
     }
 }
 
+/// This many cases of each property, or as many as `PROPTEST_CASES` asks for.
+fn cases(usual: u32) -> ProptestConfig {
+    match std::env::var_os("PROPTEST_CASES") {
+        // The default configuration reads it.
+        Some(_) => ProptestConfig::default(),
+        None => ProptestConfig::with_cases(usual),
+    }
+}
+
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(64))]
+    #![proptest_config(cases(64))]
 
     #[test]
     fn more_flow_loses_more(q in 5.0..60.0f64, more in 0.1..10.0f64) {

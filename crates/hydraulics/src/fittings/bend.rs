@@ -7,6 +7,7 @@ use super::{
 use crate::friction::DarcyFactor;
 use crate::math;
 use crate::quantity::Angle;
+use std::sync::LazyLock;
 
 const HYDRAULIC_INSTITUTE: &str =
     "Hydraulic Institute, Engineering Data Book, 2nd ed. 1990, Table 33 (Re about 2.25e5)";
@@ -57,6 +58,23 @@ pub enum MitreWall {
     Rough,
 }
 
+// Read once: a line may turn at hundreds of stations.
+static SMOOTH_MITRES: LazyLock<Vec<Entry>> = LazyLock::new(|| single_mitres(1, 2));
+static ROUGH_MITRES: LazyLock<Vec<Entry>> = LazyLock::new(|| single_mitres(3, 4));
+
+/// Angles and coefficients of one wall, from the table's columns.
+fn single_mitres(value_column: usize, attested_column: usize) -> Vec<Entry> {
+    rows(include_str!("../data/mitre_single.csv"))
+        .filter_map(|row| {
+            Some(Entry {
+                x: row.first()?.parse().ok()?,
+                y: row.get(value_column)?.parse().ok()?,
+                attested: attested(row.get(attested_column)?),
+            })
+        })
+        .collect()
+}
+
 /// Single mitre bend: two straight pieces cut at an angle.
 ///
 /// # Source
@@ -71,20 +89,11 @@ pub enum MitreWall {
 /// An angle outside 0..=90 degrees.
 pub fn mitre_bend(angle: Angle, wall: MitreWall) -> Result<Loss, FittingError> {
     let degrees = degrees_within(angle, 0.0, 90.0)?;
-    let (value_column, attested_column) = match wall {
-        MitreWall::Smooth => (1, 2),
-        MitreWall::Rough => (3, 4),
+    let entries: &[Entry] = match wall {
+        MitreWall::Smooth => &SMOOTH_MITRES,
+        MitreWall::Rough => &ROUGH_MITRES,
     };
-    let entries: Vec<Entry> = rows(include_str!("../data/mitre_single.csv"))
-        .filter_map(|row| {
-            Some(Entry {
-                x: row.first()?.parse().ok()?,
-                y: row.get(value_column)?.parse().ok()?,
-                attested: attested(row.get(attested_column)?),
-            })
-        })
-        .collect();
-    let (k, attested) = lookup(&entries, degrees, Between::Linear).ok_or(FittingError::Angle {
+    let (k, attested) = lookup(entries, degrees, Between::Linear).ok_or(FittingError::Angle {
         angle,
         low: 0.0,
         high: 90.0,

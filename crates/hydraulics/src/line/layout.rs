@@ -342,12 +342,25 @@ fn lay_out_steps(
         .enumerate()
         .map(|(index, point)| (point.chainage.m(), Some(index)))
         .collect();
-    let others = runs
+    let mut others: Vec<f64> = runs
         .iter()
         .map(|run| run.to)
-        .chain(losses.iter().map(|loss| loss.0));
+        .chain(losses.iter().map(|loss| loss.0))
+        .collect();
+    others.sort_by(f64::total_cmp);
     for other in others {
-        if !chainages.iter().any(|(at, _)| same(*at, other)) {
+        // Surveyed points rise, and so do the places added behind them.
+        let near = spec
+            .points
+            .partition_point(|point| point.chainage.m() < other - SAME_PLACE_M);
+        let surveyed = spec
+            .points
+            .get(near)
+            .is_some_and(|point| same(point.chainage.m(), other));
+        let added = chainages
+            .last()
+            .is_some_and(|(at, point)| point.is_none() && same(*at, other));
+        if !surveyed && !added {
             chainages.push((other, None));
         }
     }

@@ -1,19 +1,43 @@
-//! Stations as typed to the profile of the pipe's axis.
+//! Stations as surveyed to the profile of the pipe's axis.
 //!
 //! The profile joins stations by straight lines. A slope distance is the
 //! pipe's own length between two stations, and must not be shorter than the
 //! rise or fall it spans; a horizontal distance gives the length by
-//! Pythagoras. Rows left wholly empty are not stations yet.
+//! Pythagoras. A station has its level entered, or found from the station
+//! before by clinometer (fall L sin a of a slope distance, D tan a of a
+//! horizontal one; the mean of fore and back sight where both were taken,
+//! which takes out the instrument's index error) or by staff or hose (fall the
+//! reading here less the reading there). Rows left wholly empty are not
+//! stations yet.
+//!
+//! Where the fall of the whole line is known, the survey's closing error is
+//! shown, and on wish spread over the legs levelled by angle or staff since
+//! the last level entered, each in proportion to its length: the usual
+//! adjustment of a line of levels (Ghilani and Wolf, Elementary Surveying,
+//! on adjusting simple level circuits; from memory).
 
-use crate::book::{DistanceKind, Id, Reckoning, Station};
-use crate::field::Field;
+use crate::book::{DistanceKind, Id, Reckoning, Station, SurveyWay};
+use crate::field::{Field, station_fields};
 use crate::figure::{Figure, Gap, Trouble};
 use crate::resolve::Reader;
 use hydraulics::math;
-use hydraulics::quantity::{HorizontalDistance, Level, PipeLength};
+use hydraulics::quantity::{Head, HorizontalDistance, Level, PipeLength};
 
 /// Most stations of one line.
 pub const MOST_STATIONS: usize = 1000;
+
+/// Fore and back sight of one leg that differ by more than this were not
+/// taken on the same line, degree: twice what a hand clinometer reads to
+/// (common practice).
+pub const SIGHTS_DIFFER_DEG: f64 = 1.0;
+
+/// A horizontal distance with a sight steeper than this gives no fall,
+/// degree.
+const STEEPEST_SIGHT_DEG: f64 = 89.9;
+
+/// Distances and levels are typed to a millimetre at best; a fall longer than
+/// its slope distance by less than this is rounding, m.
+const ROUNDING_M: f64 = 1e-6;
 
 /// A station on the profile.
 #[derive(Debug, Clone, PartialEq)]
@@ -28,6 +52,19 @@ pub struct StationAt {
     pub horizontal: HorizontalDistance,
     /// Level of the pipe's axis.
     pub level: Level,
+}
+
+/// How a survey closes on a known fall.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Closing {
+    /// Fall from the first station to the last as surveyed.
+    pub surveyed: Head,
+    /// The known fall.
+    pub known: Head,
+    /// The first less the second.
+    pub error: Head,
+    /// Length of the legs it was spread over, where it was.
+    pub spread_over: Option<PipeLength>,
 }
 
 /// The profile of the line.
@@ -46,6 +83,15 @@ pub struct Profile {
     pub pipe_length: Figure<PipeLength>,
     /// Length on the plan.
     pub plan_length: Figure<HorizontalDistance>,
+    /// How the survey closes on the known fall, where one is entered.
+    pub closing: Figure<Option<Closing>>,
+    /// Stations whose fore and back sights differ by more than
+    /// [`SIGHTS_DIFFER_DEG`], and by how much, degree.
+    pub sights_differ: Vec<(Id, f64)>,
+    /// Places in `usable` by number, sorted by number.
+    by_id: Vec<(Id, usize)>,
+    /// The row of the book each usable station stands in.
+    pub(crate) rows: Vec<usize>,
 }
 
 impl Profile {
@@ -60,19 +106,26 @@ impl Profile {
         }
     }
 
+    /// The place of the station of this number in `usable`.
+    #[must_use]
+    pub fn place(&self, id: Id) -> Option<usize> {
+        let at = self.by_id.binary_search_by_key(&id, |(i, _)| *i).ok()?;
+        self.by_id.get(at).map(|(_, place)| *place)
+    }
+
     /// The station of this number, if it can be used.
     #[must_use]
     pub fn station(&self, id: Id) -> Option<&StationAt> {
-        self.usable.iter().find(|s| s.id == id)
+        self.usable.get(self.place(id)?)
     }
 
     /// The level of the pipe's axis at a chainage within the profile.
     #[must_use]
     pub fn level_at(&self, chainage: PipeLength) -> Option<Level> {
         let x = chainage.m();
-        let after = self.usable.iter().position(|s| s.chainage.m() >= x)?;
-        let b = &self.usable[after];
-        let Some(a) = after.checked_sub(1).map(|i| &self.usable[i]) else {
+        let after = self.usable.partition_point(|s| s.chainage.m() < x);
+        let b = self.usable.get(after)?;
+        let Some(a) = after.checked_sub(1).and_then(|i| self.usable.get(i)) else {
             return Some(b.level);
         };
         let span = b.chainage.m() - a.chainage.m();
@@ -86,35 +139,109 @@ impl Profile {
 
 /// Whether a row holds anything.
 fn begun(station: &Station) -> bool {
-    !station.distance_m.is_empty() || !station.level_m.is_empty()
+    [
+        &station.distance_m,
+        &station.level_m,
+        &station.fore_sight_deg,
+        &station.back_sight_deg,
+        &station.staff_back_m,
+        &station.staff_fore_m,
+    ]
+    .into_iter()
+    .any(|entry| !entry.is_empty())
+}
+
+/// The entry of a station by its name.
+fn entry(station: &Station, field: Field) -> &crate::entry::Entry {
+    match field {
+        Field::StationLevel(_) => &station.level_m,
+        Field::StationForeSight(_) => &station.fore_sight_deg,
+        Field::StationBackSight(_) => &station.back_sight_deg,
+        Field::StationStaffBack(_) => &station.staff_back_m,
+        Field::StationStaffFore(_) => &station.staff_fore_m,
+        Field::StationTurn(_) => &station.plan_turn_deg,
+        _ => &station.distance_m,
+    }
+}
+
+impl Reader<'_> {
+    /// The value of a station's entry, without looking the station up.
+    pub(crate) fn of_station(&mut self, s: &Station, field: Field) -> Figure<Option<f64>> {
+        self.optional_of(field, entry(s, field))
+    }
+
+    fn station_needs(&mut self, s: &Station, field: Field) -> Figure<f64> {
+        self.of_station(s, field)?.ok_or(Gap::needs(field))
+    }
+}
+
+/// One leg of the line, as measured.
+#[derive(Debug, Clone, Copy)]
+struct Leg {
+    kind: DistanceKind,
+    distance: f64,
+    fall: f64,
+    /// Levelled from the station before, and not by a level of its own.
+    carried: bool,
+}
+
+/// What walking the line gives.
+struct Walked {
+    placed: Vec<StationAt>,
+    /// The leg that leads to each station but the first.
+    legs: Vec<Leg>,
+    broken: Option<Gap>,
+    sights_differ: Vec<(Id, f64)>,
 }
 
 pub(crate) fn profile(r: &mut Reader<'_>) -> Profile {
     let book = r.book;
-    let rows: Vec<&Station> = book.line.stations.iter().filter(|s| begun(s)).collect();
+    let (numbers, rows): (Vec<usize>, Vec<&Station>) = book
+        .line
+        .stations
+        .iter()
+        .enumerate()
+        .filter(|(_, s)| begun(s))
+        .unzip();
     let first_level = end_level(r, rows.first().copied(), 0);
-    let last_level = if rows.len() > 1 {
-        end_level(r, rows.last().copied(), 1)
-    } else {
-        Err(Gap::needs(next_row(r, rows.first().copied())))
-    };
-    let (usable, broken) = walk(r, &rows);
+    let mut walked = walk(r, &rows);
     // Later stations are still read, so that each wrong one is named.
-    for station in rows.iter().skip(usable.len()) {
-        for field in [
-            Field::StationDistance(station.id),
-            Field::StationLevel(station.id),
-        ] {
-            let _ = r.optional(field);
+    for station in rows.iter().skip(walked.placed.len()) {
+        for field in station_fields(station.way, station.id) {
+            let _ = r.of_station(station, field);
         }
     }
-    let broken = broken
-        .or_else(|| (usable.len() < 2).then(|| Gap::needs(next_row(r, rows.first().copied()))));
+    for station in &book.line.stations {
+        let _ = r.of_station(station, Field::StationTurn(station.id));
+    }
+    if walked.broken.is_none() && walked.placed.len() < 2 {
+        walked.broken = Some(Gap::needs(next_row(r, rows.first().copied())));
+    }
+    let closing = close(r, &mut walked);
+    let Walked {
+        placed: usable,
+        broken,
+        sights_differ,
+        ..
+    } = walked;
+    let last_level = match rows.last() {
+        Some(last) if rows.len() > 1 && last.way == SurveyWay::Level => end_level(r, Some(last), 1),
+        Some(_) if rows.len() > 1 => match (&broken, usable.last()) {
+            (None, Some(end)) => Ok(end.level),
+            (Some(gap), _) => Err(gap.clone()),
+            (None, None) => Err(Gap::needs(next_row(r, None))),
+        },
+        first => Err(Gap::needs(next_row(r, first.copied()))),
+    };
     let end = match (&broken, usable.last()) {
         (None, Some(end)) => Ok((end.chainage, end.horizontal)),
         (Some(gap), _) => Err(gap.clone()),
         (None, None) => Err(Gap::needs(next_row(r, None))),
     };
+    let mut by_id: Vec<(Id, usize)> = usable.iter().enumerate().map(|(i, s)| (s.id, i)).collect();
+    by_id.sort_unstable();
+    let mut numbers = numbers;
+    numbers.truncate(usable.len());
     Profile {
         pipe_length: end.clone().map(|(along, _)| along),
         plan_length: end.map(|(_, plan)| plan),
@@ -122,6 +249,10 @@ pub(crate) fn profile(r: &mut Reader<'_>) -> Profile {
         broken,
         first_level,
         last_level,
+        closing,
+        sights_differ,
+        by_id,
+        rows: numbers,
     }
 }
 
@@ -138,7 +269,9 @@ fn next_row(r: &Reader<'_>, first: Option<&Station>) -> Field {
 
 fn end_level(r: &mut Reader<'_>, station: Option<&Station>, nth: usize) -> Figure<Level> {
     match station {
-        Some(s) => r.needed(Field::StationLevel(s.id)).map(Level::from_m),
+        Some(s) => r
+            .station_needs(s, Field::StationLevel(s.id))
+            .map(Level::from_m),
         None => {
             let id = r.book.line.stations.get(nth).map_or(1, |s| s.id);
             Err(Gap::needs(Field::StationLevel(id)))
@@ -146,36 +279,51 @@ fn end_level(r: &mut Reader<'_>, station: Option<&Station>, nth: usize) -> Figur
     }
 }
 
-fn walk(r: &mut Reader<'_>, rows: &[&Station]) -> (Vec<StationAt>, Option<Gap>) {
+fn walk(r: &mut Reader<'_>, rows: &[&Station]) -> Walked {
+    let mut walked = Walked {
+        placed: Vec::with_capacity(rows.len()),
+        legs: Vec::with_capacity(rows.len()),
+        broken: None,
+        sights_differ: Vec::new(),
+    };
     if rows.len() > MOST_STATIONS {
         let trouble = Trouble::TooManyStations { count: rows.len() };
         r.note(trouble.clone());
-        return (Vec::new(), Some(Gap::Wrong(trouble)));
+        walked.broken = Some(Gap::Wrong(trouble));
+        return walked;
     }
-    let mut placed: Vec<StationAt> = Vec::with_capacity(rows.len());
     let mut origin = 0.0;
-    for (i, station) in rows.iter().enumerate() {
-        let next = if i == 0 {
-            first(r, station).map(|(at, start)| {
+    for station in rows {
+        let next = match walked.placed.last() {
+            None => first(r, station).map(|(at, start)| {
                 origin = start;
                 at
-            })
-        } else {
-            following(r, station, &placed[i - 1], origin)
+            }),
+            Some(before) => {
+                leg(r, station, before, origin, &mut walked.sights_differ).and_then(|leg| {
+                    walked.legs.push(leg);
+                    placed(r, station.id, &station.name, before, leg)
+                })
+            }
         };
         match next {
-            Ok(at) => placed.push(at),
-            Err(gap) => return (placed, Some(gap)),
+            Ok(at) => walked.placed.push(at),
+            Err(gap) => {
+                walked.broken = Some(gap);
+                return walked;
+            }
         }
     }
-    (placed, None)
+    walked
 }
 
 /// The first station, and the distance typed for it, which running distances
 /// count from.
 fn first(r: &mut Reader<'_>, station: &Station) -> Figure<(StationAt, f64)> {
-    let start = r.quietly(Field::StationDistance(station.id), 0.0)?;
-    let level = r.needed(Field::StationLevel(station.id))?;
+    let start = r
+        .of_station(station, Field::StationDistance(station.id))?
+        .unwrap_or(0.0);
+    let level = r.station_needs(station, Field::StationLevel(station.id))?;
     let at = StationAt {
         id: station.id,
         name: station.name.clone(),
@@ -186,56 +334,186 @@ fn first(r: &mut Reader<'_>, station: &Station) -> Figure<(StationAt, f64)> {
     Ok((at, start))
 }
 
-fn following(
+/// The leg that leads to a station, as measured.
+fn leg(
     r: &mut Reader<'_>,
     station: &Station,
     before: &StationAt,
     origin: f64,
-) -> Figure<StationAt> {
-    let typed = r.needed(Field::StationDistance(station.id))?;
-    let level = r.needed(Field::StationLevel(station.id))?;
-    let kind = r.book.line.distance_kind;
+    differ: &mut Vec<(Id, f64)>,
+) -> Figure<Leg> {
+    let id = station.id;
+    // Each is read before one of them can fail, so that every wrong one is
+    // named.
+    let typed = r.station_needs(station, Field::StationDistance(id));
+    let (first, second) = match station.way {
+        SurveyWay::Level => (r.station_needs(station, Field::StationLevel(id)), Ok(None)),
+        SurveyWay::Angle => (
+            r.station_needs(station, Field::StationForeSight(id)),
+            r.of_station(station, Field::StationBackSight(id)),
+        ),
+        SurveyWay::Staff => (
+            r.station_needs(station, Field::StationStaffBack(id)),
+            r.of_station(station, Field::StationStaffFore(id)),
+        ),
+    };
+    let typed = typed?;
+    let line = r.book.line.distance_kind;
+    let kind = station.distance_kind.unwrap_or(line);
+    let running = kind == line && r.book.line.reckoning == Reckoning::FromStart;
     let so_far = match kind {
         DistanceKind::Slope => before.chainage.m(),
         DistanceKind::Horizontal => before.horizontal.m(),
     };
-    let leg = match r.book.line.reckoning {
-        Reckoning::FromPrevious => typed,
-        Reckoning::FromStart => typed - origin - so_far,
+    let distance = if running {
+        typed - origin - so_far
+    } else {
+        typed
     };
-    let id = station.id;
-    // Distances are typed to a millimetre at best.
-    let leg = if leg.abs() < 1e-9 { 0.0 } else { leg };
-    if leg < 0.0 {
+    let distance = if distance.abs() < 1e-9 { 0.0 } else { distance };
+    if distance < 0.0 {
         return r.wrong(Trouble::StationBehind {
             station: id,
-            back_m: -leg,
+            back_m: -distance,
         });
     }
-    let fall = before.level.m() - level;
-    let (along, plan) = match kind {
+    let fall = match station.way {
+        SurveyWay::Level => before.level.m() - first?,
+        SurveyWay::Staff => {
+            let fore = second?.ok_or(Gap::needs(Field::StationStaffFore(id)));
+            fore? - first?
+        }
+        SurveyWay::Angle => {
+            let sight = sight(id, first?, second?, differ);
+            let radians = sight * math::PI / 180.0;
+            match kind {
+                DistanceKind::Slope => -distance * math::sin(radians),
+                DistanceKind::Horizontal if sight.abs() > STEEPEST_SIGHT_DEG => {
+                    return r.wrong(Trouble::StationUpright { station: id });
+                }
+                DistanceKind::Horizontal => -distance * math::tan(radians),
+            }
+        }
+    };
+    Ok(Leg {
+        kind,
+        distance,
+        fall,
+        carried: station.way != SurveyWay::Level,
+    })
+}
+
+/// The sight along a leg, degree above the horizontal: the mean of fore sight
+/// and back sight turned about, where both were taken.
+fn sight(id: Id, fore: f64, back: Option<f64>, differ: &mut Vec<(Id, f64)>) -> f64 {
+    let Some(back) = back else {
+        return fore;
+    };
+    let difference = (fore + back).abs();
+    if difference > SIGHTS_DIFFER_DEG {
+        differ.push((id, difference));
+    }
+    (fore - back) / 2.0
+}
+
+/// The station at the end of a leg.
+fn placed(
+    r: &mut Reader<'_>,
+    id: Id,
+    name: &str,
+    before: &StationAt,
+    leg: Leg,
+) -> Figure<StationAt> {
+    let (distance, fall) = (leg.distance, leg.fall);
+    let (along, plan) = match leg.kind {
         DistanceKind::Slope => {
-            if leg < fall.abs() {
+            let spare = distance - fall.abs();
+            if spare < -ROUNDING_M {
                 return r.wrong(Trouble::StationTooSteep {
                     station: id,
-                    distance_m: leg,
+                    distance_m: distance,
                     fall_m: fall.abs(),
                 });
             }
-            (leg, ((leg - fall) * (leg + fall)).sqrt())
+            (distance, (spare.max(0.0) * (distance + fall.abs())).sqrt())
         }
-        DistanceKind::Horizontal => (math::hypot(leg, fall), leg),
+        DistanceKind::Horizontal => (math::hypot(distance, fall), distance),
     };
     if along <= 0.0 {
         return r.wrong(Trouble::StationRepeated { station: id });
     }
     Ok(StationAt {
         id,
-        name: station.name.clone(),
+        name: name.to_owned(),
         chainage: PipeLength::from_m(before.chainage.m() + along),
         horizontal: HorizontalDistance::from_m(before.horizontal.m() + plan),
-        level: Level::from_m(level),
+        level: Level::from_m(before.level.m() - fall),
     })
+}
+
+/// How the line closes on the known fall; on wish, spreads the error.
+fn close(r: &mut Reader<'_>, walked: &mut Walked) -> Figure<Option<Closing>> {
+    let known = r.optional(Field::KnownFall);
+    let carried = walked
+        .legs
+        .iter()
+        .rev()
+        .take_while(|leg| leg.carried)
+        .count();
+    let from = walked.legs.len() - carried;
+    let wished = r.book.line.spread_error;
+    let known = match known {
+        Ok(Some(known)) => known,
+        Ok(None) => return Ok(None),
+        Err(gap) => {
+            // Levels that rest on it cannot be had either.
+            if wished && carried > 0 && walked.broken.is_none() {
+                walked.broken = Some(gap.clone());
+            }
+            return Err(gap);
+        }
+    };
+    if let Some(gap) = &walked.broken {
+        return Err(gap.clone());
+    }
+    let (Some(start), Some(end)) = (walked.placed.first(), walked.placed.last()) else {
+        return Err(Gap::needs(next_row(r, None)));
+    };
+    let surveyed = start.level - end.level;
+    let mut closing = Closing {
+        surveyed,
+        known: Head::from_m(known),
+        error: Head::from_m(surveyed.m() - known),
+        spread_over: None,
+    };
+    if !wished {
+        return Ok(Some(closing));
+    }
+    if carried == 0 {
+        r.note(Trouble::NothingToSpread);
+        return Ok(Some(closing));
+    }
+    let over = end.chainage - walked.placed[from].chainage;
+    closing.spread_over = Some(over);
+    let per_length = closing.error.m() / over.m();
+    for i in from..walked.legs.len() {
+        let length = walked.placed[i + 1].chainage - walked.placed[i].chainage;
+        walked.legs[i].fall -= per_length * length.m();
+    }
+    // Lengths were taken from the line as surveyed, so it is laid anew only
+    // now.
+    for i in from..walked.legs.len() {
+        let (id, name) = (walked.placed[i + 1].id, walked.placed[i + 1].name.clone());
+        match placed(r, id, &name, &walked.placed[i], walked.legs[i]) {
+            Ok(at) => walked.placed[i + 1] = at,
+            Err(gap) => {
+                walked.placed.truncate(i + 1);
+                walked.broken = Some(gap.clone());
+                return Err(gap);
+            }
+        }
+    }
+    Ok(Some(closing))
 }
 
 #[cfg(test)]
@@ -259,6 +537,7 @@ mod tests {
                 name: String::new(),
                 distance_m: Entry::typed(distance, "m", Kind::Distance, DecimalMark::Point),
                 level_m: Entry::typed(level, "m", Kind::Level, DecimalMark::Point),
+                ..Station::default()
             })
             .collect();
         book
