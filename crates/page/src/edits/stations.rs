@@ -2,11 +2,43 @@
 
 use super::{free_id, place_of};
 use workbook::Book;
-use workbook::book::{Id, Station};
+use workbook::book::{Id, Station, SurveyWay};
 
 /// Adds an empty station at the foot of the line. Returns its number.
 pub fn add(book: &mut Book) -> Id {
     insert_at(book, book.line.stations.len())
+}
+
+/// How the next station is levelled unless told otherwise: as the last one.
+#[must_use]
+pub fn usual_way(book: &Book) -> SurveyWay {
+    book.line
+        .stations
+        .last()
+        .map_or(SurveyWay::Level, |s| s.way)
+}
+
+/// Whether anything was typed of how a station lies in height.
+fn is_levelled(station: &Station) -> bool {
+    [
+        &station.level_m,
+        &station.fore_sight_deg,
+        &station.back_sight_deg,
+        &station.staff_back_m,
+        &station.staff_fore_m,
+    ]
+    .into_iter()
+    .any(|entry| !entry.is_empty())
+}
+
+/// Levels every station below the first in this way, but for those where
+/// something was typed already.
+pub fn level_by(book: &mut Book, way: SurveyWay) {
+    for station in book.line.stations.iter_mut().skip(1) {
+        if !is_levelled(station) {
+            station.way = way;
+        }
+    }
 }
 
 /// Inserts an empty station above this one. Returns its number.
@@ -24,10 +56,17 @@ pub fn insert_after(book: &mut Book, station: Id) -> Option<Id> {
 fn insert_at(book: &mut Book, place: usize) -> Id {
     let id = free_id(book.line.stations.iter().map(|s| s.id));
     let place = place.min(book.line.stations.len());
+    // Levelled as the one above; the first of a line has a level.
+    let (way, distance_kind) = place
+        .checked_sub(1)
+        .and_then(|above| book.line.stations.get(above))
+        .map_or((SurveyWay::Level, None), |s| (s.way, s.distance_kind));
     book.line.stations.insert(
         place,
         Station {
             id,
+            way,
+            distance_kind,
             ..Station::default()
         },
     );
@@ -103,6 +142,33 @@ mod tests {
         assert_eq!(book.line.fittings[0].id, f);
         assert_eq!(book.line.fittings[0].at_station, b);
         assert!(is_whole(&book));
+    }
+
+    #[test]
+    fn a_way_of_levelling_goes_on_down_the_line_and_spares_what_was_typed() {
+        let mut book = Book::new("k");
+        let typed = add(&mut book);
+        let entry = workbook::Entry::typed(
+            "12",
+            "m",
+            workbook::units::Kind::Level,
+            workbook::reading::DecimalMark::Point,
+        );
+        book.line.stations[2].level_m = entry;
+        let empty = add(&mut book);
+        level_by(&mut book, SurveyWay::Staff);
+        let way = |book: &Book, id| {
+            let station = book.line.stations.iter().find(|s| s.id == id);
+            station.map(|s| s.way)
+        };
+        assert_eq!(way(&book, 1), Some(SurveyWay::Level));
+        assert_eq!(way(&book, typed), Some(SurveyWay::Level));
+        assert_eq!(way(&book, empty), Some(SurveyWay::Staff));
+        assert_eq!(usual_way(&book), SurveyWay::Staff);
+        let next = add(&mut book);
+        assert_eq!(way(&book, next), Some(SurveyWay::Staff));
+        let head = insert_before(&mut book, 1).unwrap();
+        assert_eq!(way(&book, head), Some(SurveyWay::Level));
     }
 
     #[test]

@@ -7,7 +7,7 @@ pub mod picker;
 pub mod text_field;
 pub mod typing;
 
-pub use choice::choice;
+pub use choice::{choice, choice_of};
 pub use number_field::{NumberCell, NumberField};
 pub use picker::picker;
 pub use text_field::{TextLook, text_field};

@@ -263,6 +263,12 @@ pub fn NumberField(
     /// Whether a key for ± stands by.
     #[prop(optional)]
     doubt: bool,
+    /// Whether its hint is left out, as in a row of many.
+    #[prop(optional)]
+    brief: bool,
+    /// Where Enter leads, if on.
+    #[prop(optional)]
+    next: Option<Callback<()>>,
 ) -> impl IntoView {
     let handle = Handle::new(field);
     let state = handle.state;
@@ -292,9 +298,9 @@ pub fn NumberField(
         <div class="field">
             <label class="field-label" for=id>{name}</label>
             <div class="field-line">
-                {handle.minus()} {handle.input(None, None)} {doubt} {handle.unit()}
+                {handle.minus()} {handle.input(None, next)} {doubt} {handle.unit()}
             </div>
-            {handle.below(false)}
+            {handle.below(brief)}
         </div>
     }
     .into_any()

@@ -3,6 +3,7 @@
 mod fittings;
 mod stations;
 mod stretches;
+mod survey;
 
 use crate::inputs::{NumberField, choice};
 use crate::parts::cautions::cautions;
@@ -78,6 +79,7 @@ pub fn LineSheet() -> impl IntoView {
             Key::LINE_LEVELS,
             view! { <div class="fields">{levels}</div> }.into_any(),
         )}
+        {part("survey", Key::LINE_SURVEY, survey::of_line())}
         {part("stretches", Key::LINE_STRETCHES, stretches::stretches())}
         {part("fittings", Key::LINE_FITTINGS, fittings::fittings())}
         {cautions(Sheet::Line)}

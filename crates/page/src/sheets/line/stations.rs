@@ -1,20 +1,22 @@
 //! The table of stations. Enter goes from distance to level to the next
 //! station, and adds one at the foot.
 
+use super::survey::{self, WAYS};
 use crate::edits::{fittings, stations, stretches};
-use crate::inputs::NumberCell;
 use crate::inputs::typing::{next_unit, unit_of};
+use crate::inputs::{NumberCell, NumberField, choice_of};
 use crate::platform::{frame, place};
 use crate::slug;
 use crate::speak;
 use crate::state::{State, state};
 use leptos::prelude::*;
 use words::{Key, text};
-use workbook::book::{FittingKind, Id};
+use workbook::book::{FittingKind, Id, SurveyWay};
+use workbook::field::station_fields;
 use workbook::units::Kind;
 use workbook::{Book, Entry, Field};
 
-/// Which of the two numbers of a station.
+/// A column of the table.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 enum Side {
     Distance,
@@ -67,15 +69,20 @@ fn turn_column(state: State, side: Side, now: &str) {
 }
 
 /// Where Enter leads from here; none at the foot of the line.
-fn after(book: &Book, id: Id, side: Side) -> Option<(Id, Side)> {
-    match side {
-        Side::Distance => Some((id, Side::Level)),
-        Side::Level => {
-            let place = book.line.stations.iter().position(|s| s.id == id)?;
-            let next = book.line.stations.get(place + 1)?;
-            Some((next.id, Side::Distance))
-        }
-    }
+fn after(book: &Book, field: Field) -> Option<Field> {
+    let mut all = book
+        .line
+        .stations
+        .iter()
+        .enumerate()
+        .flat_map(|(i, s)| station_fields(way_at(i, s.way), s.id));
+    all.find(|f| *f == field)?;
+    all.next()
+}
+
+/// The first station has nothing above it to be levelled from.
+fn way_at(place: usize, way: SurveyWay) -> SurveyWay {
+    if place == 0 { SurveyWay::Level } else { way }
 }
 
 fn focus(field: Field) {
@@ -88,18 +95,23 @@ fn focus(field: Field) {
     }
 }
 
-fn enter(state: State, id: Id, side: Side) {
-    let next = state.book.with_untracked(|b| after(b, id, side));
-    match next {
-        Some((id, side)) => focus(side.field(id)),
-        None => add(state),
+fn enter(state: State, field: Field, next_way: RwSignal<Option<SurveyWay>>) {
+    match state.book.with_untracked(|b| after(b, field)) {
+        Some(field) => focus(field),
+        None => add(state, next_way),
     }
 }
 
 /// Adds a station at the foot and puts the cursor in it.
-fn add(state: State) {
+fn add(state: State, next_way: RwSignal<Option<SurveyWay>>) {
     let mut added = None;
-    state.act(|b| added = Some(stations::add(b)));
+    state.act(|b| {
+        let id = stations::add(b);
+        if let (Some(way), Some(last)) = (next_way.get_untracked(), b.line.stations.last_mut()) {
+            last.way = way;
+        }
+        added = Some(id);
+    });
     if let Some(id) = added {
         focus(Field::StationDistance(id));
     }
@@ -115,6 +127,12 @@ pub(super) fn stations() -> AnyView {
             .with(|b| b.line.stations.iter().map(|s| s.id).collect::<Vec<Id>>())
     });
     let open = RwSignal::new(None);
+    let next_way = RwSignal::new(None);
+    let way_now = Signal::derive(move || {
+        next_way
+            .get()
+            .unwrap_or_else(|| state.book.with(|b| stations::usual_way(b)))
+    });
     let distance_unit = Memo::new(move |_| column_unit(state, Side::Distance));
     let level_unit = Memo::new(move |_| column_unit(state, Side::Level));
     let unit_button = move |side: Side, unit: Memo<&'static str>| {
@@ -138,6 +156,17 @@ pub(super) fn stations() -> AnyView {
         <p class="quiet">
             {move || text::line_station_count(state.words.get(), ids.with(Vec::len))}
         </p>
+        {choice_of(
+            state,
+            "line-way",
+            Key::FIELD_LINE_WAY,
+            &WAYS,
+            way_now,
+            move |way| {
+                next_way.set(Some(way));
+                state.act(|b| stations::level_by(b, way));
+            },
+        )}
         <table class="table table-entry" data-test="station-table">
             <thead>
                 <tr>
@@ -156,7 +185,7 @@ pub(super) fn stations() -> AnyView {
                 <For
                     each=move || ids.get()
                     key=|id| *id
-                    children=move |id| row(state, id, open, (distance_unit, level_unit))
+                    children=move |id| row(state, id, open, next_way, (distance_unit, level_unit))
                 />
             </tbody>
         </table>
@@ -165,7 +194,7 @@ pub(super) fn stations() -> AnyView {
                 type="button"
                 class="button"
                 data-test="station-add"
-                on:click=move |_| add(state)
+                on:click=move |_| add(state, next_way)
             >
                 {say(Key::DO_ADD_STATION)}
             </button>
@@ -178,6 +207,7 @@ fn row(
     state: State,
     id: Id,
     open: RwSignal<Option<Id>>,
+    next_way: RwSignal<Option<SurveyWay>>,
     (distance_unit, level_unit): (Memo<&'static str>, Memo<&'static str>),
 ) -> AnyView {
     let is_open = Memo::new(move |_| open.get() == Some(id));
@@ -198,23 +228,36 @@ fn row(
         })
     });
     let chosen = move || state.station.get() == Some(id);
+    let way = Memo::new(move |_| {
+        let at = state.book.with(|b| {
+            b.line
+                .stations
+                .iter()
+                .position(|s| s.id == id)
+                .map(|p| (p, b.line.stations[p].way))
+        });
+        at.map_or(SurveyWay::Level, |(place, way)| way_at(place, way))
+    });
     let cell = move |side: Side, unit: Memo<&'static str>, label: Key| {
         let called = Signal::derive(move || {
             let words = state.words.get();
             let place = state.book.with(|b| speak::station(words, b, id));
             text::field_at(words, words.say(label), &place)
         });
+        let field = side.field(id);
         view! {
-            <td>
-                <NumberCell
-                    field=side.field(id)
-                    name=called
-                    column_unit=unit
-                    next=Callback::new(move |()| enter(state, id, side))
-                    on_enter=Callback::new(move |()| state.station.set(Some(id)))
-                />
-            </td>
+            <NumberCell
+                field=field
+                name=called
+                column_unit=unit
+                next=Callback::new(move |()| enter(state, field, next_way))
+                on_enter=Callback::new(move |()| state.station.set(Some(id)))
+            />
         }
+    };
+    let levelled = move || match way.get() {
+        SurveyWay::Level => cell(Side::Level, level_unit, Key::FIELD_STATION_LEVEL).into_any(),
+        way => carried(state, id, way, next_way),
     };
     view! {
         <tr class:chosen=chosen data-test=format!("station-{id}")>
@@ -232,14 +275,48 @@ fn row(
                     {move || format!("{} {}", number.get(), name.get())}
                 </button>
             </th>
-            {cell(Side::Distance, distance_unit, Key::FIELD_STATION_DISTANCE)}
-            {cell(Side::Level, level_unit, Key::FIELD_STATION_LEVEL)}
+            <td>{cell(Side::Distance, distance_unit, Key::FIELD_STATION_DISTANCE)}</td>
+            <td>{levelled}</td>
         </tr>
         <Show when=move || is_open.get()>
             <tr>
                 <td colspan="3">{tools(state, id)}</td>
             </tr>
         </Show>
+    }
+    .into_any()
+}
+
+/// The sights or readings that level a station from the one before, and the
+/// level that comes of them.
+fn carried(state: State, id: Id, way: SurveyWay, next_way: RwSignal<Option<SurveyWay>>) -> AnyView {
+    let fields = station_fields(way, id)
+        .into_iter()
+        .filter(|f| !matches!(f, Field::StationDistance(_)))
+        .map(|field| {
+            view! {
+                <NumberField
+                    field=field
+                    brief=true
+                    next=Callback::new(move |()| enter(state, field, next_way))
+                />
+            }
+        })
+        .collect_view();
+    let level = move || {
+        let words = state.words.get();
+        state.findings.with(|f| {
+            f.resolved
+                .profile
+                .station(id)
+                .map(|at| text::line_level_is(words, &words.figure(at.level)))
+        })
+    };
+    view! {
+        <div class="levelled" on:focusin=move |_| state.station.set(Some(id))>
+            {fields}
+            <p class="quiet" data-test=format!("station-level-{id}")>{level}</p>
+        </div>
     }
     .into_any()
 }
@@ -328,6 +405,7 @@ fn tools(state: State, id: Id) -> AnyView {
                     }
                 },
             )}
+            {survey::of_station(state, id)}
             <div class="buttons">
                 {tool("station-above", Key::DO_INSERT_ABOVE, insert(false))}
                 {tool("station-below", Key::PAGE_INSERT_BELOW, insert(true))}
@@ -349,8 +427,37 @@ mod tests {
     #[test]
     fn enter_leads_down_the_line_and_ends_at_the_foot() {
         let book = Book::new("k");
-        assert_eq!(after(&book, 1, Side::Distance), Some((1, Side::Level)));
-        assert_eq!(after(&book, 1, Side::Level), Some((2, Side::Distance)));
-        assert_eq!(after(&book, 2, Side::Level), None);
+        let follows = |field| after(&book, field);
+        assert_eq!(
+            follows(Field::StationDistance(1)),
+            Some(Field::StationLevel(1))
+        );
+        assert_eq!(
+            follows(Field::StationLevel(1)),
+            Some(Field::StationDistance(2))
+        );
+        assert_eq!(follows(Field::StationLevel(2)), None);
+    }
+
+    #[test]
+    fn enter_leads_through_the_sights_of_a_leg() {
+        let mut book = Book::new("k");
+        for station in &mut book.line.stations {
+            station.way = SurveyWay::Angle;
+        }
+        // The first station has a level all the same.
+        assert_eq!(
+            after(&book, Field::StationLevel(1)),
+            Some(Field::StationDistance(2))
+        );
+        assert_eq!(
+            after(&book, Field::StationDistance(2)),
+            Some(Field::StationForeSight(2))
+        );
+        assert_eq!(
+            after(&book, Field::StationForeSight(2)),
+            Some(Field::StationBackSight(2))
+        );
+        assert_eq!(after(&book, Field::StationBackSight(2)), None);
     }
 }
