@@ -12,6 +12,7 @@ pub mod figure;
 pub mod format;
 pub mod intake;
 pub mod judge;
+pub mod laying;
 pub mod measure;
 pub mod next;
 pub mod operation;
