@@ -14,8 +14,7 @@ pub enum Approach {
 }
 
 /// Where the criterion comes from.
-pub const SOURCE: &str = "J. L. Gordon, Vortices at intakes, Water Power 22 (1970) 4; \
-     coefficients from memory";
+pub const SOURCE: &str = "J. L. Gordon, Vortices at intakes, Water Power 22 (1970) 4 (from memory)";
 
 /// Why there is no submergence.
 #[derive(Debug, Clone, Copy, PartialEq)]

@@ -31,6 +31,12 @@ pub struct Submergence {
 }
 
 impl Submergence {
+    /// Gordon's coefficient for the approach, s/m^0.5.
+    #[must_use]
+    pub fn coefficient(&self) -> f64 {
+        kind(self.approach).coefficient()
+    }
+
     /// Whether there is water enough over it.
     #[must_use]
     pub fn suffices(&self) -> bool {
@@ -61,6 +67,13 @@ pub fn intake(found: &Resolved, steady: &Steady) -> Intake {
     }
 }
 
+fn kind(approach: Approach) -> intake::Approach {
+    match approach {
+        Approach::Lateral => intake::Approach::Lateral,
+        Approach::Symmetrical => intake::Approach::Symmetrical,
+    }
+}
+
 fn figure(found: &Resolved, steady: &Steady) -> Figure<Submergence> {
     let water = found
         .forebay
@@ -80,15 +93,8 @@ fn figure(found: &Resolved, steady: &Steady) -> Figure<Submergence> {
             run.clone().map(|run| run.velocity)
         })?;
     let approach = found.intake_approach;
-    let needed = submergence(
-        velocity,
-        height,
-        match approach {
-            Approach::Lateral => intake::Approach::Lateral,
-            Approach::Symmetrical => intake::Approach::Symmetrical,
-        },
-    )
-    .map_err(|why| Gap::Wrong(Trouble::Intake(why)))?;
+    let needed = submergence(velocity, height, kind(approach))
+        .map_err(|why| Gap::Wrong(Trouble::Intake(why)))?;
     let top = axis + Head::new(height / 2.0);
     Ok(Submergence {
         water,
