@@ -31,6 +31,7 @@ pub mod constants;
 pub mod fittings;
 pub mod friction;
 pub mod gravity;
+pub mod intake;
 pub mod line;
 pub mod math;
 pub mod nozzle;

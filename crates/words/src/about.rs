@@ -48,6 +48,13 @@ impl About<'_> {
         }
     }
 
+    /// Several stations, "station 1, station 2 (Saddle)".
+    #[must_use]
+    pub fn stations(self, ids: &[Id]) -> String {
+        let names: Vec<String> = ids.iter().map(|id| self.station(*id)).collect();
+        names.join(", ")
+    }
+
     /// "stretch 2".
     #[must_use]
     pub fn stretch(self, id: Id) -> String {

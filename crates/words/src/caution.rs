@@ -2,10 +2,12 @@
 
 use crate::about::About;
 use crate::text::{self, Key};
-use workbook::book::RoughnessAge;
+use workbook::book::{Approach, RoughnessAge};
 use workbook::caution::Caution;
 use workbook::measure::Measure;
 use workbook::resolve::Assumption;
+use workbook::resolve::profile::SIGHTS_DIFFER_DEG;
+use workbook::units::Kind;
 
 /// A caution as printed.
 #[derive(Debug, Clone, PartialEq, Eq)]
@@ -104,6 +106,43 @@ impl About<'_> {
                 ),
                 None,
             ),
+            Caution::AirCollects { high, steepens } => {
+                let mut places = Vec::new();
+                if !high.is_empty() {
+                    places.push(text::caution_air_high(words, &self.stations(high)));
+                }
+                if !steepens.is_empty() {
+                    places.push(text::caution_air_steepens(words, &self.stations(steepens)));
+                }
+                (
+                    Key::CAUTION_AIR,
+                    words.say(Key::CAUTION_AIR_BODY).to_owned(),
+                    Some(places.join(" ")),
+                )
+            }
+            Caution::WaterStays { drains } => (
+                Key::CAUTION_WATER_STAYS,
+                text::caution_water_stays_body(words, &self.stations(drains)),
+                None,
+            ),
+            Caution::Submergence { found, needed } => (
+                Key::CAUTION_SUBMERGENCE,
+                text::caution_submergence_body(
+                    words,
+                    &words.figure(*found),
+                    &words.figure(*needed),
+                ),
+                None,
+            ),
+            Caution::SightsDiffer { stations } => (
+                Key::CAUTION_SIGHTS,
+                text::caution_sights_body(
+                    words,
+                    &words.brief(Measure::new(SIGHTS_DIFFER_DEG, Kind::Angle)),
+                    &self.stations(stations),
+                ),
+                None,
+            ),
             Caution::Invented => plain(Key::CAUTION_INVENTED, Key::CAUTION_INVENTED_BODY),
             _ => plain(Key::CAUTION_OTHER, Key::CAUTION_OTHER_BODY),
         }
@@ -140,6 +179,13 @@ impl About<'_> {
                 text::assumption_branch_bore(words, &words.figure(Measure::bore(*bore)))
             }
             Assumption::NoEntrance => words.say(Key::ASSUMPTION_NO_ENTRANCE).to_owned(),
+            Assumption::BendsRatedAsPipe => words.say(Key::ASSUMPTION_BENDS_RATED).to_owned(),
+            Assumption::IntakeApproach(Approach::Lateral) => {
+                words.say(Key::ASSUMPTION_APPROACH_LATERAL).to_owned()
+            }
+            Assumption::IntakeApproach(Approach::Symmetrical) => {
+                words.say(Key::ASSUMPTION_APPROACH_SYMMETRICAL).to_owned()
+            }
             Assumption::WarmestWaterUnknown => words.say(Key::ASSUMPTION_WARMEST_WATER).to_owned(),
             _ => words.say(Key::ASSUMPTION_OTHER).to_owned(),
         }

@@ -15,6 +15,7 @@ mod caution;
 mod field;
 mod file;
 pub mod language;
+mod laying;
 mod name;
 mod number;
 mod phrase;

@@ -8,6 +8,7 @@ use workbook::book::{
     OwnRating, Paper, Reckoning, RoughnessAge, SurveyWay,
 };
 use workbook::caution::Sheet;
+use workbook::laying::LayingOrder;
 use workbook::units::{Kind, UnitSystem};
 
 /// A thing with a name of its own.
@@ -81,6 +82,10 @@ named! {
     DistanceKind {
         Slope => OPTION_SLOPE,
         Horizontal => OPTION_HORIZONTAL,
+    }
+    LayingOrder {
+        Uphill => OPTION_LAY_UPHILL,
+        Downhill => OPTION_LAY_DOWNHILL,
     }
     SurveyWay {
         Level => OPTION_BY_LEVEL,

@@ -93,6 +93,10 @@ mod tests {
             FigureKey::JetPower,
             FigureKey::Lowest,
             FigureKey::GreatestPower,
+            FigureKey::ClosingError,
+            FigureKey::SubmergenceNeeded,
+            FigureKey::Deflection(3),
+            FigureKey::BendLoss(3),
         ];
         for stretch in &book.line.stretches {
             keys.extend([

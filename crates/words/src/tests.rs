@@ -5,7 +5,9 @@ use hydraulics::quantity::{AbsolutePressure, GaugePressure, Head, Level};
 use samples::*;
 use uom::si::f64::{Pressure, Velocity};
 use uom::si::velocity::meter_per_second;
-use workbook::book::{Book, FittingEntry, FittingKind, OwnPipeEntry, Price, RoughnessAge};
+use workbook::book::{
+    Approach, Book, FittingEntry, FittingKind, OwnPipeEntry, Price, RoughnessAge,
+};
 use workbook::caution::{Caution, Sheet};
 use workbook::demo::demo;
 use workbook::evaluate::evaluate;
@@ -13,7 +15,9 @@ use workbook::field::{Field, OWN_FIELDS};
 use workbook::figure::{Gap, Lack, Place};
 use workbook::format::FileTrouble;
 use workbook::measure::Measure;
+use workbook::relief::Collects;
 use workbook::resolve::Assumption;
+use workbook::resolve::bends::Made;
 use workbook::units::{Kind, UnitSystem};
 use workbook::verdict::{Check, CheckKind, StretchVerdict, Verdict, Weakest};
 
@@ -279,6 +283,20 @@ fn every_caution_and_assumption_speaks() {
             share: 0.123,
             cap: 0.1,
         },
+        Caution::AirCollects {
+            high: vec![3, 7],
+            steepens: vec![],
+        },
+        Caution::AirCollects {
+            high: vec![3],
+            steepens: vec![8, 999],
+        },
+        Caution::WaterStays { drains: vec![2] },
+        Caution::Submergence {
+            found: Head::from_m(-0.1),
+            needed: Head::from_m(0.4),
+        },
+        Caution::SightsDiffer { stations: vec![4] },
         Caution::Invented,
     ];
     let mut titles = Vec::new();
@@ -294,7 +312,7 @@ fn every_caution_and_assumption_speaks() {
         );
     }
     titles.dedup();
-    assert_eq!(titles.len(), 15, "one title for each caution: {titles:?}");
+    assert_eq!(titles.len(), 19, "one title for each caution: {titles:?}");
     let preset = Field::ColdestWater.preset().unwrap();
     for assumption in [
         Assumption::ForebayAtFirstStation(Level::from_m(10.0)),
@@ -307,6 +325,9 @@ fn every_caution_and_assumption_speaks() {
         Assumption::BranchBoreOfLastStretch(m(0.1)),
         Assumption::NoEntrance,
         Assumption::WarmestWaterUnknown,
+        Assumption::BendsRatedAsPipe,
+        Assumption::IntakeApproach(Approach::Lateral),
+        Assumption::IntakeApproach(Approach::Symmetrical),
     ] {
         sentences(&book, &format!("{assumption:?}"), |w| {
             w.assumption(&assumption)
@@ -401,6 +422,11 @@ fn every_working_of_the_demo_names_its_parts() {
         FigureKey::Collapse(1),
         FigureKey::GreatestPower,
         FigureKey::Mass(1),
+        FigureKey::BendLoss(3),
+        FigureKey::Deflection(3),
+        FigureKey::ClosingError,
+        FigureKey::SubmergenceNeeded,
+        FigureKey::ClassNeeded(1),
     ] {
         said(&book, &format!("{key:?}"), |w| w.figure_name(key));
         for input in found.working(key).unwrap().inputs {
@@ -413,6 +439,104 @@ fn every_working_of_the_demo_names_its_parts() {
                 );
             }
         }
+    }
+}
+
+#[test]
+fn every_thing_laid_and_every_cut_speaks() {
+    use workbook::cut::{Cut, CutAt, Proposal};
+    use workbook::laying::{Item, LayingOrder, laying};
+    let book = book();
+    let found = evaluate(&book);
+    let mut items: Vec<Item> = laying(&found, LayingOrder::Uphill)
+        .unwrap()
+        .into_iter()
+        .flat_map(|row| row.items)
+        .collect();
+    for made in [
+        Made::Taken,
+        Made::Smooth { radius: 1.5 },
+        Made::Mitre,
+        Made::ByHand(2),
+    ] {
+        for (plan_deg, vertical_deg) in [(12.0, 3.0), (-12.0, 0.0), (0.0, -5.0)] {
+            items.push(Item::Turn {
+                made,
+                deflection_deg: 12.4,
+                plan_deg,
+                vertical_deg,
+            });
+        }
+    }
+    items.push(Item::Vent(Collects::HighPoint));
+    items.push(Item::Vent(Collects::Steepens { by: 0.123 }));
+    items.push(Item::Drain);
+    items.push(Item::Fitting {
+        id: 3,
+        kind: FittingKind::GateValve,
+        count: Ok(3),
+        note: "DN 200".to_owned(),
+    });
+    let mut spoken = 0;
+    for item in &items {
+        let en = Words::new(Language::English, UnitSystem::Metric).about(&book);
+        if matches!(
+            item,
+            Item::Fitting {
+                kind: FittingKind::Own,
+                ..
+            }
+        ) || en.laid(item).is_none()
+        {
+            continue;
+        }
+        spoken += 1;
+        said(&book, &format!("{item:?}"), |w| w.laid(item).unwrap());
+    }
+    assert!(spoken > 20, "{spoken}");
+    for order in [LayingOrder::Uphill, LayingOrder::Downhill] {
+        said(&book, "order", |w| w.words.name(order).to_owned());
+    }
+    let cut = |place| {
+        Proposal::Cut(Cut {
+            stretch: 1,
+            chainage: at(120.0),
+            at: place,
+            above: "pe100-iso4427/225/sdr17".to_owned(),
+            below: "pe100-iso4427/225/sdr11".to_owned(),
+        })
+    };
+    for proposal in [
+        Proposal::Enough,
+        cut(CutAt::Station(3)),
+        cut(CutAt::NewBelow {
+            station: 3,
+            down: at(12.0),
+        }),
+        Proposal::AllAlong {
+            pipe: "pe100-iso4427/225/sdr11".to_owned(),
+        },
+        Proposal::OwnPipe,
+        Proposal::NoneStronger,
+    ] {
+        sentences(&book, &format!("{proposal:?}"), |w| {
+            w.proposal(1, &proposal)
+        });
+    }
+}
+
+#[test]
+fn every_choice_of_the_survey_has_a_name() {
+    use workbook::book::{BendKind, SurveyWay};
+    let book = book();
+    for way in [SurveyWay::Level, SurveyWay::Angle, SurveyWay::Staff] {
+        said(&book, "way", |w| w.words.name(way).to_owned());
+    }
+    for kind in [BendKind::Smooth, BendKind::Mitre, BendKind::Joints] {
+        said(&book, "bend", |w| w.words.name(kind).to_owned());
+    }
+    for approach in [Approach::Lateral, Approach::Symmetrical] {
+        said(&book, "approach", |w| w.words.name(approach).to_owned());
     }
 }
 

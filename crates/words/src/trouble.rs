@@ -3,6 +3,7 @@
 use crate::about::About;
 use crate::name::capital;
 use crate::text::{self, Key};
+use hydraulics::intake::IntakeError;
 use hydraulics::line::LineError;
 use pipes::OwnPipeError;
 use workbook::figure::{Gap, Lack, Trouble};
@@ -62,6 +63,20 @@ impl About<'_> {
             ),
             Trouble::StationRepeated { station } => {
                 text::trouble_station_repeated(words, &self.station(*station))
+            }
+            Trouble::StationUpright { station } => {
+                text::trouble_station_upright(words, &self.station(*station))
+            }
+            Trouble::NothingToSpread => words.say(Key::TROUBLE_NOTHING_TO_SPREAD).to_owned(),
+            Trouble::Bend { station, why } => {
+                text::trouble_bend(words, &self.station(*station), &words.fitting_error(why))
+            }
+            Trouble::Intake(why) => {
+                let why = words.say(match why {
+                    IntakeError::Height(_) => Key::WHY_FITTING_BORE,
+                    _ => Key::WHY_VELOCITY,
+                });
+                text::trouble_intake(words, why)
             }
             Trouble::TooManyStations { count } => text::trouble_too_many_stations(
                 words,

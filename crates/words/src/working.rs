@@ -62,6 +62,13 @@ impl Words {
             Term::Ovality => Key::TERM_OVALITY,
             Term::Safety => Key::TERM_SAFETY,
             Term::Atmosphere => Key::TERM_ATMOSPHERE,
+            Term::SlopeAbove => Key::TERM_SLOPE_ABOVE,
+            Term::SlopeBelow => Key::TERM_SLOPE_BELOW,
+            Term::PlanTurn => Key::FIELD_STATION_TURN,
+            Term::SurveyedFall => Key::TERM_SURVEYED_FALL,
+            Term::KnownFall => Key::FIELD_KNOWN_FALL,
+            Term::ApproachCoefficient => Key::TERM_APPROACH,
+            Term::IntakeHeight => Key::TERM_INTAKE_HEIGHT,
             Term::GreatestPowerFlow => Key::TERM_GREATEST_POWER_FLOW,
         })
     }
@@ -98,6 +105,15 @@ impl About<'_> {
             FigureKey::FittingLoss(id) => {
                 return text::term_fitting_loss(words, &self.fitting(id));
             }
+            FigureKey::BendLoss(id) => {
+                return text::term_bend_loss(words, &self.station(id));
+            }
+            FigureKey::Deflection(id) => {
+                return text::field_at(words, words.say(Key::FIGURE_DEFLECTION), &self.station(id));
+            }
+            FigureKey::ClosingError => (Key::FIGURE_CLOSING_ERROR, None),
+            FigureKey::SubmergenceNeeded => (Key::FIGURE_SUBMERGENCE_NEEDED, None),
+            FigureKey::ClassNeeded(id) => (Key::FIGURE_CLASS_NEEDED, Some(id)),
             FigureKey::Loss => (Key::FIGURE_HEAD_LOSS, None),
             FigureKey::LossShare => (Key::FIGURE_LOSS_SHARE, None),
             FigureKey::NetHead => (Key::FIGURE_NET_HEAD, None),

@@ -2,7 +2,7 @@
 //! every print.
 
 use crate::book::Id;
-use hydraulics::quantity::{PipeLength, Velocity};
+use hydraulics::quantity::{Head, PipeLength, Velocity};
 
 /// A view of the book.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
@@ -84,6 +84,30 @@ pub enum Caution {
         /// The cap.
         cap: f64,
     },
+    /// Air collects in the pipe: a vent is needed there.
+    AirCollects {
+        /// Stations at high points.
+        high: Vec<Id>,
+        /// Stations where the pipe turns down.
+        steepens: Vec<Id>,
+    },
+    /// Water stays in low points of an emptied pipe, and silt settles there.
+    WaterStays {
+        /// Stations that need a drain.
+        drains: Vec<Id>,
+    },
+    /// The intake lies too high: vortices draw air.
+    Submergence {
+        /// Water over the top of the intake, lowest forebay level.
+        found: Head,
+        /// What the criterion asks.
+        needed: Head,
+    },
+    /// Fore and back sights of a leg do not agree.
+    SightsDiffer {
+        /// The stations the legs lead to.
+        stations: Vec<Id>,
+    },
     /// The site is invented: not to be built from.
     Invented,
 }
@@ -99,9 +123,13 @@ impl Caution {
             }
             Caution::SubAtmospheric { .. }
             | Caution::CollapseAndVents { .. }
+            | Caution::AirCollects { .. }
+            | Caution::Submergence { .. }
             | Caution::Freezing => &[Sheet::Line, Sheet::Pipe, Sheet::Print],
             Caution::VelocityAndSilt { .. } => &[Sheet::Pipe, Sheet::Jets, Sheet::Print],
-            Caution::ThrustAtBends => &[Sheet::Line, Sheet::Print],
+            Caution::ThrustAtBends | Caution::WaterStays { .. } | Caution::SightsDiffer { .. } => {
+                &[Sheet::Line, Sheet::Print]
+            }
             Caution::WeakJoints { .. } => &[Sheet::Line, Sheet::Pipe, Sheet::Jets, Sheet::Print],
             Caution::DepressuriseBeforeWork => &[Sheet::Jets, Sheet::Print],
             Caution::LocalCodesAndReview => &[Sheet::Stream, Sheet::Pipe, Sheet::Print],
@@ -130,6 +158,10 @@ impl Caution {
             | Caution::RegimeUncertain
             | Caution::NearGreatestPower
             | Caution::LossOverCap { .. }
+            | Caution::AirCollects { .. }
+            | Caution::WaterStays { .. }
+            | Caution::Submergence { .. }
+            | Caution::SightsDiffer { .. }
             | Caution::Invented => true,
             Caution::TemperatureAndSun { bare } => !bare.is_empty(),
             Caution::CollapseAndVents { weak } => !weak.is_empty(),

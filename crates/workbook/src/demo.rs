@@ -35,6 +35,9 @@ const STRETCHES: [(u32, &str); 2] = [
     (10, "pe100-iso4427/225/sdr11"),
 ];
 
+/// Turns of the invented line on the plan, by station.
+const TURNS: [(u32, &str); 2] = [(3, "12"), (10, "-9")];
+
 /// The demo book under this key.
 #[must_use]
 pub fn demo(id: &str) -> Book {
@@ -57,6 +60,12 @@ pub fn demo(id: &str) -> Book {
             name: name.to_owned(),
             distance_m: typed(Field::StationDistance(id), distance, "m"),
             level_m: typed(Field::StationLevel(id), level, "m"),
+            plan_turn_deg: TURNS
+                .iter()
+                .find(|(at, _)| *at == id)
+                .map_or_else(Entry::default, |(_, turn)| {
+                    typed(Field::StationTurn(id), turn, "°")
+                }),
             ..Station::default()
         })
         .collect();
@@ -95,6 +104,9 @@ pub fn demo(id: &str) -> Book {
         (Field::BranchK, "0.35", ""),
         (Field::BranchBore, "110", "mm"),
         (Field::JetRating, "16", "bar"),
+        (Field::KnownFall, "67.5", "m"),
+        (Field::BendRadius, "3", ""),
+        (Field::JointDeflection, "6", "°"),
     ] {
         if let Some(entry) = book.entry_mut(field) {
             *entry = typed(field, text, unit);

@@ -2,10 +2,13 @@
 
 use crate::book::Book;
 use crate::figure::Trouble;
-use crate::judge::{Judged, judge};
+use crate::intake::{Intake, intake};
+use crate::judge::{Judged, Places, judge};
 use crate::next::{Next, next};
 use crate::operation::{Operation, operation};
+use crate::relief::{Relief, relief};
 use crate::resolve::{Assumption, Resolved, resolve};
+use crate::stations::{StationFinding, stations};
 use crate::steady::{Steady, steady};
 use crate::transient::{Transient, transient};
 use crate::walls::{Walls, walls};
@@ -23,6 +26,12 @@ pub struct Findings {
     pub transient: Transient,
     /// Stage 4: what the walls bear.
     pub walls: Walls,
+    /// What is found at each station.
+    pub stations: Vec<StationFinding>,
+    /// Where air collects, and where water stays.
+    pub relief: Relief,
+    /// The intake under water.
+    pub intake: Intake,
     /// Stage 5: verdicts and cautions.
     pub judged: Judged,
     /// The next entry the book needs.
@@ -46,12 +55,19 @@ pub fn evaluate(book: &Book) -> Findings {
     let operation = operation(&resolved, &steady);
     let transient = transient(&resolved, &steady);
     let walls = walls(&resolved, &steady, &transient);
+    let stations = stations(&resolved, &steady, &operation, &walls);
+    let relief = relief(&resolved);
+    let intake = intake(&resolved, &steady);
     let judged = judge(
         &resolved,
         &steady,
         &operation,
         &transient,
         &walls,
+        Places {
+            relief: &relief,
+            intake: &intake,
+        },
         book.invented,
     );
     let next = next(book, &resolved, &walls);
@@ -61,6 +77,9 @@ pub fn evaluate(book: &Book) -> Findings {
         operation,
         transient,
         walls,
+        stations,
+        relief,
+        intake,
         judged,
         next,
     }
@@ -73,6 +92,7 @@ impl Findings {
             .assumptions
             .iter()
             .chain(&self.steady.assumptions)
+            .chain(&self.intake.assumptions)
     }
 
     /// Everything that is wrong, each named once.

@@ -6,6 +6,7 @@ use crate::entry::EntryTrouble;
 use crate::field::Field;
 use crate::pipe_copy::PipeCopyError;
 use hydraulics::fittings::FittingError;
+use hydraulics::intake::IntakeError;
 use hydraulics::line::LineError;
 use hydraulics::nozzle::NozzleError;
 use hydraulics::quantity::Level;
@@ -133,6 +134,8 @@ pub enum Trouble {
     },
     /// The line could not be solved.
     Line(LineError),
+    /// The submergence the intake needs cannot be found.
+    Intake(IntakeError),
     /// A nozzle cannot be.
     Nozzle(NozzleError),
     /// Outside the range of the water's properties.
@@ -238,9 +241,10 @@ impl Trouble {
             Trouble::Line(LineError::FlowTooGreat { .. }) => Place::Field(Field::DesignFlow),
             Trouble::Nozzle(_) => Place::Jets,
             Trouble::Water(_) => Place::Field(Field::ColdestWater),
-            Trouble::NoHead { .. } | Trouble::Line(_) | Trouble::TooManyStations { .. } => {
-                Place::Line
-            }
+            Trouble::Intake(_)
+            | Trouble::NoHead { .. }
+            | Trouble::Line(_)
+            | Trouble::TooManyStations { .. } => Place::Line,
         }
     }
 }

@@ -9,14 +9,17 @@
 use crate::book::{Id, Laying};
 use crate::caution::Caution;
 use crate::figure::{Figure, Gap, Lack, Trouble};
+use crate::intake::Intake;
 use crate::measure::Measure;
 use crate::operation::Operation;
+use crate::relief::Relief;
 use crate::resolve::Resolved;
 use crate::steady::Steady;
 use crate::transient::Transient;
 use crate::verdict::{Check, CheckKind, StretchVerdict, Verdict};
 use crate::walls::{StretchWalls, Walls};
 use hydraulics::line::{LineCaution, LineError};
+use hydraulics::quantity::Head;
 use uom::si::f64::Pressure;
 
 /// A flow above this share of the flow of greatest power draws a caution.
@@ -34,6 +37,15 @@ pub struct Judged {
     pub cautions: Vec<Caution>,
 }
 
+/// What is found of places on the line that need something.
+#[derive(Debug, Clone, Copy)]
+pub struct Places<'a> {
+    /// Vents and drains.
+    pub relief: &'a Relief,
+    /// The intake.
+    pub intake: &'a Intake,
+}
+
 /// Stage 5.
 #[must_use]
 pub fn judge(
@@ -42,6 +54,7 @@ pub fn judge(
     operation: &Operation,
     transient: &Transient,
     walls: &Walls,
+    places: Places<'_>,
     invented: bool,
 ) -> Judged {
     let stretches = verdicts(found, steady, transient, walls);
@@ -56,7 +69,9 @@ pub fn judge(
     } else {
         worst.max(Verdict::Unsettled)
     };
-    let cautions = cautions(found, steady, operation, transient, walls, invented);
+    let mut cautions = cautions(found, steady, operation, transient, walls, invented);
+    cautions.extend(place_cautions(found, places));
+    cautions.sort_by_key(|c| !c.is_pressing());
     Judged {
         stretches,
         verdict,
@@ -280,7 +295,40 @@ fn cautions(
         Caution::DepressuriseBeforeWork,
         Caution::LocalCodesAndReview,
     ]);
-    all.sort_by_key(|c| !c.is_pressing());
+    all
+}
+
+/// Cautions of places that need something.
+fn place_cautions(found: &Resolved, places: Places<'_>) -> Vec<Caution> {
+    let mut all = Vec::new();
+    let (high, steepens) = places.relief.vent_stations();
+    if !(high.is_empty() && steepens.is_empty()) {
+        all.push(Caution::AirCollects { high, steepens });
+    }
+    let drains: Vec<Id> = places
+        .relief
+        .drains
+        .iter()
+        .flatten()
+        .map(|d| d.station)
+        .collect();
+    if !drains.is_empty() {
+        all.push(Caution::WaterStays { drains });
+    }
+    if let Ok(s) = &places.intake.submergence
+        && !s.suffices()
+    {
+        all.push(Caution::Submergence {
+            found: s.found,
+            needed: Head::new(s.needed),
+        });
+    }
+    let differ = &found.profile.sights_differ;
+    if !differ.is_empty() {
+        all.push(Caution::SightsDiffer {
+            stations: differ.iter().map(|(id, _)| *id).collect(),
+        });
+    }
     all
 }
 

@@ -2,21 +2,27 @@
 
 pub mod book;
 pub mod caution;
+pub mod cut;
 pub mod demo;
+pub mod edit;
 pub mod entry;
 pub mod evaluate;
 pub mod field;
 pub mod figure;
 pub mod format;
+pub mod intake;
 pub mod judge;
+pub mod laying;
 pub mod measure;
 pub mod next;
 pub mod operation;
 pub mod pipe_copy;
 pub mod reading;
+pub mod relief;
 pub mod report;
 pub mod resolve;
 pub mod schedule;
+pub mod stations;
 pub mod steady;
 pub mod sweep;
 pub mod transient;

@@ -3,6 +3,7 @@
 
 use crate::figure::{CloneGap, Figure, Gap, Trouble};
 use crate::resolve::{JetSpec, Resolved};
+use crate::stations::{Running, at_points};
 use crate::steady::{Steady, line_loss, set_of};
 use hydraulics::line::{Line, NozzleTemplate, PowerCurve, Solved};
 use hydraulics::quantity::Head;
@@ -24,6 +25,8 @@ pub struct JetSet {
     pub loss: Head,
     /// Power in all open jets.
     pub power: Power,
+    /// The running line at each station.
+    pub stations: Vec<Running>,
 }
 
 /// How the line runs.
@@ -86,5 +89,6 @@ fn jet_set(open: u32, solved: &Solved) -> JetSet {
         net_head: solved.net_head,
         loss: line_loss(&solved.grade) + solved.branch_loss,
         power: solved.jet_power,
+        stations: at_points(&solved.grade),
     }
 }

@@ -9,6 +9,8 @@ use crate::book::Book;
 use crate::evaluate::Findings;
 use crate::figure::{Figure, Gap};
 use crate::measure::Measure;
+use crate::relief::Collects;
+use crate::resolve::bends::Made;
 use crate::schedule::schedule;
 use crate::units::Kind;
 use crate::verdict::{Check, CheckKind, Verdict, Weakest};
@@ -89,8 +91,24 @@ pub struct Report {
     /// Lengths below atmospheric pressure in running: from and to, along the
     /// pipe.
     pub below_atmosphere_m: Vec<(f64, f64)>,
+    /// How the survey closes, where a known fall is entered.
+    pub closing: Option<ClosingReport>,
+    /// Water over the top of the intake at the lowest forebay level.
+    pub intake_submergence_m: Option<f64>,
+    /// What Gordon's criterion asks.
+    pub intake_submergence_needed_m: Option<f64>,
     /// Every set of open jets.
     pub jet_sets: Vec<JetSetReport>,
+    /// Stations, down the line.
+    pub stations: Vec<StationReport>,
+    /// Turns of the line, and how the pipe is turned.
+    pub turns: Vec<TurnReport>,
+    /// Places where air collects: a vent is needed.
+    pub vents: Vec<VentReport>,
+    /// Low points: a drain is needed.
+    pub drains: Vec<DrainReport>,
+    /// Changes of bore between stretches.
+    pub reducers: Vec<ReducerReport>,
     /// Stretch by stretch, down the line.
     pub stretches: Vec<StretchReport>,
     /// Fittings.
@@ -118,6 +136,100 @@ pub struct JetSetReport {
     pub head_loss_m: f64,
     /// Power in the open jets.
     pub jet_power_w: f64,
+}
+
+/// How a survey closes on a known fall.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct ClosingReport {
+    /// Fall from the first station to the last as surveyed.
+    pub surveyed_fall_m: f64,
+    /// The known fall.
+    pub known_fall_m: f64,
+    /// The first less the second.
+    pub error_m: f64,
+    /// Length of the legs it was spread over, where it was.
+    pub spread_over_m: Option<f64>,
+}
+
+/// One station.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct StationReport {
+    /// Its number in the book.
+    pub station: u32,
+    /// Its name.
+    pub name: String,
+    /// Chainage along the pipe.
+    pub at_m: f64,
+    /// Horizontal distance from the first station.
+    pub horizontal_m: f64,
+    /// Level of the pipe's axis.
+    pub level_m: f64,
+    /// Highest forebay level above the axis.
+    pub static_head_m: Option<f64>,
+    /// The same as gauge pressure.
+    pub standing_pressure_pa: Option<f64>,
+    /// Level of the grade line with all jets open.
+    pub grade_line_m: Option<f64>,
+    /// Running gauge pressure with all jets open.
+    pub running_pressure_pa: Option<f64>,
+    /// Level of the grade line with 1, 2, ... jets open.
+    pub grade_line_by_jets_m: Vec<f64>,
+    /// Running gauge pressure with 1, 2, ... jets open.
+    pub running_pressure_by_jets_pa: Vec<f64>,
+    /// Standing pressure over what the pipe may bear at its warmest wall.
+    pub share_used: Option<f64>,
+}
+
+/// The turn of the line at a station.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct TurnReport {
+    /// The station.
+    pub station: u32,
+    /// Chainage.
+    pub at_m: f64,
+    /// Turn in the vertical, above zero where the pipe steepens downhill.
+    pub vertical_deg: f64,
+    /// Turn on the plan, to the left below zero.
+    pub plan_deg: Option<f64>,
+    /// True deflection.
+    pub deflection_deg: Option<f64>,
+    /// "joints", "smooth", "mitre", or "fitting N".
+    pub made: Option<String>,
+    /// Loss coefficient of the bend the survey asks for.
+    pub loss_coefficient: Option<f64>,
+}
+
+/// A place where air collects.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct VentReport {
+    /// The station.
+    pub station: u32,
+    /// Chainage.
+    pub at_m: f64,
+    /// Whether it is a high point; else the pipe turns down there.
+    pub high_point: bool,
+}
+
+/// A low point.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct DrainReport {
+    /// The station.
+    pub station: u32,
+    /// Chainage.
+    pub at_m: f64,
+}
+
+/// A change of bore between two stretches.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct ReducerReport {
+    /// Chainage.
+    pub at_m: f64,
+    /// Bore above.
+    pub from_bore_m: f64,
+    /// Bore below.
+    pub to_bore_m: f64,
+    /// One outside diameter: a step in the bore, no reducer to order.
+    pub step_only: bool,
 }
 
 /// One stretch.
@@ -151,6 +263,8 @@ pub struct StretchReport {
     pub standing_pressure_pa: Option<f64>,
     /// The same as head of water.
     pub standing_head_m: Option<f64>,
+    /// Class needed for it, at the temperature the pipe's rating is given at.
+    pub class_needed_pa: Option<f64>,
     /// Pressure the pipe may bear at the warmest wall.
     pub allowed_pressure_pa: Option<f64>,
     /// Pressure the weakest part may bear.
@@ -188,6 +302,8 @@ pub struct OrderReport {
     pub piece_m: f64,
     /// How many.
     pub pieces: u32,
+    /// Joints between the pieces that lie in the stretch.
+    pub joints: u32,
 }
 
 /// One check.
@@ -265,8 +381,12 @@ struct Noting<'a> {
 
 impl Noting<'_> {
     fn take<T>(&mut self, name: &str, figure: &Figure<T>, si: impl Fn(&T) -> f64) -> Option<f64> {
+        self.figure(name, figure).map(si)
+    }
+
+    fn figure<'f, T>(&mut self, name: &str, figure: &'f Figure<T>) -> Option<&'f T> {
         match figure {
-            Ok(value) => Some(si(value)),
+            Ok(value) => Some(value),
             Err(gap) => {
                 let state = match gap {
                     Gap::Unsettled(_) => "unsettled",
@@ -325,6 +445,61 @@ pub fn report(book: &Book, found: &Findings, say: Sayings<'_>) -> Report {
             .flatten()
             .map(|s| (s.from.m(), s.to.m()))
             .collect(),
+        closing: n
+            .figure("closing", &found.resolved.profile.closing)
+            .copied()
+            .flatten()
+            .map(|c| ClosingReport {
+                surveyed_fall_m: c.surveyed.m(),
+                known_fall_m: c.known.m(),
+                error_m: c.error.m(),
+                spread_over_m: c.spread_over.map(PipeLength::m),
+            }),
+        intake_submergence_m: n.take("intake_submergence_m", &found.intake.submergence, |s| {
+            s.found.m()
+        }),
+        intake_submergence_needed_m: found
+            .intake
+            .submergence
+            .as_ref()
+            .ok()
+            .map(|s| s.needed.get::<meter>()),
+        stations: stations(found),
+        turns: turns(found),
+        vents: n
+            .figure("vents", &found.relief.vents)
+            .map(|vents| {
+                vents
+                    .iter()
+                    .map(|v| VentReport {
+                        station: v.station,
+                        at_m: v.at.m(),
+                        high_point: v.why == Collects::HighPoint,
+                    })
+                    .collect()
+            })
+            .unwrap_or_default(),
+        drains: found
+            .relief
+            .drains
+            .iter()
+            .flatten()
+            .map(|d| DrainReport {
+                station: d.station,
+                at_m: d.at.m(),
+            })
+            .collect(),
+        reducers: plan
+            .reducers
+            .iter()
+            .flatten()
+            .map(|r| ReducerReport {
+                at_m: r.at.m(),
+                from_bore_m: r.from.get::<meter>(),
+                to_bore_m: r.to.get::<meter>(),
+                step_only: r.step_only,
+            })
+            .collect(),
         jet_sets: found
             .operation
             .sets
@@ -371,6 +546,57 @@ pub fn report(book: &Book, found: &Findings, say: Sayings<'_>) -> Report {
     }
 }
 
+fn stations(found: &Findings) -> Vec<StationReport> {
+    let usable = &found.resolved.profile.usable;
+    usable
+        .iter()
+        .zip(&found.stations)
+        .map(|(s, f)| {
+            let sets = f.sets.as_ref().map_or(&[][..], |sets| &sets[..]);
+            StationReport {
+                station: s.id,
+                name: s.name.clone(),
+                at_m: s.chainage.m(),
+                horizontal_m: s.horizontal.m(),
+                level_m: s.level.m(),
+                static_head_m: f.static_head.as_ref().ok().map(|h| h.m()),
+                standing_pressure_pa: f.standing.as_ref().ok().map(|p| p.pa()),
+                grade_line_m: f.running.as_ref().ok().map(|r| r.grade.m()),
+                running_pressure_pa: f.running.as_ref().ok().map(|r| r.pressure.pa()),
+                grade_line_by_jets_m: sets.iter().map(|r| r.grade.m()).collect(),
+                running_pressure_by_jets_pa: sets.iter().map(|r| r.pressure.pa()).collect(),
+                share_used: f.share.as_ref().ok().copied(),
+            }
+        })
+        .collect()
+}
+
+fn turns(found: &Findings) -> Vec<TurnReport> {
+    let mut losses = found.steady.bends.iter().peekable();
+    found
+        .resolved
+        .turns
+        .iter()
+        .map(|turn| {
+            let loss = losses.next_if(|(station, _)| *station == turn.station);
+            TurnReport {
+                station: turn.station,
+                at_m: turn.at.m(),
+                vertical_deg: turn.vertical_deg(),
+                plan_deg: turn.plan_deg.as_ref().ok().copied(),
+                deflection_deg: turn.deflection_deg.as_ref().ok().copied(),
+                made: turn.made.as_ref().ok().map(|made| match made {
+                    Made::Taken => "joints".to_owned(),
+                    Made::Smooth { .. } => "smooth".to_owned(),
+                    Made::Mitre => "mitre".to_owned(),
+                    Made::ByHand(id) => format!("fitting {id}"),
+                }),
+                loss_coefficient: loss.and_then(|(_, l)| l.as_ref().ok()).map(|l| l.k),
+            }
+        })
+        .collect()
+}
+
 fn stretch(
     found: &Findings,
     plan: &crate::schedule::Schedule,
@@ -414,6 +640,9 @@ fn stretch(
         standing_head_m: order
             .and_then(|o| o.highest_static.as_ref().ok())
             .map(|h| h.m()),
+        class_needed_pa: wall
+            .and_then(|w| w.class_needed.as_ref().ok())
+            .map(|p| p.pa()),
         allowed_pressure_pa: wall.and_then(|w| {
             n.take(&name("allowed_pressure_pa"), &w.allowable, |a| {
                 a.pressure.get::<pascal>()
@@ -446,6 +675,7 @@ fn stretch(
                         coil: x.kind == pipes::SupplyKind::Coil,
                         piece_m: x.piece.get::<meter>(),
                         pieces: x.pieces,
+                        joints: x.joints,
                     })
                     .collect()
             })
@@ -534,6 +764,20 @@ mod tests {
             .map(|(k, _)| k)
             .collect();
         assert!(nulls.is_empty(), "{nulls:?}");
+        assert_eq!(r.stations.len(), 15);
+        for station in &r.stations {
+            let json = serde_json::to_value(station).unwrap();
+            assert!(json.as_object().unwrap().values().all(|v| !v.is_null()));
+            assert_eq!(station.grade_line_by_jets_m.len(), 2);
+        }
+        assert_eq!(r.turns.len(), 13);
+        assert_eq!(
+            r.turns
+                .iter()
+                .filter(|t| t.loss_coefficient.is_some())
+                .count(),
+            2
+        );
         assert_eq!(exit_code(Verdict::Unsettled), 3);
     }
 

@@ -7,7 +7,7 @@ pub mod own_pipe;
 pub mod parts;
 pub mod profile;
 
-use crate::book::{Book, BoreSizing, NozzleKind, RoughnessAge};
+use crate::book::{Approach, Book, BoreSizing, NozzleKind, RoughnessAge};
 use crate::entry::{Entry, EntryTrouble};
 use crate::field::{Field, Preset};
 use crate::figure::{Figure, Gap, Trouble};
@@ -48,6 +48,8 @@ pub enum Assumption {
     WarmestWaterUnknown,
     /// The bends that come from the survey are rated as the pipe is.
     BendsRatedAsPipe,
+    /// How the water comes to the intake.
+    IntakeApproach(Approach),
 }
 
 /// Levels of the forebay.
@@ -120,6 +122,10 @@ pub struct Resolved {
     pub fittings: Vec<PlacedFitting>,
     /// The turn at every station between two legs.
     pub turns: Vec<Turn>,
+    /// Steepening at which air collects, fall per length.
+    pub air_slope_change: Figure<f64>,
+    /// How the water comes to the intake.
+    pub intake_approach: Approach,
     /// Nozzles.
     pub jets: Figure<JetSpec>,
     /// Water as cold as it gets: the most viscous, so the most is lost.
@@ -243,6 +249,7 @@ pub fn resolve(book: &Book) -> Resolved {
     let stretches = parts::stretches(r, &profile);
     let fittings = parts::fittings(r, &profile, &stretches);
     let turns = bends::turns(r, &profile, &stretches);
+    let air_slope_change = r.needed(Field::AirSlopeChange);
     let jets = jets(r);
     let (cold_water, warm_water) = waters(r);
     let warmest_wall = warmest_wall(r);
@@ -255,7 +262,6 @@ pub fn resolve(book: &Book) -> Resolved {
         Field::ColdestWall,
         Field::BendRadius,
         Field::JointDeflection,
-        Field::AirSlopeChange,
     ] {
         let _ = r.optional(field);
     }
@@ -272,6 +278,8 @@ pub fn resolve(book: &Book) -> Resolved {
         stretches,
         fittings,
         turns,
+        air_slope_change,
+        intake_approach: book.limits.intake_approach,
         jets,
         cold_water,
         warm_water,

@@ -2,7 +2,10 @@
 
 use crate::book::{Book, Id, Laying};
 use crate::evaluate::Findings;
-use crate::figure::{CloneGap, Figure};
+use crate::figure::{CloneGap, Figure, Gap, Lack};
+use crate::relief::{Drain, Vent};
+use crate::resolve::Resolved;
+use crate::resolve::bends::Made;
 use crate::resolve::parts::PlacedFitting;
 use crate::sweep::class;
 use crate::verdict::StretchVerdict;
@@ -21,6 +24,9 @@ pub struct Order {
     pub piece: Length,
     /// How many, the spare share included.
     pub pieces: u32,
+    /// Joints between the pieces that lie in the stretch; those at its ends
+    /// are not counted.
+    pub joints: u32,
     /// Mass of one.
     pub piece_mass: Mass,
 }
@@ -61,6 +67,40 @@ pub struct Line {
     pub spare: f64,
 }
 
+/// A change of bore between two stretches.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Reducer {
+    /// The stretch above.
+    pub above: Id,
+    /// The stretch below.
+    pub below: Id,
+    /// The station it sits at.
+    pub station: Option<Id>,
+    /// Where it is.
+    pub at: PipeLength,
+    /// Bore above.
+    pub from: Length,
+    /// Bore below.
+    pub to: Length,
+    /// Whether both pipes have one outside diameter: they join end to end with
+    /// a step in the bore, and no reducer is ordered.
+    pub step_only: bool,
+}
+
+/// Bends from the survey that are alike.
+#[derive(Debug, Clone, PartialEq)]
+pub struct BendGroup {
+    /// The pipe they go into.
+    pub pipe: Arc<Pipe>,
+    /// Smooth, with its radius, or mitre.
+    pub made: Made,
+    /// Deflection to a whole degree.
+    pub angle_deg: f64,
+    /// Their stations, down the line, with the true deflection of each,
+    /// degree.
+    pub stations: Vec<(Id, f64)>,
+}
+
 /// The schedule.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Schedule {
@@ -68,6 +108,14 @@ pub struct Schedule {
     pub lines: Vec<(Id, Figure<Line>)>,
     /// Fittings.
     pub fittings: Vec<PlacedFitting>,
+    /// Changes of bore between stretches, down the line.
+    pub reducers: Figure<Vec<Reducer>>,
+    /// Bends from the survey, by pipe, kind and angle.
+    pub bends: Figure<Vec<BendGroup>>,
+    /// Places that need a vent.
+    pub vents: Figure<Vec<Vent>>,
+    /// Places that need a drain.
+    pub drains: Figure<Vec<Drain>>,
     /// Length in all.
     pub length: Figure<PipeLength>,
     /// Mass of pipe in all.
@@ -89,6 +137,10 @@ pub fn schedule(book: &Book, findings: &Findings) -> Schedule {
     Schedule {
         lines,
         fittings: findings.resolved.fittings.clone(),
+        reducers: reducers(&findings.resolved),
+        bends: bends(&findings.resolved),
+        vents: findings.relief.vents.clone(),
+        drains: findings.relief.drains.clone(),
         length: findings.resolved.profile.pipe_length.clone(),
         mass,
     }
@@ -126,7 +178,7 @@ fn line(findings: &Findings, index: usize) -> Option<Figure<Line>> {
             walls: walls.clone(),
             verdict: verdict.clone(),
             mass: mass_per_length * length.get(),
-            orders: orders(&pipe, order_length, mass_per_length),
+            orders: orders(&pipe, length, order_length, mass_per_length),
             mass_per_length,
             order_length,
             spare,
@@ -136,7 +188,78 @@ fn line(findings: &Findings, index: usize) -> Option<Figure<Line>> {
     Some(build())
 }
 
-fn orders(pipe: &Pipe, length: PipeLength, mass: LinearMassDensity) -> Vec<Order> {
+/// Changes of bore between stretches.
+pub(crate) fn reducers(found: &Resolved) -> Figure<Vec<Reducer>> {
+    let stations = found.profile.whole()?;
+    let mut all = Vec::new();
+    for pair in found.stretches.windows(2) {
+        let [above, below] = pair else { continue };
+        let (a, b) = (above.pipe.clone_gap()?, below.pipe.clone_gap()?);
+        if a.bore() == b.bore() {
+            continue;
+        }
+        let at = below.span.clone()?.from;
+        let place = stations.partition_point(|s| s.chainage < at);
+        all.push(Reducer {
+            above: above.id,
+            below: below.id,
+            station: stations
+                .get(place)
+                .filter(|s| s.chainage == at)
+                .map(|s| s.id),
+            at,
+            from: a.bore(),
+            to: b.bore(),
+            step_only: a.outside_diameter == b.outside_diameter,
+        });
+    }
+    Ok(all)
+}
+
+/// Bends from the survey, alike ones together.
+fn bends(found: &Resolved) -> Figure<Vec<BendGroup>> {
+    found.profile.whole()?;
+    let mut groups: Vec<BendGroup> = Vec::new();
+    for turn in &found.turns {
+        let made = turn.made.clone()?;
+        if !turn.is_piece() {
+            continue;
+        }
+        let deflection = turn.deflection_deg.clone()?;
+        let stretch = found.stretches.iter().find(|s| Some(s.id) == turn.stretch);
+        let pipe = match stretch {
+            Some(stretch) => Arc::clone(stretch.pipe.clone_gap()?),
+            None => return Err(Gap::Unsettled(Lack::Pipe(1))),
+        };
+        let angle_deg = deflection.round().max(1.0);
+        let alike = |g: &&mut BendGroup| {
+            g.pipe.id == pipe.id && g.made == made && (g.angle_deg - angle_deg).abs() < 0.5
+        };
+        match groups.iter_mut().find(alike) {
+            Some(group) => group.stations.push((turn.station, deflection)),
+            None => groups.push(BendGroup {
+                pipe,
+                made,
+                angle_deg,
+                stations: vec![(turn.station, deflection)],
+            }),
+        }
+    }
+    groups.sort_by(|a, b| {
+        a.pipe
+            .id
+            .cmp(&b.pipe.id)
+            .then(a.angle_deg.total_cmp(&b.angle_deg))
+    });
+    Ok(groups)
+}
+
+fn orders(
+    pipe: &Pipe,
+    laid: PipeLength,
+    length: PipeLength,
+    mass: LinearMassDensity,
+) -> Vec<Order> {
     pipe.supply
         .iter()
         .filter_map(|supply| {
@@ -144,6 +267,7 @@ fn orders(pipe: &Pipe, length: PipeLength, mass: LinearMassDensity) -> Vec<Order
                 kind: supply.kind,
                 piece: supply.length,
                 pieces: pieces(length.get(), supply.length)?,
+                joints: pieces(laid.get(), supply.length)?.saturating_sub(1),
                 piece_mass: mass * supply.length,
             })
         })
@@ -185,6 +309,9 @@ mod tests {
         for line in lines {
             assert!(line.order_length > line.length);
             for order in &line.orders {
+                let laid = f64::from(order.joints) * order.piece.get::<meter>();
+                assert!(laid < line.length.m());
+                assert!(laid + order.piece.get::<meter>() >= line.length.m() - 1e-6);
                 let bought = f64::from(order.pieces) * order.piece.get::<meter>();
                 assert!(bought >= line.order_length.m() - 1e-6);
                 assert!(bought - order.piece.get::<meter>() < line.order_length.m());

@@ -71,6 +71,10 @@ pub struct StretchWalls {
     /// What the pipe may bear at the temperature its rating is given at:
     /// never less, so more than this fails at any temperature.
     pub at_rating: Figure<Allowable>,
+    /// The class the pipe needs at the temperature its rating is given at, for
+    /// the standing pressure at the lowest place of the stretch and the warmest
+    /// wall.
+    pub class_needed: Figure<GaugePressure>,
     /// The weakest of pipe and rated fittings.
     pub bearing: Figure<Bearing>,
     /// Fittings of the stretch with no rating entered.
@@ -123,6 +127,10 @@ fn one(
         let wall = found.warmest_wall.clone()?;
         allowable_at(stretch, pipe, wall)
     });
+    let class_needed = standing.clone().and_then(|s| {
+        let factor = allowable.clone_gap()?.factor;
+        Ok(GaugePressure::new(s.pressure.get() / factor))
+    });
     let at_rating = stretch
         .pipe
         .clone_gap()
@@ -155,6 +163,7 @@ fn one(
         standing,
         allowable,
         at_rating,
+        class_needed,
         bearing,
         unrated,
         jets_unrated: is_last && found.jets.as_ref().is_ok_and(|j| j.rating.is_none()),

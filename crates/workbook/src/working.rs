@@ -5,8 +5,10 @@
 
 use crate::book::Id;
 use crate::evaluate::Findings;
+use crate::field::Field;
 use crate::figure::{CloneGap, Figure, Gap, Lack};
 use crate::measure::Measure;
+use crate::resolve::bends::Turn;
 use crate::steady::roughness;
 use crate::units::Kind;
 use hydraulics::constants::STANDARD_GRAVITY_M_S2;
@@ -30,6 +32,16 @@ pub enum FigureKey {
     FrictionLoss(Id),
     /// Loss of a fitting.
     FittingLoss(Id),
+    /// Loss of a bend from the survey, by its station.
+    BendLoss(Id),
+    /// True deflection at a station.
+    Deflection(Id),
+    /// Closing error of the survey.
+    ClosingError,
+    /// Submergence the intake needs.
+    SubmergenceNeeded,
+    /// Class a stretch needs.
+    ClassNeeded(Id),
     /// Head lost in all.
     Loss,
     /// The same as a share of gross head.
@@ -165,6 +177,20 @@ pub enum Term {
     Atmosphere,
     /// Flow of greatest power.
     GreatestPowerFlow,
+    /// Slope of the leg above a station, below the horizontal.
+    SlopeAbove,
+    /// Slope of the leg below a station, below the horizontal.
+    SlopeBelow,
+    /// Turn of the line on the plan.
+    PlanTurn,
+    /// Fall of the line as surveyed.
+    SurveyedFall,
+    /// Known fall of the line.
+    KnownFall,
+    /// Coefficient of the approach to the intake, s/m^0.5.
+    ApproachCoefficient,
+    /// Height of the intake's opening.
+    IntakeHeight,
 }
 
 /// One number put in.
@@ -224,6 +250,11 @@ impl Findings {
             FigureKey::Velocity(id) => self.velocity_working(id),
             FigureKey::FrictionLoss(id) => self.friction_working(id),
             FigureKey::FittingLoss(id) => self.fitting_working(id),
+            FigureKey::BendLoss(id) => self.bend_working(id),
+            FigureKey::Deflection(id) => self.deflection_working(id),
+            FigureKey::ClosingError => self.closing_working(),
+            FigureKey::SubmergenceNeeded => self.submergence_working(),
+            FigureKey::ClassNeeded(id) => self.class_needed_working(id),
             FigureKey::Loss | FigureKey::LossShare => self.loss_working(key),
             FigureKey::NetHead => self.net_head_working(),
             FigureKey::JetVelocity
@@ -379,6 +410,99 @@ impl Findings {
                 gravity(),
             ],
             result: Measure::new(loss.k * v * v / (2.0 * STANDARD_GRAVITY_M_S2), Kind::Head),
+        })
+    }
+
+    fn turn(&self, station: Id) -> Figure<&Turn> {
+        let turns = &self.resolved.turns;
+        turns.iter().find(|t| t.station == station).ok_or_else(|| {
+            let broken = self.resolved.profile.broken.clone();
+            broken.unwrap_or(Gap::needs(Field::StationDistance(station)))
+        })
+    }
+
+    fn bend_working(&self, station: Id) -> Figure<Working> {
+        let turn = self.turn(station)?;
+        let (_, loss) = self
+            .steady
+            .bends
+            .iter()
+            .find(|(at, _)| *at == station)
+            .ok_or(Gap::needs(Field::StationTurn(station)))?;
+        let loss = loss.clone()?;
+        let velocity = self.run(turn.stretch.unwrap_or(1))?.velocity;
+        let v = velocity.get::<uom::si::velocity::meter_per_second>();
+        Ok(Working {
+            formula: "h = K V² / (2 g)",
+            sources: vec![loss.source.to_owned()],
+            inputs: vec![
+                number("K", Term::LossCoefficient, loss.k),
+                input("V", Term::Velocity, velocity),
+                gravity(),
+            ],
+            result: Measure::new(loss.k * v * v / (2.0 * STANDARD_GRAVITY_M_S2), Kind::Head),
+        })
+    }
+
+    fn deflection_working(&self, station: Id) -> Figure<Working> {
+        let turn = self.turn(station)?;
+        let angle = |x: f64| Measure::new(x, Kind::Angle);
+        Ok(Working {
+            formula: "cos θ = cos α₁ cos α₂ cos h + sin α₁ sin α₂",
+            sources: vec!["survey as entered".to_owned()],
+            inputs: vec![
+                input("α₁", Term::SlopeAbove, angle(turn.above_deg)),
+                input("α₂", Term::SlopeBelow, angle(turn.below_deg)),
+                input("h", Term::PlanTurn, angle(turn.plan_deg.clone()?)),
+            ],
+            result: angle(turn.deflection_deg.clone()?),
+        })
+    }
+
+    fn closing_working(&self) -> Figure<Working> {
+        let closing = self.resolved.profile.closing.clone()?;
+        let closing = closing.ok_or(Gap::needs(Field::KnownFall))?;
+        Ok(Working {
+            formula: "e = Δz − Δz_known",
+            sources: vec!["survey as entered".to_owned()],
+            inputs: vec![
+                input("Δz", Term::SurveyedFall, closing.surveyed),
+                input("Δz_known", Term::KnownFall, closing.known),
+            ],
+            result: closing.error.into(),
+        })
+    }
+
+    fn submergence_working(&self) -> Figure<Working> {
+        let found = self.intake.submergence.clone()?;
+        let needed = found.needed.get::<meter>();
+        let height = found.height.get::<meter>();
+        Ok(Working {
+            formula: "S = c V √D",
+            sources: vec![hydraulics::intake::SOURCE.to_owned()],
+            inputs: vec![
+                number("c", Term::ApproachCoefficient, found.coefficient()),
+                input("V", Term::Velocity, found.velocity),
+                input("D", Term::IntakeHeight, Measure::new(height, Kind::Bore)),
+            ],
+            result: Measure::new(needed, Kind::Head),
+        })
+    }
+
+    fn class_needed_working(&self, id: Id) -> Figure<Working> {
+        let wall = self.wall(id)?;
+        let allowable = wall.allowable.clone_gap()?;
+        Ok(Working {
+            formula: "p_n = p / f_t",
+            sources: vec![
+                "careful rule after EN 805 (DP ≤ PFA), by analogy with water supply".to_owned(),
+                allowable.source.clone(),
+            ],
+            inputs: vec![
+                input("p", Term::Standing, wall.standing.clone()?.pressure),
+                number("f_t", Term::TemperatureFactor, allowable.factor),
+            ],
+            result: wall.class_needed.clone()?.into(),
         })
     }
 
@@ -699,6 +823,7 @@ mod tests {
     use crate::book::Book;
     use crate::demo::demo;
     use crate::evaluate::evaluate;
+    use hydraulics::math::{acos, cos, sin};
 
     fn keys(stretches: &[Id], fittings: &[Id]) -> Vec<FigureKey> {
         let mut keys = vec![
@@ -713,6 +838,10 @@ mod tests {
             FigureKey::JetPower,
             FigureKey::Lowest,
             FigureKey::GreatestPower,
+            FigureKey::ClosingError,
+            FigureKey::SubmergenceNeeded,
+            FigureKey::Deflection(3),
+            FigureKey::BendLoss(3),
         ];
         for id in stretches {
             keys.extend([
@@ -726,6 +855,7 @@ mod tests {
                 FigureKey::QuickRise(*id),
                 FigureKey::Collapse(*id),
                 FigureKey::Mass(*id),
+                FigureKey::ClassNeeded(*id),
             ]);
         }
         keys.extend(fittings.iter().map(|id| FigureKey::FittingLoss(*id)));
@@ -818,6 +948,28 @@ mod tests {
             2.0 * get(&w, "E") / (1.0 - nu * nu) * slender * slender * slender * oval * oval * oval
                 / get(&w, "S"),
         );
+
+        let w = found.working(FigureKey::Deflection(3)).unwrap();
+        let rad = |s: &str| get(&w, s) * pi / 180.0;
+        let (a, b, h) = (rad("α₁"), rad("α₂"), rad("h"));
+        let cosine = cos(a) * cos(b) * cos(h) + sin(a) * sin(b);
+        near(w.result.value, acos(cosine) * 180.0 / pi);
+
+        let w = found.working(FigureKey::BendLoss(3)).unwrap();
+        let v = get(&w, "V");
+        near(w.result.value, get(&w, "K") * v * v / (2.0 * get(&w, "g")));
+
+        let w = found.working(FigureKey::ClosingError).unwrap();
+        near(w.result.value, get(&w, "Δz") - get(&w, "Δz_known"));
+
+        let w = found.working(FigureKey::SubmergenceNeeded).unwrap();
+        near(
+            w.result.value,
+            get(&w, "c") * get(&w, "V") * get(&w, "D").sqrt(),
+        );
+
+        let w = found.working(FigureKey::ClassNeeded(2)).unwrap();
+        near(w.result.value, get(&w, "p") / get(&w, "f_t"));
 
         let w = found.working(FigureKey::QuickRise(1)).unwrap();
         near(w.result.value, get(&w, "a") * get(&w, "V") / get(&w, "g"));

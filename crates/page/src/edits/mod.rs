@@ -8,22 +8,12 @@ pub mod pipes;
 pub mod stations;
 pub mod stretches;
 
-use workbook::Book;
-use workbook::book::Id;
-
-/// A number no item of the list has.
-fn free_id(ids: impl Iterator<Item = Id>) -> Id {
-    ids.max().unwrap_or(0).saturating_add(1)
-}
-
-/// The place of a station in the line.
-fn place_of(book: &Book, station: Id) -> Option<usize> {
-    book.line.stations.iter().position(|s| s.id == station)
-}
+use workbook::edit::{free_id, place_of};
 
 #[cfg(test)]
 pub(crate) mod check {
-    use super::*;
+    use super::place_of;
+    use workbook::Book;
 
     /// What every edit must leave as it found it.
     pub(crate) fn is_whole(book: &Book) -> bool {

@@ -1,10 +1,11 @@
 //! The choice of pipe, and pipes of the user's own.
 
 use super::free_id;
-use std::collections::HashSet;
 use workbook::Book;
 use workbook::book::{Id, OwnPipeEntry};
-use workbook::pipe_copy::{PipeCopy, differs};
+pub use workbook::edit::drop_unused_copies as drop_unused;
+use workbook::edit::keep_copy;
+use workbook::pipe_copy::differs;
 
 /// The name a stretch calls a pipe of the user's own by.
 #[must_use]
@@ -16,12 +17,8 @@ pub fn own_name(id: Id) -> String {
 /// the book. A copy the book has already stands, whatever the catalogue says
 /// now. Returns whether the pipe is known.
 pub fn choose(book: &mut Book, pipe: &str, stretch: Option<Id>) -> bool {
-    let own = book.own_pipes.iter().any(|p| own_name(p.id) == pipe);
-    if !own && book.pipes.iter().all(|p| p.id != pipe) {
-        let Some(found) = pipes::catalogue().find(pipe) else {
-            return false;
-        };
-        book.pipes.push(PipeCopy::of(found));
+    if !keep_copy(book, pipe) {
+        return false;
     }
     for s in &mut book.line.stretches {
         if stretch.is_none_or(|id| id == s.id) {
@@ -30,17 +27,6 @@ pub fn choose(book: &mut Book, pipe: &str, stretch: Option<Id>) -> bool {
     }
     drop_unused(book);
     true
-}
-
-/// Drops the copies no stretch uses.
-pub fn drop_unused(book: &mut Book) {
-    let used: HashSet<&str> = book
-        .line
-        .stretches
-        .iter()
-        .filter_map(|s| s.pipe.as_deref())
-        .collect();
-    book.pipes.retain(|p| used.contains(p.id.as_str()));
 }
 
 /// Takes the catalogue's present figures for a pipe the book has a copy of.

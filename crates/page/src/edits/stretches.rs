@@ -1,42 +1,9 @@
 //! Stretches of the line.
 
-use super::{free_id, place_of};
+use super::place_of;
 use workbook::Book;
-use workbook::book::{Id, StretchEntry};
-
-/// Whether a new stretch may begin at this station: within the line, where
-/// none begins yet.
-#[must_use]
-pub fn may_split_at(book: &Book, station: Id) -> bool {
-    let inside = place_of(book, station)
-        .is_some_and(|place| place > 0 && place + 1 < book.line.stations.len());
-    inside
-        && book
-            .line
-            .stretches
-            .iter()
-            .all(|s| s.from_station != station)
-}
-
-/// Begins a new stretch at this station, laid and piped as the one it parts.
-/// Returns its number.
-pub fn split_at(book: &mut Book, station: Id) -> Option<Id> {
-    if !may_split_at(book, station) {
-        return None;
-    }
-    let place = place_of(book, station)?;
-    let parted = book
-        .line
-        .stretches
-        .iter()
-        .rposition(|s| place_of(book, s.from_station).is_some_and(|p| p < place))?;
-    let id = free_id(book.line.stretches.iter().map(|s| s.id));
-    let mut stretch: StretchEntry = book.line.stretches[parted].clone();
-    stretch.id = id;
-    stretch.from_station = station;
-    book.line.stretches.insert(parted + 1, stretch);
-    Some(id)
-}
+use workbook::book::Id;
+pub use workbook::edit::{may_split_at, split_at};
 
 /// Takes a stretch out; the one above runs on in its place, and at the head
 /// the one below. A line keeps one stretch. Returns whether it was taken out.

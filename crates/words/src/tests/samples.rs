@@ -1,6 +1,7 @@
 //! One of each thing that can be wrong or missing.
 
 use hydraulics::fittings::FittingError;
+use hydraulics::intake::IntakeError;
 use hydraulics::line::{LineError, Point};
 use hydraulics::nozzle::NozzleError;
 use hydraulics::quantity::{Head, Level, PipeLength};
@@ -279,6 +280,10 @@ pub(super) fn troubles() -> Vec<Trouble> {
             fall_m: -3.0,
         },
         Trouble::StationRepeated { station },
+        Trouble::StationUpright { station },
+        Trouble::NothingToSpread,
+        Trouble::Intake(IntakeError::Velocity(velocity)),
+        Trouble::Intake(IntakeError::Height(m(0.0))),
         Trouble::TooManyStations { count: 2001 },
         Trouble::StretchStart { stretch },
         Trouble::FittingStation { fitting },
@@ -329,6 +334,11 @@ pub(super) fn troubles() -> Vec<Trouble> {
         fitting_errors()
             .into_iter()
             .map(|why| Trouble::Fitting { fitting, why }),
+    );
+    all.extend(
+        fitting_errors()
+            .into_iter()
+            .map(|why| Trouble::Bend { station, why }),
     );
     all.extend(nozzle_errors().into_iter().map(Trouble::Nozzle));
     all.extend(line_errors().into_iter().map(Trouble::Line));
