@@ -12,8 +12,10 @@
 
 mod about;
 mod caution;
+pub mod csv;
 mod field;
 mod file;
+mod import;
 pub mod language;
 mod laying;
 mod name;

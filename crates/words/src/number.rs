@@ -11,6 +11,7 @@ mod tests;
 
 use crate::Words;
 use rule::{leading_place, most_decimals, rule};
+use workbook::export::Cell;
 use workbook::measure::Measure;
 use workbook::reading::DecimalMark;
 use workbook::units::Kind;
@@ -108,10 +109,29 @@ impl Words {
     /// The same without unit, for a column whose head names it.
     #[must_use]
     pub fn value(self, measure: impl Into<Measure>) -> String {
-        let measure = measure.into();
-        let Some(x) = self.shown(measure) else {
-            return NONE.to_owned();
+        match self.plain(measure.into()) {
+            Some(plain) => dress(&plain, self.mark),
+            None => NONE.to_owned(),
+        }
+    }
+
+    /// The same as a number for a spreadsheet, with the decimals it is shown
+    /// with; empty where there is no finite number.
+    #[must_use]
+    pub fn cell(self, measure: Measure) -> Cell {
+        let Some(plain) = self.plain(measure) else {
+            return Cell::Empty;
         };
+        let decimals = plain.split_once('.').map_or(0, |(_, d)| d.len());
+        plain
+            .parse()
+            .map_or(Cell::Empty, |value| Cell::Number { value, decimals })
+    }
+
+    /// The value in its unit with the decimals of its kind, a point, and no
+    /// grouping.
+    fn plain(self, measure: Measure) -> Option<String> {
+        let x = self.shown(measure)?;
         let rule = rule(measure.kind, self.units);
         let most = most_decimals(measure.kind);
         let mut plain = fixed(x, rule.decimals(x, most));
@@ -119,7 +139,11 @@ impl Words {
         if let Ok(rounded) = plain.parse::<f64>() {
             plain = fixed(x, rule.decimals(rounded, most));
         }
-        dress(if rule.trim { trimmed(&plain) } else { &plain }, self.mark)
+        Some(if rule.trim {
+            trimmed(&plain).to_owned()
+        } else {
+            plain
+        })
     }
 
     /// A figure with its unit and every digit that means something.

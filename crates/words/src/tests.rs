@@ -21,6 +21,7 @@ use workbook::resolve::bends::Made;
 use workbook::units::{Kind, UnitSystem};
 use workbook::verdict::{Check, CheckKind, StretchVerdict, Verdict, Weakest};
 
+mod imports;
 mod samples;
 
 /// A book with one of everything that can be named.
