@@ -263,6 +263,7 @@ impl Words {
                     Reckoning::FromPrevious => Key::NOTE_GUESSED_FROM_PREVIOUS,
                 })
                 .to_owned(),
+            Note::StaffBooked => self.say(Key::NOTE_STAFF_BOOKED).to_owned(),
             Note::LegsLost { rows } => text::note_legs_lost(self, *rows),
             Note::SatelliteHeights => {
                 text::note_satellite_heights(self, &self.metres(HEIGHT_ERROR_M))

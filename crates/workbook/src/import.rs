@@ -21,7 +21,7 @@ pub mod thin;
 pub use decode::Encoding;
 pub use note::{Fault, Note, Obstacle, Refusal, RowFault};
 
-use crate::book::{DistanceKind, Id, Reckoning, Station};
+use crate::book::{Book, DistanceKind, Id, Reckoning, Station, SurveyWay};
 use crate::entry::Entry;
 use crate::field::Field;
 use crate::reading::DecimalMark;
@@ -228,8 +228,8 @@ impl ImportedLine {
     /// must take [`ImportedLine::distance_kind`] and
     /// [`ImportedLine::reckoning`] with them.
     ///
-    /// A station holds name, distance and level; [`ImportedLine::carried`]
-    /// says what else the rows hold.
+    /// A row without a level is levelled by its sights, or else by its staff
+    /// readings, where it has them; the first of a line has a level.
     #[must_use]
     pub fn stations(&self, first_id: Id) -> Vec<Station> {
         let entry = |amount: &Option<Amount>, kind| {
@@ -239,28 +239,99 @@ impl ImportedLine {
         };
         (first_id..)
             .zip(&self.rows)
-            .map(|(id, row)| Station {
-                id,
-                name: row.name.clone(),
-                distance_m: entry(&row.distance, Kind::Distance),
-                level_m: entry(&row.level, Kind::Level),
+            .enumerate()
+            .map(|(place, (id, row))| {
+                let way = match (&row.level, &row.fore_sight, &row.staff_fore) {
+                    (None, Some(_), _) if place > 0 => SurveyWay::Angle,
+                    (None, None, Some(_)) if place > 0 => SurveyWay::Staff,
+                    _ => SurveyWay::Level,
+                };
+                Station {
+                    id,
+                    name: row.name.clone(),
+                    way,
+                    distance_m: entry(&row.distance, Kind::Distance),
+                    level_m: entry(&row.level, Kind::Level),
+                    fore_sight_deg: entry(&row.fore_sight, Kind::Angle),
+                    back_sight_deg: entry(&row.back_sight, Kind::Angle),
+                    staff_back_m: entry(&row.staff_back, Kind::Distance),
+                    staff_fore_m: entry(&row.staff_fore, Kind::Distance),
+                    plan_turn_deg: entry(&row.plan_turn, Kind::Angle),
+                    ..Station::default()
+                }
             })
             .collect()
     }
 
-    /// What the rows hold beside name, distance and level.
+    /// Puts these rows into a book in place of its stations. What stood at
+    /// the first and last station stands there again; other fittings, and
+    /// stretches but the first, have lost their place and go: [`Displaced`]
+    /// says how many would.
+    ///
+    /// Nothing happens, and none is given back, where there are fewer than two
+    /// rows.
+    pub fn put_into(&self, book: &mut Book) -> Option<Displaced> {
+        let first_id = crate::edit::free_id(book.line.stations.iter().map(|s| s.id));
+        let stations = self.stations(first_id);
+        let (Some(first), Some(last), true) =
+            (stations.first(), stations.last(), stations.len() >= 2)
+        else {
+            return None;
+        };
+        let (first, last) = (first.id, last.id);
+        let displaced = Displaced::of(book);
+        let head = book.line.stations.first().map(|s| s.id);
+        let foot = book.line.stations.last().map(|s| s.id);
+        book.line.fittings.retain_mut(|fitting| {
+            let at = Some(fitting.at_station);
+            fitting.at_station = if at == head { first } else { last };
+            at == head || at == foot
+        });
+        book.line.stretches.truncate(1);
+        if let Some(only) = book.line.stretches.first_mut() {
+            only.from_station = first;
+        }
+        book.line.stations = stations;
+        book.line.distance_kind = self.distance_kind;
+        book.line.reckoning = self.reckoning;
+        crate::edit::drop_unused_copies(book);
+        Some(displaced)
+    }
+}
+
+/// What loses its place when a survey is put in place of a book's stations.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+pub struct Displaced {
+    /// Stations that hold anything.
+    pub stations: usize,
+    /// Fittings at stations between the first and the last.
+    pub fittings: usize,
+    /// Stretches but the first.
+    pub stretches: usize,
+}
+
+impl Displaced {
+    /// What would, of this book.
     #[must_use]
-    pub fn carried(&self) -> Vec<Meaning> {
-        [
-            Meaning::ForeSight,
-            Meaning::BackSight,
-            Meaning::StaffBack,
-            Meaning::StaffFore,
-            Meaning::PlanTurn,
-        ]
-        .into_iter()
-        .filter(|m| self.rows.iter().any(|r| r.amount(*m).is_some()))
-        .collect()
+    pub fn of(book: &Book) -> Displaced {
+        let head = book.line.stations.first().map(|s| s.id);
+        let foot = book.line.stations.last().map(|s| s.id);
+        let between = |id: Id| Some(id) != head && Some(id) != foot;
+        Displaced {
+            stations: book
+                .line
+                .stations
+                .iter()
+                .filter(|s| crate::resolve::profile::begun(s))
+                .count(),
+            fittings: book
+                .line
+                .fittings
+                .iter()
+                .filter(|f| between(f.at_station))
+                .count(),
+            stretches: book.line.stretches.len().saturating_sub(1),
+        }
     }
 }
 

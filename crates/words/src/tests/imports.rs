@@ -183,6 +183,7 @@ fn notes() -> Vec<Note> {
         notes.extend([
             Note::Above { rows: count },
             Note::EmptyRows { rows: count },
+            Note::StaffBooked,
             Note::LegsLost { rows: count },
             Note::FixesLeftOut {
                 first: faults().pop().unwrap(),

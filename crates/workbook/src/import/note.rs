@@ -227,6 +227,9 @@ pub enum Note {
     DistanceKindTaken(DistanceKind),
     /// Nothing says whether distances run or are legs: told by the figures.
     ReckoningGuessed(Reckoning),
+    /// Each back reading of the staff stands in the row of the point sighted
+    /// back to, as in a levelling book: read with the row below.
+    StaffBooked,
     /// Leg distances of rows left out are missing from the line, which is
     /// shorter than surveyed.
     LegsLost {

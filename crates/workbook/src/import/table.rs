@@ -203,6 +203,25 @@ struct Settled {
     notes: Vec<Note>,
 }
 
+/// Whether staff readings stand as in a levelling book: the first point is
+/// only sighted back to, the last only forward.
+fn booked(rows: &[ImportedRow]) -> bool {
+    let (Some(first), Some(last)) = (rows.first(), rows.last()) else {
+        return false;
+    };
+    first.staff_back.is_some()
+        && first.staff_fore.is_none()
+        && last.staff_back.is_none()
+        && last.staff_fore.is_some()
+}
+
+/// Moves each back reading to the row of the point levelled with it.
+fn read_down(rows: &mut [ImportedRow]) {
+    for i in (1..rows.len()).rev() {
+        rows[i].staff_back = rows[i - 1].staff_back.take();
+    }
+}
+
 impl Table {
     fn figures(&self) -> &[Record] {
         self.rows.get(self.layout.data..).unwrap_or_default()
@@ -260,6 +279,11 @@ impl Table {
             left_out.dedup();
         }
         let mut notes = settled.notes;
+        let mut rows = rows;
+        if booked(&rows) {
+            read_down(&mut rows);
+            notes.push(Note::StaffBooked);
+        }
         let (reckoning, _) = settled.reckoning;
         if reckoning == Reckoning::FromPrevious && !left_out.is_empty() {
             notes.push(Note::LegsLost {

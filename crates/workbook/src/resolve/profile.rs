@@ -138,7 +138,7 @@ impl Profile {
 }
 
 /// Whether a row holds anything.
-fn begun(station: &Station) -> bool {
+pub(crate) fn begun(station: &Station) -> bool {
     [
         &station.distance_m,
         &station.level_m,

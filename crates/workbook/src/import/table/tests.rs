@@ -1,5 +1,6 @@
 use super::*;
-use crate::import::Fault;
+use crate::book::SurveyWay;
+use crate::import::{Displaced, Fault};
 use crate::reading::Unreadable;
 use crate::units::{Kind, UnitSystem};
 use proptest::prelude::*;
@@ -248,14 +249,25 @@ fn chainages_with_a_plus_are_read() {
 }
 
 #[test]
-fn angles_staff_and_turns_are_carried() {
+fn angles_staff_and_turns_become_stations() {
     let line = take(
         "Peg;Slope distance (m);Fore sight (%);Back sight (deg);Deflection (deg)\n\
          A;;;;\nB;20;-12;6,9;\nC;25;-10 %;5,5°;-15\n",
     );
+    let stations = line.stations(1);
+    // The first of a line has a level, whatever the row holds.
+    assert_eq!(stations[0].way, SurveyWay::Level);
+    assert_eq!(stations[1].way, SurveyWay::Angle);
+    let fore = stations[1]
+        .fore_sight_deg
+        .usable(Kind::Angle)
+        .unwrap()
+        .unwrap();
+    assert!((fore + 6.842_773).abs() < 1e-6);
+    assert_eq!(stations[1].fore_sight_deg.text, "-12");
     assert_eq!(
-        line.carried(),
-        [Meaning::ForeSight, Meaning::BackSight, Meaning::PlanTurn]
+        stations[2].plan_turn_deg.usable(Kind::Angle),
+        Ok(Some(-15.0))
     );
     assert_eq!(line.distance_kind, DistanceKind::Slope);
     let row = &line.rows[1];
@@ -266,9 +278,62 @@ fn angles_staff_and_turns_are_carried() {
     let entry = line.rows[2].back_sight.as_ref().unwrap().entry(Kind::Angle);
     assert_eq!(entry.usable(Kind::Angle), Ok(Some(5.5)));
     let staff = take("Dist (m);BS (m);FS (m)\n0;;\n20;1,25;3,40\n");
-    assert_eq!(staff.carried(), [Meaning::StaffBack, Meaning::StaffFore]);
+    let stations = staff.stations(1);
+    assert_eq!(stations[1].way, SurveyWay::Staff);
+    assert_eq!(
+        stations[1].staff_back_m.usable(Kind::Distance),
+        Ok(Some(1.25))
+    );
+    assert_eq!(
+        stations[1].staff_fore_m.usable(Kind::Distance),
+        Ok(Some(3.4))
+    );
     let slope = preview("Dist (m);slope\n0;5\n20;4\n");
     assert_eq!(slope.obstacles, [Obstacle::SlopeUnit { column: 1 }]);
+}
+
+#[test]
+fn a_levelling_book_is_read_down() {
+    let booked = take("Dist (m);BS (m);FS (m)\n0;1,25;\n20;0,90;3,40\n30;;2,10\n");
+    assert!(booked.notes.contains(&Note::StaffBooked));
+    let readings: Vec<_> = booked
+        .stations(1)
+        .iter()
+        .map(|s| (s.staff_back_m.text.clone(), s.staff_fore_m.text.clone()))
+        .collect();
+    let expected = [("", ""), ("1,25", "3,40"), ("0,90", "2,10")];
+    for ((back, fore), (want_back, want_fore)) in readings.iter().zip(expected) {
+        assert_eq!((back.as_str(), fore.as_str()), (want_back, want_fore));
+    }
+}
+
+#[test]
+fn a_survey_takes_the_place_of_the_stations() {
+    let line = take("Distance (m),Level (m)\n0,100\n50,80\n90,60\n");
+    let mut book = crate::demo::demo("demo");
+    let before = Displaced::of(&book);
+    assert!(before.stations > 2 && before.stretches > 0);
+    let displaced = line.put_into(&mut book).unwrap();
+    assert_eq!(displaced, before);
+    assert_eq!(book.line.stations.len(), 3);
+    assert_eq!(book.line.stretches.len(), 1);
+    let ids: Vec<_> = book.line.stations.iter().map(|s| s.id).collect();
+    assert!(
+        book.line
+            .fittings
+            .iter()
+            .all(|f| ids.contains(&f.at_station))
+    );
+    assert!(book.line.stretches[0].pipe.is_some());
+    assert_eq!(crate::evaluate(&book).resolved.profile.usable.len(), 3);
+    // One row is no line.
+    let short = ImportedLine {
+        rows: line.rows[..1].to_vec(),
+        ..line
+    };
+    let untouched = book.clone();
+    assert_eq!(short.put_into(&mut book), None);
+    assert_eq!(book, untouched);
 }
 
 #[test]
