@@ -4,6 +4,7 @@ use crate::parts::banners::Banners;
 use crate::parts::books::BooksDialog;
 use crate::parts::drawing_full::DrawingFull;
 use crate::parts::drawing_panel::DrawingPanel;
+use crate::parts::import::ImportDialog;
 use crate::parts::next_entry::NextEntry;
 use crate::parts::tabs::Tabs;
 use crate::parts::title_block::TitleBlock;
@@ -85,6 +86,7 @@ pub fn App() -> impl IntoView {
             <Tabs/>
         </div>
         <BooksDialog/>
+            <ImportDialog/>
         <WorkingDialog/>
         <DrawingFull/>
     }

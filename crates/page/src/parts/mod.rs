@@ -6,6 +6,7 @@ pub mod cautions;
 pub mod drawing_full;
 pub mod drawing_panel;
 pub mod figures;
+pub mod import;
 pub mod line_drawing;
 pub mod next_entry;
 pub mod own_pipe;

@@ -96,6 +96,16 @@ pub fn open_dialog(id: &str) {
     }
 }
 
+/// Empties the field of this id.
+pub fn clear(id: &str) {
+    let element = super::window()
+        .document()
+        .and_then(|d| d.get_element_by_id(id));
+    if let Some(area) = element.and_then(|e| e.dyn_into::<web_sys::HtmlTextAreaElement>().ok()) {
+        area.set_value("");
+    }
+}
+
 /// Closes the dialog of this id.
 pub fn close_dialog(id: &str) {
     if let Some(dialog) = dialog(id)

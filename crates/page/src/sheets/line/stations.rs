@@ -198,6 +198,14 @@ pub(super) fn stations() -> AnyView {
             >
                 {say(Key::DO_ADD_STATION)}
             </button>
+            <button
+                type="button"
+                class="button"
+                data-test="import-open"
+                on:click=|_| crate::parts::import::open()
+            >
+                {say(Key::DO_IMPORT)}
+            </button>
         </div>
     }
     .into_any()
