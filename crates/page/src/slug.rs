@@ -53,6 +53,12 @@ pub fn file_name(name: &str, revision: u64) -> String {
     format!("{stem}-r{revision}.fallwright.json")
 }
 
+/// A file name for one of a book's lists as a table.
+#[must_use]
+pub fn csv_name(name: &str, list: &str, revision: u64) -> String {
+    file_name(name, revision).replace(".fallwright.json", &format!("-{list}.csv"))
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;

@@ -3,12 +3,14 @@
 //! [`Words::mark`].
 
 use crate::Words;
+use crate::name::capital;
 use crate::text::{self, Key};
 use pipes::SupplyKind;
 use workbook::Book;
 use workbook::book::Id;
 use workbook::export::{Cell, Csv, Heading, Table};
 use workbook::figure::Figure;
+use workbook::laying::Row;
 use workbook::measure::Measure;
 use workbook::schedule::{Line, Order, Schedule};
 use workbook::units::Kind;
@@ -43,13 +45,7 @@ const SCHEDULE: [(Key, Option<Kind>); 21] = [
 /// of it. A stretch that cannot be ordered yet has its reason in its row.
 #[must_use]
 pub fn schedule(words: Words, book: &Book, schedule: &Schedule) -> Table {
-    let headings = SCHEDULE
-        .iter()
-        .map(|(name, kind)| Heading {
-            name: words.say(*name).to_owned(),
-            unit: kind.map_or("", |k| words.unit(k)).to_owned(),
-        })
-        .collect();
+    let headings = headings(words, &SCHEDULE);
     let mut rows: Vec<Vec<Cell>> = schedule
         .lines
         .iter()
@@ -78,6 +74,65 @@ pub fn schedule(words: Words, book: &Book, schedule: &Schedule) -> Table {
     }
     rows.push(vec![Cell::text(words.say(Key::PRINT_NOT_FOR_BUILDING))]);
     Table { headings, rows }
+}
+
+/// Headings of the laying list, as those of the schedule.
+const LAYING: [(Key, Option<Kind>); 9] = [
+    (Key::SCHEDULE_STATION, None),
+    (Key::FIGURE_CHAINAGE, Some(Kind::Distance)),
+    (Key::FIGURE_LEVEL, Some(Kind::Level)),
+    (Key::LAY_HERE, None),
+    (Key::LAY_NEXT, None),
+    (Key::SCHEDULE_LENGTH, Some(Kind::Distance)),
+    (Key::LAY_SLOPE, Some(Kind::Angle)),
+    (Key::SCHEDULE_DESIGNATION, None),
+    (Key::SCHEDULE_LAYING, None),
+];
+
+/// The laying list: a row for each station, in the order of laying, with what
+/// is laid there and the leg laid next.
+#[must_use]
+pub fn laying(words: Words, book: &Book, rows: &[Row]) -> Table {
+    let about = words.about(book);
+    let rows = rows
+        .iter()
+        .map(|row| {
+            let laid: Vec<String> = row.items.iter().filter_map(|i| about.laid(i)).collect();
+            let mut cells = vec![
+                Cell::Text(capital(&about.station(row.station))),
+                words.cell(row.at.into()),
+                words.cell(row.level.into()),
+                Cell::Text(laid.join("; ")),
+            ];
+            if let Some(leg) = &row.next {
+                let pipe = leg
+                    .pipe
+                    .as_ref()
+                    .map_or_else(|gap| about.gap(gap), |p| p.designation.clone());
+                cells.extend([
+                    Cell::Text(about.station(leg.to)),
+                    words.cell(leg.length.into()),
+                    words.cell(Measure::new(leg.slope_deg, Kind::Angle)),
+                    Cell::Text(pipe),
+                    Cell::text(words.name(leg.laying)),
+                ]);
+            }
+            cells
+        })
+        .collect();
+    Table {
+        headings: headings(words, &LAYING),
+        rows,
+    }
+}
+
+fn headings(words: Words, all: &[(Key, Option<Kind>)]) -> Vec<Heading> {
+    all.iter()
+        .map(|(name, kind)| Heading {
+            name: words.say(*name).to_owned(),
+            unit: kind.map_or("", |k| words.unit(k)).to_owned(),
+        })
+        .collect()
 }
 
 /// The file of a table, with the mark of these words.

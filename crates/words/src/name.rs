@@ -4,11 +4,10 @@ use crate::Words;
 use crate::text::Key;
 use pipes::Material;
 use workbook::book::{
-    Approach, BendKind, BoreSizing, DistanceKind, FittingKind, Laying, NozzleKind, OwnMaterial,
-    OwnRating, Paper, Reckoning, RoughnessAge, SurveyWay,
+    Approach, BendKind, BoreSizing, DistanceKind, FittingKind, Laying, LayingOrder, NozzleKind,
+    OwnMaterial, OwnRating, Paper, PrintParts, Reckoning, RoughnessAge, SurveyWay,
 };
 use workbook::caution::Sheet;
-use workbook::laying::LayingOrder;
 use workbook::units::{Kind, UnitSystem};
 
 /// A thing with a name of its own.
@@ -120,6 +119,11 @@ named! {
     RoughnessAge {
         Aged => SETTING_ROUGHNESS_AGED,
         New => SETTING_ROUGHNESS_NEW,
+    }
+    PrintParts {
+        Both => OPTION_PRINT_BOTH,
+        Schedule => OPTION_PRINT_SCHEDULE,
+        LayingList => OPTION_PRINT_LAYING,
     }
     Paper {
         A4 => SETTING_PAPER_A4,

@@ -445,8 +445,9 @@ fn every_working_of_the_demo_names_its_parts() {
 
 #[test]
 fn every_thing_laid_and_every_cut_speaks() {
+    use workbook::book::LayingOrder;
     use workbook::cut::{Cut, CutAt, Proposal};
-    use workbook::laying::{Item, LayingOrder, laying};
+    use workbook::laying::{Item, laying};
     let book = book();
     let found = evaluate(&book);
     let mut items: Vec<Item> = laying(&found, LayingOrder::Uphill)

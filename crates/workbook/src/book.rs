@@ -682,12 +682,43 @@ pub enum Paper {
     Letter,
 }
 
+/// Which lists print.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum PrintParts {
+    /// The schedule with its findings, and the laying list.
+    #[default]
+    Both,
+    /// The schedule with its findings, for the supplier and the reviewer.
+    Schedule,
+    /// The laying list, for the crew.
+    LayingList,
+}
+
+/// The order in which the pipe is laid.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum LayingOrder {
+    /// From the powerhouse up (common practice: the pipe stands on what is
+    /// already fixed).
+    #[default]
+    Uphill,
+    /// From the forebay down.
+    Downhill,
+}
+
 /// What the print needs beside the figures.
 #[derive(Debug, Clone, PartialEq, Eq, Default, Serialize, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields, default)]
 pub struct PrintSetup {
     /// Sheet size.
     pub paper: Paper,
+    /// Which lists print.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub parts: PrintParts,
+    /// The order in which the crew lays the pipe.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub laid: LayingOrder,
     /// The licensed engineer who reviews it.
     pub reviewer: String,
     /// Their licence.

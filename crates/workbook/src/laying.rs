@@ -1,7 +1,7 @@
 //! The laying list: station by station in the order the crew lays, with the
 //! pipe of each leg and what sits there.
 
-use crate::book::{FittingKind, Id, Laying};
+use crate::book::{FittingKind, Id, Laying, LayingOrder};
 use crate::evaluate::Findings;
 use crate::figure::{CloneGap, Figure};
 use crate::relief::{Collects, Drain};
@@ -11,18 +11,6 @@ use crate::schedule::{Reducer, reducers};
 use hydraulics::quantity::{Level, PipeLength};
 use pipes::Pipe;
 use std::sync::Arc;
-
-/// Which end the crew begins at.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default)]
-pub enum LayingOrder {
-    /// From the powerhouse up: sockets face uphill, and each pipe rests
-    /// against the one below it.
-    #[default]
-    Uphill,
-    /// From the forebay down.
-    Downhill,
-}
-
 /// What is laid at a station.
 #[derive(Debug, Clone, PartialEq)]
 pub enum Item {

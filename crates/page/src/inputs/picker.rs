@@ -11,6 +11,8 @@ pub fn picker(
     now: Signal<String>,
     take: impl Fn(String) + 'static,
 ) -> AnyView {
+    // Drawn anew only where the list itself changes, not with every key.
+    let options = Memo::new(move |_| options.get());
     let options_view = move || {
         options
             .get()

@@ -96,6 +96,15 @@ pub fn open_dialog(id: &str) {
     }
 }
 
+/// Whether the part that told of itself with this event is opened.
+#[must_use]
+pub fn is_open(event: &leptos::ev::Event) -> bool {
+    event
+        .target()
+        .and_then(|t| t.dyn_into::<web_sys::Element>().ok())
+        .is_some_and(|e| e.has_attribute("open"))
+}
+
 /// Empties the field of this id.
 pub fn clear(id: &str) {
     let element = super::window()

@@ -1,6 +1,8 @@
 //! Line: the surveyed stations, water levels, stretches, fittings.
 
+mod cuts;
 mod fittings;
+mod found;
 mod stations;
 mod stretches;
 mod survey;
@@ -79,8 +81,13 @@ pub fn LineSheet() -> impl IntoView {
             Key::LINE_LEVELS,
             view! { <div class="fields">{levels}</div> }.into_any(),
         )}
+        {found::found()}
         {part("survey", Key::LINE_SURVEY, survey::of_line())}
-        {part("stretches", Key::LINE_STRETCHES, stretches::stretches())}
+        {part(
+            "stretches",
+            Key::LINE_STRETCHES,
+            view! { {cuts::cuts()} {stretches::stretches()} }.into_any(),
+        )}
         {part("fittings", Key::LINE_FITTINGS, fittings::fittings())}
         {cautions(Sheet::Line)}
     }

@@ -2,6 +2,7 @@
 //! will print.
 
 mod notes;
+mod pieces;
 mod tables;
 
 use crate::drawing::Size;
@@ -11,17 +12,30 @@ use crate::parts::line_drawing::{drawn, named};
 use crate::parts::title_block::name;
 use crate::platform::file;
 use crate::sheets::head;
+use crate::slug;
 use crate::state::{State, state};
 use leptos::prelude::*;
-use words::{Key, Words, text};
+use words::{Key, Words, csv, text};
 use workbook::Measure;
-use workbook::book::Paper;
+use workbook::book::{LayingOrder, Paper, PrintParts};
+use workbook::laying::laying;
 use workbook::schedule::schedule;
 use workbook::{Book, Findings};
 
 const PAPERS: [(Paper, &str, Key); 2] = [
     (Paper::A4, "a4", Key::SETTING_PAPER_A4),
     (Paper::Letter, "letter", Key::SETTING_PAPER_LETTER),
+];
+
+const PARTS: [(PrintParts, &str, Key); 3] = [
+    (PrintParts::Both, "both", Key::OPTION_PRINT_BOTH),
+    (PrintParts::Schedule, "schedule", Key::OPTION_PRINT_SCHEDULE),
+    (PrintParts::LayingList, "laying", Key::OPTION_PRINT_LAYING),
+];
+
+const LAID: [(LayingOrder, &str, Key); 2] = [
+    (LayingOrder::Uphill, "uphill", Key::OPTION_LAY_UPHILL),
+    (LayingOrder::Downhill, "downhill", Key::OPTION_LAY_DOWNHILL),
 ];
 
 /// Room for the long section on both papers, within their margins, mm.
@@ -40,6 +54,20 @@ pub fn PrintSheet() -> impl IntoView {
                     &PAPERS,
                     |b| b.print.paper,
                     |b, p| b.print.paper = p,
+                )}
+                {choice(
+                    "print-parts",
+                    Key::PRINT_PARTS,
+                    &PARTS,
+                    |b| b.print.parts,
+                    |b, p| b.print.parts = p,
+                )}
+                {choice(
+                    "laid",
+                    Key::LAY_ORDER,
+                    &LAID,
+                    |b| b.print.laid,
+                    |b, p| b.print.laid = p,
                 )}
                 {text_field(
                     "reviewer",
@@ -68,6 +96,22 @@ pub fn PrintSheet() -> impl IntoView {
                 <button
                     type="button"
                     class="button"
+                    data-test="csv-schedule"
+                    on:click=move |_| save_csv(state, PrintParts::Schedule)
+                >
+                    {move || state.words.get().say(Key::LAY_CSV_SCHEDULE)}
+                </button>
+                <button
+                    type="button"
+                    class="button"
+                    data-test="csv-laying"
+                    on:click=move |_| save_csv(state, PrintParts::LayingList)
+                >
+                    {move || state.words.get().say(Key::LAY_CSV_LAYING)}
+                </button>
+                <button
+                    type="button"
+                    class="button"
                     data-test="print-save-file"
                     on:click=move |_| books::save_file(state)
                 >
@@ -87,6 +131,30 @@ pub fn PrintSheet() -> impl IntoView {
     }
 }
 
+/// Hands one of the lists over for a spreadsheet.
+fn save_csv(state: State, part: PrintParts) {
+    let words = state.words.get_untracked();
+    let book = state.book.get_untracked();
+    let findings = state.findings.get_untracked();
+    let (table, list) = match part {
+        PrintParts::LayingList => match laying(&findings, book.print.laid) {
+            Ok(rows) => (csv::laying(words, &book, &rows), "laying"),
+            Err(gap) => {
+                state.tell(words.about(&book).gap(&gap), true);
+                return;
+            }
+        },
+        _ => (
+            csv::schedule(words, &book, &schedule(&book, &findings)),
+            "schedule",
+        ),
+    };
+    let file_name = slug::csv_name(&name(&book, words), list, book.revision);
+    if file::save(&file_name, &csv::file(words, &table), "text/csv") {
+        state.tell(text::state_file_saved(words, &file_name), false);
+    }
+}
+
 /// All that prints.
 fn paper(state: State) -> AnyView {
     let words = state.words.get();
@@ -101,16 +169,33 @@ fn paper(state: State) -> AnyView {
             aria-label=words.say(Key::PRINT_PREVIEW)
         >
         <article class="print-sheet" data-test="print-sheet" lang=words.language.code()>
-            {title_block(words, &book, &findings)} {notes::unsettled(words, &book, &findings)}
-            {section(words, &book, &findings)}
-            {tables::schedule(words, &book, &schedule)}
-            {tables::pressures(words, &book, &schedule)}
-            {tables::fittings(words, &book, &findings)}
-            {tables::nozzles(words, &book, &findings)}
-            {tables::stations(words, &book, &findings)}
+            {title_block(words, &book, &findings)}
+            {(book.print.parts != PrintParts::LayingList)
+                .then(|| {
+                    view! {
+                        {notes::unsettled(words, &book, &findings)}
+                        {section(words, &book, &findings)}
+                        {tables::schedule(words, &book, &schedule)}
+                        {tables::pressures(words, &book, &schedule)}
+                        {pieces::section(words, &book, &findings, &schedule)}
+                        {tables::fittings(words, &book, &findings)}
+                        {tables::nozzles(words, &book, &findings)}
+                        {tables::stations(words, &book, &findings)}
+                    }
+                        .into_any()
+                })}
             {notes::cautions(words, &book, &findings)}
-            {notes::assumptions(words, &book, &findings)}
-            {notes::sources(words, &findings, &schedule)} {notes::review(words, &book)}
+            {(book.print.parts != PrintParts::LayingList)
+                .then(|| {
+                    view! {
+                        {notes::assumptions(words, &book, &findings)}
+                        {notes::sources(words, &findings, &schedule)}
+                        {notes::review(words, &book)}
+                    }
+                        .into_any()
+                })}
+            {(book.print.parts != PrintParts::Schedule)
+                .then(|| pieces::laying(words, &book, &findings))}
         </article>
         </div>
     }
