@@ -108,14 +108,19 @@ pub fn steady(found: &Resolved) -> Steady {
     let jets = found.jets.clone();
     // The flow the fittings' losses are first figured at: bends depend on the
     // pipe's friction factor, and that weakly on the flow.
-    let trial = found.design_flow.clone();
+    // Without one yet they are figured all the same; of a wrong one, not.
+    let trial: Figure<Option<VolumeRate>> = match &found.design_flow {
+        Ok(flow) => Ok(Some(*flow)),
+        Err(Gap::Unsettled(_)) => Ok(None),
+        Err(gap) => Err(gap.clone()),
+    };
     let fittings: Vec<(Id, Figure<FittingLoss>)> = found
         .fittings
         .iter()
         .map(|f| {
             let loss = parts
                 .clone_gap()
-                .and_then(|p| fitting_loss(f, p, found, trial.as_ref().ok()));
+                .and_then(|p| fitting_loss(f, p, found, &trial));
             (f.id, loss)
         })
         .collect();
@@ -126,7 +131,7 @@ pub fn steady(found: &Resolved) -> Steady {
         .map(|turn| {
             let loss = parts
                 .clone_gap()
-                .and_then(|p| bend_loss(turn, p, found, trial.as_ref().ok()));
+                .and_then(|p| bend_loss(turn, p, found, &trial));
             (turn.station, loss)
         })
         .collect();
@@ -298,7 +303,7 @@ fn fitting_loss(
     placed: &PlacedFitting,
     parts: &Parts<'_>,
     found: &Resolved,
-    flow: Option<&VolumeRate>,
+    flow: &Figure<Option<VolumeRate>>,
 ) -> Figure<FittingLoss> {
     let pipe = pipe_at(placed, parts)?;
     let count = placed.count.clone()?;
@@ -321,7 +326,7 @@ fn fitting_loss(
         }
         (_, Shape::Bend { angle_deg, radius }) => {
             let age = found.limits.clone()?.roughness;
-            let factor = bend_factor(pipe, age, flow, &parts.water);
+            let factor = bend_factor(pipe, age, flow.clone()?, &parts.water);
             match factor {
                 Some(f) => fittings::smooth_bend(angle(angle_deg), radius, f),
                 None => Err(FittingError::Bore(pipe.bore())),
@@ -391,7 +396,7 @@ fn bend_loss(
     turn: &Turn,
     parts: &Parts<'_>,
     found: &Resolved,
-    flow: Option<&VolumeRate>,
+    flow: &Figure<Option<VolumeRate>>,
 ) -> Figure<FittingLoss> {
     let made = turn.made.clone()?;
     let angle = Angle::new::<degree>(turn.deflection_deg.clone()?);
@@ -399,7 +404,7 @@ fn bend_loss(
     let loss = match made {
         Made::Smooth { radius } => {
             let age = found.limits.clone()?.roughness;
-            bend_factor(pipe, age, flow, &parts.water)
+            bend_factor(pipe, age, flow.clone()?, &parts.water)
                 .ok_or(FittingError::Bore(pipe.bore()))
                 .and_then(|f| fittings::smooth_bend(angle, radius, f))
         }
@@ -419,12 +424,12 @@ fn bend_loss(
 fn bend_factor(
     pipe: &Pipe,
     age: RoughnessAge,
-    flow: Option<&VolumeRate>,
+    flow: Option<VolumeRate>,
     water: &Water,
 ) -> Option<DarcyFactor> {
     let bore = pipe.bore();
     let area = bore * bore * (std::f64::consts::PI / 4.0);
-    let velocity = flow.map_or_else(|| Velocity::new::<meter_per_second>(2.0), |q| *q / area);
+    let velocity = flow.map_or_else(|| Velocity::new::<meter_per_second>(2.0), |q| q / area);
     let reynolds: ReynoldsNumber =
         reynolds_number(velocity, bore, water.kinematic_viscosity()).ok()?;
     Some(darcy_factor(

@@ -9,11 +9,13 @@
 use hydraulics::friction::colebrook_factors;
 use std::hint::black_box;
 use std::time::{Duration, Instant};
+use workbook::book::Station;
 use workbook::demo::demo;
-use workbook::evaluate;
+use workbook::reading::DecimalMark;
 use workbook::resolve::resolve;
 use workbook::steady::steady;
 use workbook::sweep::Sweep;
+use workbook::{Book, Entry, Field, evaluate};
 
 /// The least time of several runs of each, taken in turns, so that whatever
 /// else the machine does falls on all alike.
@@ -71,9 +73,69 @@ fn friction() -> f64 {
     kernel / N as f64
 }
 
+/// The demo's line with this many stations, turning at each.
+fn long(stations: u32) -> Book {
+    let mut book = demo("long");
+    book.line.fittings.clear();
+    book.line.stretches.truncate(1);
+    let typed = |field: Field, x: f64| {
+        let unit = field.kind().units()[0].symbol;
+        Entry::typed(&format!("{x:.3}"), unit, field.kind(), DecimalMark::Point)
+    };
+    book.line.stations = (1..=stations)
+        .map(|id| {
+            let along = 374.0 * f64::from(id - 1) / f64::from(stations - 1);
+            let wave = if id % 2 == 0 { 0.05 } else { 0.0 };
+            Station {
+                id,
+                distance_m: typed(Field::StationDistance(id), along),
+                level_m: typed(Field::StationLevel(id), 186.2 - 67.6 * along / 374.0 - wave),
+                plan_turn_deg: typed(Field::StationTurn(id), 12.0),
+                ..Station::default()
+            }
+        })
+        .collect();
+    book
+}
+
+/// Long lines: time must grow as the stations do.
+fn long_lines() {
+    let (hundred, five) = (long(100), long(500));
+    let [short_s, long_s, read_s] = least(
+        30,
+        [
+            &mut || {
+                black_box(evaluate(black_box(&hundred)));
+            },
+            &mut || {
+                black_box(evaluate(black_box(&five)));
+            },
+            &mut || {
+                black_box(resolve(black_box(&five)));
+            },
+        ],
+    );
+    line(
+        "evaluation of 500 stations, against 100",
+        long_s / short_s,
+        "5 where time grows as the stations do",
+    );
+    line(
+        "of it, reading the entries and laying the line",
+        read_s / long_s,
+        "",
+    );
+    line(
+        "evaluation, ms per 100 stations of 500 (this machine, this run)",
+        long_s * 1e3 / 5.0,
+        "",
+    );
+}
+
 fn main() {
     println!("{:<64} {:>10}", "ratio", "");
     let one_factor = friction();
+    long_lines();
     let book = demo("bench");
     let found = resolve(&book);
     let mut sweep = Sweep::new(&book);

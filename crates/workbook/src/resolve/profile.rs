@@ -181,8 +181,6 @@ struct Leg {
     kind: DistanceKind,
     distance: f64,
     fall: f64,
-    /// Levelled from the station before, and not by a level of its own.
-    carried: bool,
 }
 
 /// What walking the line gives.
@@ -217,7 +215,7 @@ pub(crate) fn profile(r: &mut Reader<'_>) -> Profile {
     if walked.broken.is_none() && walked.placed.len() < 2 {
         walked.broken = Some(Gap::needs(next_row(r, rows.first().copied())));
     }
-    let closing = close(r, &mut walked);
+    let closing = close(r, &rows, &mut walked);
     let Walked {
         placed: usable,
         broken,
@@ -399,7 +397,6 @@ fn leg(
         kind,
         distance,
         fall,
-        carried: station.way != SurveyWay::Level,
     })
 }
 
@@ -452,29 +449,33 @@ fn placed(
 }
 
 /// How the line closes on the known fall; on wish, spreads the error.
-fn close(r: &mut Reader<'_>, walked: &mut Walked) -> Figure<Option<Closing>> {
+fn close(r: &mut Reader<'_>, rows: &[&Station], walked: &mut Walked) -> Figure<Option<Closing>> {
     let known = r.optional(Field::KnownFall);
-    let carried = walked
-        .legs
+    // The station all those below it are levelled from.
+    let below_first = rows.get(1..).unwrap_or(&[]);
+    let from = below_first
         .iter()
-        .rev()
-        .take_while(|leg| leg.carried)
-        .count();
-    let from = walked.legs.len() - carried;
+        .rposition(|s| s.way == SurveyWay::Level)
+        .map_or(0, |i| i + 1);
+    let carried = rows.len().saturating_sub(from + 1);
     let wished = r.book.line.spread_error;
     let known = match known {
         Ok(Some(known)) => known,
         Ok(None) => return Ok(None),
         Err(gap) => {
             // Levels that rest on it cannot be had either.
-            if wished && carried > 0 && walked.broken.is_none() {
-                walked.broken = Some(gap.clone());
+            if wished && carried > 0 {
+                walked.placed.truncate(from + 1);
+                walked.broken.get_or_insert(gap.clone());
             }
             return Err(gap);
         }
     };
-    if let Some(gap) = &walked.broken {
-        return Err(gap.clone());
+    if let Some(gap) = walked.broken.clone() {
+        if wished {
+            walked.placed.truncate(from + 1);
+        }
+        return Err(gap);
     }
     let (Some(start), Some(end)) = (walked.placed.first(), walked.placed.last()) else {
         return Err(Gap::needs(next_row(r, None)));
@@ -518,8 +519,9 @@ fn close(r: &mut Reader<'_>, walked: &mut Walked) -> Figure<Option<Closing>> {
 
 #[cfg(test)]
 mod tests {
-    use crate::book::{Book, DistanceKind, Reckoning, Station};
+    use crate::book::{Book, DistanceKind, Reckoning, Station, SurveyWay};
     use crate::entry::Entry;
+    use crate::field::Field;
     use crate::figure::{Gap, Trouble};
     use crate::reading::DecimalMark;
     use crate::resolve::resolve;
@@ -566,6 +568,167 @@ mod tests {
         let rows = [("12", "100"), ("62", "60")];
         let found = resolve(&book(DistanceKind::Slope, Reckoning::FromStart, &rows)).profile;
         assert!((found.pipe_length.unwrap().m() - 50.0).abs() < 1e-9);
+    }
+
+    fn typed(field: Field, text: &str) -> Entry {
+        let unit = field.kind().units()[0].symbol;
+        Entry::typed(text, unit, field.kind(), DecimalMark::Point)
+    }
+
+    /// A station at the end of a leg of this length, with two readings.
+    fn leg(id: u32, way: SurveyWay, distance: &str, first: &str, second: &str) -> Station {
+        let mut s = Station {
+            id,
+            way,
+            distance_m: typed(Field::StationDistance(id), distance),
+            ..Station::default()
+        };
+        match way {
+            SurveyWay::Level => s.level_m = typed(Field::StationLevel(id), first),
+            SurveyWay::Angle => {
+                s.fore_sight_deg = typed(Field::StationForeSight(id), first);
+                s.back_sight_deg = typed(Field::StationBackSight(id), second);
+            }
+            SurveyWay::Staff => {
+                s.staff_back_m = typed(Field::StationStaffBack(id), first);
+                s.staff_fore_m = typed(Field::StationStaffFore(id), second);
+            }
+        }
+        s
+    }
+
+    fn line(legs: Vec<Station>) -> Book {
+        let mut book = Book::new("test");
+        book.line.reckoning = Reckoning::FromPrevious;
+        book.line.stations = vec![leg(1, SurveyWay::Level, "", "100", "")];
+        book.line.stations.extend(legs);
+        book
+    }
+
+    // Worked by hand: 50 m at 30 degrees falls 25 m; 12 % of 100 m is 12 m on
+    // the plan; 2.5 m less 0.5 m of staff is 2 m; a rise of 30 degrees.
+    #[test]
+    fn ways_of_survey_mix_in_one_line() {
+        let mut book = line(vec![
+            leg(2, SurveyWay::Angle, "50", "-30", ""),
+            leg(3, SurveyWay::Angle, "100", "-12 %", "12 %"),
+            leg(4, SurveyWay::Staff, "10", "0.5", "2.5"),
+            leg(5, SurveyWay::Angle, "4", "30", ""),
+            leg(6, SurveyWay::Level, "30", "40", ""),
+        ]);
+        book.line.stations[2].distance_kind = Some(DistanceKind::Horizontal);
+        let found = resolve(&book);
+        assert_eq!(found.troubles, vec![]);
+        let levels: Vec<f64> = found.profile.usable.iter().map(|s| s.level.m()).collect();
+        for (got, expected) in levels.iter().zip([100.0, 75.0, 63.0, 61.0, 63.0, 40.0]) {
+            assert!((got - expected).abs() < 1e-9, "{levels:?}");
+        }
+        let third = &found.profile.usable[2];
+        assert!((third.chainage.m() - 50.0 - 10_144f64.sqrt()).abs() < 1e-9);
+        let plan = 50.0 * 0.75f64.sqrt() + 100.0;
+        assert!((third.horizontal.m() - plan).abs() < 1e-9);
+    }
+
+    #[test]
+    fn fore_and_back_sights_are_averaged_and_a_slip_is_named() {
+        let book = line(vec![
+            leg(2, SurveyWay::Angle, "100", "-29.6", "30.4"),
+            leg(3, SurveyWay::Angle, "100", "-30", "-30"),
+        ]);
+        let found = resolve(&book).profile;
+        assert!((found.usable[1].level.m() - 50.0).abs() < 1e-9);
+        assert_eq!(found.sights_differ.len(), 1);
+        assert_eq!(found.sights_differ[0].0, 3);
+    }
+
+    #[test]
+    fn a_pipe_may_stand_upright() {
+        let mut book = line(vec![
+            leg(2, SurveyWay::Level, "10", "90", ""),
+            leg(3, SurveyWay::Angle, "5", "-90", ""),
+            leg(4, SurveyWay::Level, "0", "80", ""),
+            leg(5, SurveyWay::Staff, "3", "0.2", "3.2"),
+        ]);
+        book.line.stations[3].distance_kind = Some(DistanceKind::Horizontal);
+        let found = resolve(&book);
+        assert_eq!(found.troubles, vec![]);
+        let end = found.profile.usable.last().unwrap();
+        assert!(end.horizontal.m() < 1e-6, "{end:?}");
+        assert!((end.chainage.m() - 23.0).abs() < 1e-9);
+        assert!((end.level.m() - 77.0).abs() < 1e-9);
+        // It goes straight on.
+        assert!(
+            found
+                .turns
+                .iter()
+                .all(|t| t.deflection_deg.clone().unwrap() < 1e-3)
+        );
+    }
+
+    #[test]
+    fn a_horizontal_distance_has_no_upright_sight() {
+        let mut book = line(vec![leg(2, SurveyWay::Angle, "10", "-90", "")]);
+        book.line.distance_kind = DistanceKind::Horizontal;
+        assert_eq!(
+            resolve(&book).profile.broken,
+            Some(Gap::Wrong(Trouble::StationUpright { station: 2 }))
+        );
+    }
+
+    // An error of 0.6 m over 20 m and 40 m of legs: 0.2 m and 0.4 m.
+    #[test]
+    fn a_closing_error_is_shown_and_on_wish_spread_by_length() {
+        let mut book = line(vec![
+            leg(2, SurveyWay::Level, "50", "80", ""),
+            leg(3, SurveyWay::Staff, "20", "0", "5.2"),
+            leg(4, SurveyWay::Staff, "40", "0", "10.4"),
+        ]);
+        book.line.known_fall_m = typed(Field::KnownFall, "35");
+        let found = resolve(&book).profile;
+        let closing = found.closing.unwrap().unwrap();
+        assert!((closing.error.m() - 0.6).abs() < 1e-9);
+        assert_eq!(closing.spread_over, None);
+        assert!((found.last_level.unwrap().m() - 64.4).abs() < 1e-9);
+
+        book.line.spread_error = true;
+        let found = resolve(&book).profile;
+        let closing = found.closing.clone().unwrap().unwrap();
+        assert!((closing.spread_over.unwrap().m() - 60.0).abs() < 1e-9);
+        for (place, expected) in [(1, 80.0), (2, 75.0), (3, 65.0)] {
+            let level = found.usable[place].level.m();
+            assert!((level - expected).abs() < 1e-9, "{place}: {level}");
+        }
+        assert!((found.pipe_length.unwrap().m() - 110.0).abs() < 1e-9);
+    }
+
+    #[test]
+    fn an_error_is_spread_over_no_level_that_was_entered() {
+        let mut book = line(vec![
+            leg(2, SurveyWay::Staff, "20", "0", "5"),
+            leg(3, SurveyWay::Level, "50", "80", ""),
+        ]);
+        book.line.known_fall_m = typed(Field::KnownFall, "21");
+        book.line.spread_error = true;
+        let found = resolve(&book);
+        assert_eq!(found.troubles, vec![Trouble::NothingToSpread]);
+        assert!((found.profile.last_level.unwrap().m() - 80.0).abs() < 1e-12);
+        assert_eq!(found.profile.broken, None);
+    }
+
+    #[test]
+    fn a_leg_of_another_kind_counts_from_the_station_before() {
+        let mut book = line(vec![
+            leg(2, SurveyWay::Level, "50", "60", ""),
+            leg(3, SurveyWay::Level, "40", "30", ""),
+            leg(4, SurveyWay::Level, "150", "30", ""),
+        ]);
+        book.line.reckoning = Reckoning::FromStart;
+        book.line.stations[2].distance_kind = Some(DistanceKind::Horizontal);
+        let found = resolve(&book).profile;
+        let chainages: Vec<f64> = found.usable.iter().map(|s| s.chainage.m()).collect();
+        for (got, expected) in chainages.iter().zip([0.0, 50.0, 100.0, 150.0]) {
+            assert!((got - expected).abs() < 1e-9, "{chainages:?}");
+        }
     }
 
     #[test]
