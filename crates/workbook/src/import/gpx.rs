@@ -189,10 +189,10 @@ pub fn open(bytes: &[u8]) -> Result<Gpx, Refusal> {
 /// Whether a file looks like GPX and not like a table: it begins with a tag.
 #[must_use]
 pub fn looks_like_gpx(bytes: &[u8]) -> bool {
-    let plain = bytes.iter().filter(|b| **b != 0 && **b < 0x80);
-    plain
-        .skip_while(|b| b.is_ascii_whitespace())
-        .next()
+    // Byte order marks and the zeros of UTF-16 left aside.
+    bytes
+        .iter()
+        .find(|b| !(**b == 0 || **b >= 0x80 || b.is_ascii_whitespace()))
         .is_some_and(|b| *b == b'<')
 }
 

@@ -1,7 +1,11 @@
 //! Survey files in the forms that other programs write them: each gives the
 //! line, or names the row and the reason. The files are invented; the
 //! geodesics are a library's.
-#![allow(clippy::panic, reason = "a helper of tests fails as a test does")]
+#![allow(
+    clippy::panic,
+    clippy::unwrap_used,
+    reason = "a helper of tests fails as a test does"
+)]
 
 mod csv_files;
 mod geodesics;

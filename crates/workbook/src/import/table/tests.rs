@@ -419,7 +419,7 @@ proptest! {
 
     #[test]
     fn what_is_written_is_read_back(
-        rows in proptest::collection::vec((0u32..50_000_00, 0u32..9000_00), 1..60),
+        rows in proptest::collection::vec((0u32..5_000_000, 0u32..900_000), 1..60),
         comma: bool, semicolon: bool,
     ) {
         let mut running: Vec<u32> = rows.iter().map(|r| r.0).collect();
