@@ -20,6 +20,9 @@ use super::{Fault, Meaning, Refusal, RowFault};
 /// Most fixes of a file: more than a day's walk at one a second.
 pub const MOST_FIXES: usize = 100_000;
 
+/// Most waypoints of a file: each is held against every fix.
+pub const MOST_WAYPOINTS: usize = 5000;
+
 /// Farthest two fixes in a row may lie apart, m: a wrong fix, or no survey.
 pub const LONGEST_LEG_M: f64 = 10_000.0;
 

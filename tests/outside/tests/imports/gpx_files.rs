@@ -94,18 +94,16 @@ fn segments_are_joined_in_order_and_the_gaps_said() {
         (3, "Morning & noon")
     );
     let line = gpx.survey(0, &EVERY_FIX).unwrap();
-    let gaps: Vec<(usize, f64)> = line
-        .notes
-        .iter()
-        .filter_map(|n| match n {
-            Note::Joined { fix, gap_m } => Some((*fix, *gap_m)),
+    let joined = |line: &ImportedLine| {
+        line.notes.iter().find_map(|n| match n {
+            Note::Joined { count, fix, gap_m } => Some((*count, *fix, *gap_m)),
             _ => None,
         })
-        .collect();
-    assert_eq!(gaps.iter().map(|g| g.0).collect::<Vec<_>>(), [21, 22]);
-    // GeographicLib for Python 2.1.
-    assert!((gaps[0].1 - 4.150_234_6).abs() < 1e-6);
-    assert!((gaps[1].1 - 4.253_049_5).abs() < 1e-6);
+    };
+    let (count, fix, gap_m) = joined(&line).unwrap();
+    assert_eq!((count, fix), (2, 22));
+    // GeographicLib for Python 2.1; the gap before fix 21 is 4.150 m.
+    assert!((gap_m - 4.253_049_5).abs() < 1e-6);
     assert!((lengths(&line).last().unwrap() - 228.0755).abs() < 0.006);
     let back = gpx
         .survey(
@@ -118,8 +116,8 @@ fn segments_are_joined_in_order_and_the_gaps_said() {
         .unwrap();
     assert!((lengths(&back).last().unwrap() - 228.0755).abs() < 0.006);
     assert!(back.notes.iter().any(|n| matches!(n, Note::Uphill { .. })));
-    let joined = |n: &&Note| matches!(n, Note::Joined { .. });
-    assert_eq!(back.notes.iter().filter(joined).count(), 2);
+    let (count, fix, _) = joined(&back).unwrap();
+    assert_eq!((count, fix), (2, 22));
 }
 
 #[test]
