@@ -119,7 +119,10 @@ fn swallows_rows(cell: &str, separator: Separator) -> bool {
     let mut lines = cell.split('\n').skip(1).take(1000);
     lines.any(|line| {
         let parts = line.split(char::from(separator.byte()));
-        parts.filter(|p| super::cells::is_number(p)).count() >= 2
+        parts
+            .filter(|p| super::cells::is_number(p))
+            .nth(1)
+            .is_some()
     })
 }
 

@@ -214,10 +214,8 @@ fn rows_are_counted_as_a_spreadsheet_counts_them() {
 
 #[test]
 fn hostile_files_of_ten_megabytes_are_refused_or_read() {
-    for piece in [
-        ",", "\"", "\n", "a\n", "\"\n", "\n1x", "1;", "'", "=", "\t\n",
-    ] {
-        for begin in ["", "\"", "d;z\n0;1\n\"\n"] {
+    for piece in [",", "a\n", "\"\n", "1;"] {
+        for begin in ["", "d;z\n0;1\n\"\n"] {
             let mut text = begin.to_owned();
             text += &piece.repeat((LONGEST - text.len()) / piece.len());
             if let Ok(table) = open(text.as_bytes(), given()) {
