@@ -5,7 +5,7 @@ use crate::Words;
 use crate::name::{Named, capital, lower};
 use crate::text::{self, Key};
 use workbook::book::{DistanceKind, Reckoning};
-use workbook::import::gpx::{HEIGHT_ERROR_M, LineKind, MOST_FIXES, Summary};
+use workbook::import::gpx::{HEIGHT_ERROR_M, LineKind, MOST_FIXES, MOST_WAYPOINTS, Summary};
 use workbook::import::table::{Column, Ground, Separator};
 use workbook::import::{Fault, LONGEST, LONGEST_CELL, Meaning, Note, Obstacle, Refusal, RowFault};
 use workbook::measure::Measure;
@@ -133,8 +133,9 @@ impl Words {
             Refusal::Cut { line } => text::refusal_cut(self, &self.count(*line)),
             Refusal::TooDeep { line } => text::refusal_too_deep(self, &self.count(*line)),
             Refusal::NoTrack => self.say(Key::REFUSAL_NO_TRACK).to_owned(),
-            Refusal::TooManyFixes { .. } => {
-                text::refusal_too_many_fixes(self, &self.count(MOST_FIXES))
+            Refusal::TooManyFixes => text::refusal_too_many_fixes(self, &self.count(MOST_FIXES)),
+            Refusal::TooManyWaypoints => {
+                text::refusal_too_many_waypoints(self, &self.count(MOST_WAYPOINTS))
             }
             Refusal::NoSuchLine => self.say(Key::REFUSAL_NO_SUCH_LINE).to_owned(),
             Refusal::TooFewFixes { fixes } => {
@@ -283,17 +284,19 @@ impl Words {
                 &self.metres(*length_before_m),
                 &self.metres(*length_after_m),
             ),
-            Note::Joined { fix, gap_m } => {
-                text::note_joined(self, &self.count(*fix), &self.metres(*gap_m))
+            Note::Joined { count, fix, gap_m } => {
+                text::note_joined(self, *count, &self.metres(*gap_m), &self.count(*fix))
             }
             Note::FixesLeftOut { first, count } => {
                 text::note_fixes_left_out(self, *count, &self.import_fault(first, &[]))
             }
             Note::Uphill { rise_m } => text::note_uphill(self, &self.metres(*rise_m)),
             Note::Flat => self.say(Key::NOTE_FLAT).to_owned(),
-            Note::Astray { name, distance_m } => {
-                text::note_astray(self, name, &self.metres(*distance_m))
-            }
+            Note::Astray {
+                count,
+                name,
+                distance_m,
+            } => text::note_astray(self, *count, name, &self.metres(*distance_m)),
             Note::Doctype => self.say(Key::NOTE_DOCTYPE).to_owned(),
             _ => self.say(Key::NOTE_OTHER).to_owned(),
         }

@@ -79,7 +79,8 @@ fn every_refusal_says_what_to_do() {
         Refusal::Cut { line: 7 },
         Refusal::TooDeep { line: 7 },
         Refusal::NoTrack,
-        Refusal::TooManyFixes { fixes: 100_001 },
+        Refusal::TooManyFixes,
+        Refusal::TooManyWaypoints,
         Refusal::NoSuchLine,
         Refusal::TooFewFixes { fixes: 1 },
         Refusal::Fix {
@@ -167,16 +168,8 @@ fn notes() -> Vec<Note> {
             length_before_m: 900.0,
             length_after_m: 850.0,
         },
-        Note::Joined {
-            fix: 12,
-            gap_m: 30.0,
-        },
         Note::Uphill { rise_m: 20.0 },
         Note::Flat,
-        Note::Astray {
-            name: "Camp".into(),
-            distance_m: 300.0,
-        },
         Note::Doctype,
     ];
     for count in [1, 3] {
@@ -185,6 +178,16 @@ fn notes() -> Vec<Note> {
             Note::EmptyRows { rows: count },
             Note::StaffBooked,
             Note::LegsLost { rows: count },
+            Note::Joined {
+                count,
+                fix: 12,
+                gap_m: 30.0,
+            },
+            Note::Astray {
+                count,
+                name: "Camp".into(),
+                distance_m: 300.0,
+            },
             Note::FixesLeftOut {
                 first: faults().pop().unwrap(),
                 count,

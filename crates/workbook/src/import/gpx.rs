@@ -20,6 +20,9 @@ use super::{Fault, Meaning, Refusal, RowFault};
 /// Most fixes of a file: more than a day's walk at one a second.
 pub const MOST_FIXES: usize = 100_000;
 
+/// Most waypoints of a file: each is held against every fix.
+pub const MOST_WAYPOINTS: usize = 5000;
+
 /// Farthest two fixes in a row may lie apart, m: a wrong fix, or no survey.
 pub const LONGEST_LEG_M: f64 = 10_000.0;
 
@@ -189,10 +192,10 @@ pub fn open(bytes: &[u8]) -> Result<Gpx, Refusal> {
 /// Whether a file looks like GPX and not like a table: it begins with a tag.
 #[must_use]
 pub fn looks_like_gpx(bytes: &[u8]) -> bool {
-    let plain = bytes.iter().filter(|b| **b != 0 && **b < 0x80);
-    plain
-        .skip_while(|b| b.is_ascii_whitespace())
-        .next()
+    // Byte order marks and the zeros of UTF-16 left aside.
+    bytes
+        .iter()
+        .find(|b| !(**b == 0 || **b >= 0x80 || b.is_ascii_whitespace()))
         .is_some_and(|b| *b == b'<')
 }
 

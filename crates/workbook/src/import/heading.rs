@@ -29,269 +29,37 @@ pub(super) struct Heading {
     pub(super) latitude: bool,
 }
 
-const DISTANCE: &[&str] = &[
-    "distance",
-    "distances",
-    "distancia",
-    "distancias",
-    "dist",
-    "chainage",
-    "chain",
-    "ch",
-    "progresiva",
-    "prog",
-    "abscisa",
-    "absc",
-    "km",
-    "pk",
-    "kp",
-    "length",
-    "longitud",
-    "long",
-    "largo",
-    "leg",
-    "tape",
-    "cinta",
-    "cadenamiento",
-    "kilometraje",
-    "run",
-    "tramo",
-    "d",
-    "l",
-    "sd",
-    "hd",
-    "dh",
-    "di",
-];
-const LEVEL: &[&str] = &[
-    "level",
-    "levels",
-    "elevation",
-    "elev",
-    "el",
-    "ele",
-    "height",
-    "altitude",
-    "alt",
-    "altura",
-    "z",
-    "cota",
-    "cotas",
-    "nivel",
-    "elevacion",
-    "altitud",
-    "rl",
-    "h",
-];
-const ANGLE: &[&str] = &[
-    "angle",
-    "angles",
-    "angulo",
-    "ang",
-    "clinometer",
-    "clino",
-    "clinometro",
-    "inclination",
-    "inclinacion",
-    "tilt",
-    "incl",
-    "eclimetro",
-];
-const SLOPE: &[&str] = &[
-    "slope",
-    "pendiente",
-    "pend",
-    "grade",
-    "gradient",
-    "gradiente",
-];
-const BACK: &[&str] = &[
-    "back",
-    "backsight",
-    "bs",
-    "atras",
-    "reverse",
-    "va",
-    "retro",
-    "espalda",
-];
-const FORE: &[&str] = &[
-    "fore",
-    "foresight",
-    "fs",
-    "adelante",
-    "forward",
-    "frente",
-    "vd",
-];
-const STAFF: &[&str] = &[
-    "staff", "mira", "rod", "lectura", "reading", "hose", "manguera",
-];
-const TURN: &[&str] = &[
-    "deflection",
-    "deflexion",
-    "deflect",
-    "turn",
-    "giro",
-    "quiebre",
-];
-const PLAN: &[&str] = &["plan", "planta", "horizontal", "horiz", "hor"];
-const NAME: &[&str] = &[
-    "name",
-    "nombre",
-    "station",
-    "stations",
-    "sta",
-    "stn",
-    "estacion",
-    "est",
-    "point",
-    "punto",
-    "pt",
-    "pto",
-    "peg",
-    "estaca",
-    "id",
-    "no",
-    "nr",
-    "num",
-    "numero",
-    "number",
-    "n",
-    "#",
-    "vertice",
-    "label",
-    "description",
-    "descripcion",
-    "desc",
-    "remark",
-    "remarks",
-    "note",
-    "notes",
-    "nota",
-    "notas",
-    "obs",
-    "observacion",
-    "observaciones",
-    "comment",
-    "comments",
-    "comentario",
-    "code",
-    "codigo",
-    "item",
-];
+const DISTANCE: &str = "distance distances distancia distancias dist chainage chain ch progresiva prog abscisa \
+    absc km pk kp length longitud long largo leg tape cinta cadenamiento kilometraje run \
+    tramo d l sd hd dh di";
+const LEVEL: &str = "level levels elevation elev el ele height altitude alt altura z cota cotas nivel \
+    elevacion altitud rl h";
+const ANGLE: &str = "angle angles angulo ang clinometer clino clinometro inclination inclinacion tilt incl \
+    eclimetro";
+const SLOPE: &str = "slope pendiente pend grade gradient gradiente";
+const BACK: &str = "back backsight bs atras reverse va retro espalda";
+const FORE: &str = "fore foresight fs adelante forward frente vd";
+const STAFF: &str = "staff mira rod lectura reading hose manguera";
+const TURN: &str = "deflection deflexion deflect turn giro quiebre";
+const PLAN: &str = "plan planta horizontal horiz hor";
+const NAME: &str = "name nombre station stations sta stn estacion est point punto pt pto peg estaca id no nr \
+    nro num numero number n # vertice label description descripcion desc remark remarks note \
+    notes nota notas obs observacion observaciones comment comments comentario code codigo \
+    item";
 /// Differences of level and the like: near a level, and none.
-const NOT_LEVEL: &[&str] = &[
-    "difference",
-    "diff",
-    "diferencia",
-    "dif",
-    "desnivel",
-    "delta",
-    "rise",
-    "fall",
-    "drop",
-    "instrument",
-    "instrumento",
-    "depth",
-    "profundidad",
-];
-const BEARING: &[&str] = &["azimuth", "azimut", "acimut", "bearing", "rumbo"];
-const LATITUDE: &[&str] = &["latitude", "latitud", "lat"];
-const FROM_START: &[&str] = &[
-    "chainage",
-    "ch",
-    "progresiva",
-    "prog",
-    "abscisa",
-    "absc",
-    "pk",
-    "kp",
-    "km",
-    "cumulative",
-    "cum",
-    "total",
-    "accumulated",
-    "acumulada",
-    "acumulado",
-    "acum",
-    "running",
-    "cadenamiento",
-    "kilometraje",
-    "start",
-    "inicio",
-    "origen",
-];
-const FROM_PREVIOUS: &[&str] = &[
-    "leg", "partial", "parcial", "step", "previous", "anterior", "tramo", "interval",
-];
-const ALONG: &[&str] = &[
-    "slope",
-    "inclined",
-    "inclinada",
-    "sd",
-    "di",
-    "tape",
-    "cinta",
-    "along",
-    "pendiente",
-    "sloping",
-];
-const HORIZONTAL: &[&str] = &[
-    "horizontal",
-    "horiz",
-    "hor",
-    "hd",
-    "dh",
-    "plan",
-    "planta",
-    "map",
-    "mapa",
-    "reduced",
-    "reducida",
-];
+const NOT_LEVEL: &str = "difference diff diferencia dif desnivel delta rise fall drop instrument instrumento \
+    depth profundidad";
+const BEARING: &str = "azimuth azimut acimut bearing rumbo";
+const LATITUDE: &str = "latitude latitud lat";
+const FROM_START: &str = "chainage ch progresiva prog abscisa absc pk kp km cumulative cum total accumulated \
+    acumulada acumulado acum running cadenamiento kilometraje start inicio origen";
+const FROM_PREVIOUS: &str = "leg partial parcial step previous anterior tramo interval";
+const ALONG: &str = "slope inclined inclinada sd di tape cinta along pendiente sloping";
+const HORIZONTAL: &str = "horizontal horiz hor hd dh plan planta map mapa reduced reducida";
 /// Words that may stand in brackets behind a heading and change nothing.
-const REMARK: &[&str] = &[
-    "ground",
-    "terrain",
-    "terreno",
-    "natural",
-    "invert",
-    "pipe",
-    "tuberia",
-    "axis",
-    "eje",
-    "from",
-    "desde",
-    "to",
-    "a",
-    "al",
-    "the",
-    "de",
-    "del",
-    "la",
-    "el",
-    "of",
-    "in",
-    "en",
-    "line",
-    "linea",
-    "measured",
-    "medida",
-    "sight",
-    "vista",
-    "left",
-    "right",
-    "derecha",
-    "izquierda",
-    "vertical",
-    "vert",
-    "site",
-    "datum",
-    "local",
-    "top",
-    "bottom",
-];
+const REMARK: &str = "ground terrain terreno natural invert pipe tuberia axis eje from desde to a al the de \
+    del la el of in en line linea measured medida sight vista left right derecha izquierda \
+    vertical vert site datum local top bottom";
 
 /// A unit as written in a heading, a row of units or behind a number.
 pub(super) fn unit(text: &str) -> Option<&'static str> {
@@ -364,6 +132,12 @@ pub(super) fn recognise(text: &str) -> Option<Heading> {
     let folded = fold(text);
     let (outside, inside) = brackets(&folded);
     let mut all = words(&outside);
+    // "N°" and its like: a number sign, no degrees.
+    if let [.., before, "°" | "º"] = all.iter().map(String::as_str).collect::<Vec<_>>()[..]
+        && ["n", "no", "nr", "nro"].contains(&before)
+    {
+        all.pop();
+    }
     let mut said = UnitSaid::No;
     if let Some(inside) = inside {
         if let Some(known) = unit(&inside) {
@@ -384,7 +158,7 @@ pub(super) fn recognise(text: &str) -> Option<Heading> {
     {
         said = UnitSaid::Known(last);
     }
-    let has = |list: &[&str]| all.iter().any(|w| list.contains(&w.as_str()));
+    let has = |list: &str| all.iter().any(|w| stands_in(w, list));
     let is_angle_unit = matches!(said, UnitSaid::Known("°" | "%"));
     let mut heading = Heading {
         meaning: Meaning::LeftOut,
@@ -437,6 +211,11 @@ pub(super) fn recognise(text: &str) -> Option<Heading> {
     Some(heading)
 }
 
+/// Whether a word stands in a list of them.
+fn stands_in(word: &str, list: &str) -> bool {
+    list.split_whitespace().any(|known| known == word)
+}
+
 /// Whether a word has a place in some heading.
 fn is_known(word: &str) -> bool {
     [
@@ -459,7 +238,7 @@ fn is_known(word: &str) -> bool {
         REMARK,
     ]
     .iter()
-    .any(|list| list.contains(&word))
+    .any(|list| stands_in(word, list))
 }
 
 #[cfg(test)]
@@ -501,6 +280,9 @@ mod tests {
             ("horizontal angle", PlanTurn, No),
             ("Station", Name, No),
             ("Estación", Name, No),
+            ("N°", Name, No),
+            ("Pto. Nº", Name, No),
+            ("Nro.", Name, No),
             ("dist_m", Distance, Known("m")),
             ("Level difference (m)", LeftOut, No),
             ("Desnivel", LeftOut, No),

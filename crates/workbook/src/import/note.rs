@@ -64,10 +64,9 @@ pub enum Refusal {
     /// Neither track, nor route, nor two waypoints.
     NoTrack,
     /// More fixes than a line is thinned from.
-    TooManyFixes {
-        /// How many.
-        fixes: usize,
-    },
+    TooManyFixes,
+    /// More waypoints than are held against the fixes.
+    TooManyWaypoints,
     /// The line asked for is not in the file.
     NoSuchLine,
     /// Fewer than two fixes can be used.
@@ -251,11 +250,13 @@ pub enum Note {
         /// Length on the plan after, m.
         length_after_m: f64,
     },
-    /// Segments joined by a straight line.
+    /// Segments joined by straight lines.
     Joined {
-        /// The first fix after the gap, by number.
+        /// How many gaps.
+        count: usize,
+        /// The first fix after the widest, by number.
         fix: usize,
-        /// How wide the gap is on the plan, m.
+        /// How wide that is on the plan, m.
         gap_m: f64,
     },
     /// Fixes left out because of a fault.
@@ -272,11 +273,13 @@ pub enum Note {
     },
     /// Every fix has the same height: drawn on a map without heights.
     Flat,
-    /// A waypoint is too far from the line to name a station.
+    /// Waypoints too far from the line to name a station.
     Astray {
-        /// Its name.
+        /// How many.
+        count: usize,
+        /// The name of the first.
         name: String,
-        /// How far it lies from the line, m.
+        /// How far that lies from the line, m.
         distance_m: f64,
     },
     /// The file declares entities of its own; none was expanded.

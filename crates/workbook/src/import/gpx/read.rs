@@ -7,7 +7,7 @@
 
 use super::super::geodesic::Position;
 use super::super::{LONGEST_CELL, Refusal};
-use super::{Fix, Gpx, Line, LineKind, MOST_FIXES};
+use super::{Fix, Gpx, Line, LineKind, MOST_FIXES, MOST_WAYPOINTS};
 use quick_xml::errors::{Error, SyntaxError};
 use quick_xml::escape::resolve_predefined_entity;
 use quick_xml::events::{BytesStart, Event};
@@ -91,7 +91,8 @@ pub(super) fn read(text: &str) -> Result<Gpx, Refusal> {
             Err(why) => {
                 return Err(Refusal::NotXml {
                     line: line_of(text, reader.error_position()),
-                    why: why.to_string(),
+                    // It may quote a name as long as the file.
+                    why: why.to_string().chars().take(LONGEST_CELL).collect(),
                 });
             }
         };
@@ -180,7 +181,7 @@ impl State {
             Tag::Point | Tag::Waypoint => {
                 self.fixes += 1;
                 if self.fixes > MOST_FIXES {
-                    return Err(Refusal::TooManyFixes { fixes: self.fixes });
+                    return Err(Refusal::TooManyFixes);
                 }
                 let fix = Fix {
                     position: position(start),
@@ -190,6 +191,9 @@ impl State {
                 };
                 if tag == Tag::Waypoint {
                     self.gpx.waypoints.push(fix);
+                    if self.gpx.waypoints.len() > MOST_WAYPOINTS {
+                        return Err(Refusal::TooManyWaypoints);
+                    }
                 } else if let Some(line) = self.gpx.lines.last_mut() {
                     line.fixes.push(fix);
                 }

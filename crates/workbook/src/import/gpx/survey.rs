@@ -8,7 +8,6 @@ use super::{Fix, Gpx, LONGEST_LEG_M, LineKind, NAME_REACH_M, Settings};
 use crate::book::{DistanceKind, Reckoning};
 use crate::reading::DecimalMark;
 use crate::resolve::profile::MOST_STATIONS;
-use hydraulics::math;
 
 /// A fix that can be used.
 struct Usable<'a> {
@@ -94,25 +93,28 @@ impl Gpx {
     /// Names fixes by the waypoints near them.
     fn name(&self, usable: &mut [Usable<'_>], points: &[Point], notes: &mut Vec<Note>) {
         let Some(origin) = origin(usable) else { return };
+        let mut astray = 0;
+        let mut first: Option<(String, f64)> = None;
         for waypoint in self.waypoints.iter().filter(|w| !w.name.is_empty()) {
             let Some(position) = waypoint.position else {
                 continue;
             };
             let (north, east) = geodesic::plane(origin, position);
-            let off = |p: &Point| math::hypot(p[0] - north, p[1] - east);
+            let off2 = |p: &Point| {
+                let (n, e) = (p[0] - north, p[1] - east);
+                n * n + e * e
+            };
             let nearest = points
                 .iter()
-                .map(off)
+                .map(off2)
                 .enumerate()
                 .min_by(|a, b| a.1.total_cmp(&b.1));
-            let Some((i, distance_m)) = nearest else {
+            let Some((i, off2)) = nearest else {
                 return;
             };
-            if distance_m > NAME_REACH_M {
-                notes.push(Note::Astray {
-                    name: waypoint.name.clone(),
-                    distance_m,
-                });
+            if off2.sqrt() > NAME_REACH_M {
+                astray += 1;
+                first.get_or_insert((waypoint.name.clone(), off2.sqrt()));
                 continue;
             }
             let fix = &mut usable[i];
@@ -122,6 +124,13 @@ impl Gpx {
                 fix.name = format!("{}, {}", fix.name, waypoint.name);
             }
             fix.pinned = true;
+        }
+        if let Some((name, distance_m)) = first {
+            notes.push(Note::Astray {
+                count: astray,
+                name,
+                distance_m,
+            });
         }
     }
 }
@@ -185,17 +194,26 @@ fn leg(a: &Usable<'_>, b: &Usable<'_>) -> Result<Leg, Refusal> {
 /// Length on the plan through every fix; says the gaps.
 fn walk(usable: &[Usable<'_>], reversed: bool, notes: &mut Vec<Note>) -> Result<f64, Refusal> {
     let mut length = 0.0;
+    let mut gaps = 0;
+    let mut widest = (0, -1.0);
     for pair in usable.windows(2) {
         let leg = leg(&pair[0], &pair[1])?;
         length += leg.distance_m;
         // Walked backwards, the fix after the gap comes first.
         let after = if reversed { &pair[0] } else { &pair[1] };
         if after.fix.after_gap {
-            notes.push(Note::Joined {
-                fix: after.number,
-                gap_m: leg.distance_m,
-            });
+            gaps += 1;
+            if leg.distance_m > widest.1 {
+                widest = (after.number, leg.distance_m);
+            }
         }
+    }
+    if gaps > 0 {
+        notes.push(Note::Joined {
+            count: gaps,
+            fix: widest.0,
+            gap_m: widest.1,
+        });
     }
     Ok(length)
 }

@@ -136,7 +136,7 @@ fn waypoints_name_the_fix_nearest_and_keep_it() {
         (8, "Rock & tree")
     );
     assert!(line.notes.iter().any(
-        |n| matches!(n, Note::Astray { name, distance_m } if name == "Camp" && *distance_m > 1e4)
+        |n| matches!(n, Note::Astray { count: 1, name, distance_m } if name == "Camp" && *distance_m > 1e4)
     ));
 }
 
@@ -213,9 +213,9 @@ fn ten_megabytes_of_fixes_are_thinned() {
         } else {
             -0.000_001
         };
-        let _ = write!(
+        let _ = writeln!(
             points,
-            "<trkpt lat=\"{:.7}\" lon=\"{:.7}\"><ele>{:.1}</ele><time>2020-01-01T00:00:00Z</time></trkpt>\n",
+            "<trkpt lat=\"{:.7}\" lon=\"{:.7}\"><ele>{:.1}</ele><time>2020-01-01T00:00:00Z</time></trkpt>",
             -13.5 + north * f64::from(i % 1000),
             -72.0 + t * 0.000_001,
             3400.0 - t * 0.01,
@@ -234,10 +234,7 @@ fn ten_megabytes_of_fixes_are_thinned() {
         line.rows.len()
     );
     let more = track(&"<trkpt lat='0' lon='0'/>".repeat(MOST_FIXES + 1));
-    assert!(matches!(
-        open(more.as_bytes()),
-        Err(Refusal::TooManyFixes { .. })
-    ));
+    assert!(matches!(open(more.as_bytes()), Err(Refusal::TooManyFixes)));
 }
 
 fn exercise(bytes: &[u8]) {
@@ -310,4 +307,12 @@ proptest! {
         let turns_fit = line.rows.iter().filter_map(|r| r.plan_turn.as_ref()?.value).all(|t| t.abs() <= 180.0);
         prop_assert!(turns_fit);
     }
+}
+
+#[test]
+fn gpx_is_told_from_tables_by_its_first_character() {
+    assert!(looks_like_gpx(b"\xef\xbb\xbf <?xml"));
+    assert!(looks_like_gpx(b"\xff\xfe<\0g\0p\0x\0"));
+    assert!(!looks_like_gpx(b"Dist;Level"));
+    assert!(!looks_like_gpx(b""));
 }

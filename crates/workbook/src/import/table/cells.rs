@@ -229,10 +229,10 @@ impl<'a> Reader<'a> {
             let (amount, unreadable) = amount(text, meaning, kind, column.unit, self.mark);
             if let Some(why) = unreadable {
                 fault(text.to_owned(), Fault::Unreadable(kind, why));
-            } else if let Some(value) = amount.value {
-                if let Some(why) = self.misfit(meaning, kind, value) {
-                    fault(text.to_owned(), why);
-                }
+            } else if let Some(value) = amount.value
+                && let Some(why) = self.misfit(meaning, kind, value)
+            {
+                fault(text.to_owned(), why);
             }
             if let Some(place) = row.place(meaning) {
                 *place = Some(amount);

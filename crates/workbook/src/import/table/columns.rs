@@ -167,7 +167,8 @@ fn found(text: &str, read: Option<Heading>, units_cell: &str) -> Found {
     found
 }
 
-/// Of several columns of one meaning the first stands that holds figures.
+/// Of several columns of one meaning the first stands that holds figures; one
+/// before it, which holds texts, may be the names.
 fn drop_seconds(columns: &mut [Found], figures: &[Record]) {
     for meaning in Meaning::ALL {
         if meaning == Meaning::LeftOut {
@@ -176,12 +177,24 @@ fn drop_seconds(columns: &mut [Found], figures: &[Record]) {
         let of: Vec<usize> = (0..columns.len())
             .filter(|i| columns[*i].meaning == meaning)
             .collect();
-        let filled = |i: &&usize| figures.iter().any(|r| !r.cell(**i).is_empty());
+        let filled = |i: &&usize| match meaning {
+            Meaning::Name => figures.iter().any(|r| !r.cell(**i).is_empty()),
+            _ => numeric(figures, **i),
+        };
         let Some(stands) = of.iter().find(filled).or(of.first()).copied() else {
             continue;
         };
+        let mut named = columns.iter().any(|c| c.meaning == Meaning::Name);
         for i in of {
             if i != stands {
+                // "Leg" above names, beside "Leg length" above distances.
+                let texts = figures.iter().any(|r| !r.cell(i).is_empty());
+                if !named && texts && meaning != Meaning::Name && i < stands {
+                    named = true;
+                    columns[i].meaning = Meaning::Name;
+                    columns[i].unit = ColumnUnit::No;
+                    continue;
+                }
                 columns[i].meaning = Meaning::LeftOut;
                 // Remarks beside a name are no loss to speak of.
                 if meaning != Meaning::Name {

@@ -115,11 +115,14 @@ pub(super) fn read(text: &str) -> Result<Records, Refusal> {
 /// Whether a cell holds rows of figures: a quotation mark was opened and not
 /// closed, and what follows went into one cell.
 fn swallows_rows(cell: &str, separator: Separator) -> bool {
-    let mut lines = cell.split('\n');
-    lines.next();
+    // The first lines tell; a cell may be the whole file.
+    let mut lines = cell.split('\n').skip(1).take(1000);
     lines.any(|line| {
         let parts = line.split(char::from(separator.byte()));
-        parts.filter(|p| super::cells::is_number(p)).count() >= 2
+        parts
+            .filter(|p| super::cells::is_number(p))
+            .nth(1)
+            .is_some()
     })
 }
 
