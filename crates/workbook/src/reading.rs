@@ -158,7 +158,8 @@ fn read_amount(
     {
         let (more, tail, _) = read_number(inches.trim(), mark)?;
         let tail = tail.trim();
-        if (tail.is_empty() || INCH.spelled(tail)) && more >= 0.0 {
+        // A foot has twelve inches: 1'234.5 is a grouped number, and no length.
+        if (tail.is_empty() || INCH.spelled(tail)) && (0.0..12.0).contains(&more) {
             let sign = if number < 0.0 || text.starts_with(['-', '−']) {
                 -1.0
             } else {
@@ -393,6 +394,18 @@ mod tests {
         ] {
             let got = value(text, kind);
             assert!(near(got, expected), "{text}: {got} is not {expected}");
+        }
+    }
+
+    #[test]
+    fn a_grouped_number_is_no_length_in_feet_and_inches() {
+        let unit = Kind::Distance.default_unit(UnitSystem::Metric);
+        for text in ["1'234.5", "12' 12\""] {
+            let got = read(text, Kind::Distance, unit, DecimalMark::Point);
+            assert!(
+                matches!(got, Err(Unreadable::UnknownUnit { .. })),
+                "{text}: {got:?}"
+            );
         }
     }
 
