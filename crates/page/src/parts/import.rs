@@ -456,10 +456,7 @@ fn column_head(import: Import, preview: Memo<Preview>, index: usize) -> AnyView 
         })
     });
     let unit = Signal::derive(move || column(|c| c.unit.to_owned()));
-    let unit_label = Signal::derive(move || {
-        let words = state.words.get();
-        text::field_at(words, words.say(Key::IMPORT_UNIT), &named.get())
-    });
+    let unit_label = Signal::derive(move || state.words.get().say(Key::IMPORT_UNIT).to_owned());
     let ground = move || {
         let words = state.words.get();
         preview.with(|p| p.columns.get(index).map(|c| words.name(c.meaning_from)))

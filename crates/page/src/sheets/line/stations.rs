@@ -263,9 +263,16 @@ fn row(
             />
         }
     };
-    let levelled = move || match way.get() {
+    let levelled = move || {
+        match way.get() {
         SurveyWay::Level => cell(Side::Level, level_unit, Key::FIELD_STATION_LEVEL).into_any(),
-        way => carried(state, id, way, next_way),
+        _ => view! { <p class="carried" data-test=format!("station-level-{id}")>{move || level(state, id)}</p> }
+            .into_any(),
+    }
+    };
+    let carried_row = move || match way.get() {
+        SurveyWay::Level => None,
+        way => Some(carried(state, id, way, next_way, chosen)),
     };
     view! {
         <tr class:chosen=chosen data-test=format!("station-{id}")>
@@ -286,6 +293,7 @@ fn row(
             <td>{cell(Side::Distance, distance_unit, Key::FIELD_STATION_DISTANCE)}</td>
             <td>{levelled}</td>
         </tr>
+        {carried_row}
         <Show when=move || is_open.get()>
             <tr>
                 <td colspan="3">{tools(state, id)}</td>
@@ -295,9 +303,26 @@ fn row(
     .into_any()
 }
 
-/// The sights or readings that level a station from the one before, and the
-/// level that comes of them.
-fn carried(state: State, id: Id, way: SurveyWay, next_way: RwSignal<Option<SurveyWay>>) -> AnyView {
+/// The level that comes of sights or readings.
+fn level(state: State, id: Id) -> String {
+    let words = state.words.get();
+    state.findings.with(|f| {
+        f.resolved
+            .profile
+            .station(id)
+            .map_or_else(speak::none, |at| words.figure(at.level))
+    })
+}
+
+/// The sights or readings that level a station from the one before, in a row
+/// of their own.
+fn carried(
+    state: State,
+    id: Id,
+    way: SurveyWay,
+    next_way: RwSignal<Option<SurveyWay>>,
+    chosen: impl Fn() -> bool + Copy + Send + Sync + 'static,
+) -> AnyView {
     let fields = station_fields(way, id)
         .into_iter()
         .filter(|f| !matches!(f, Field::StationDistance(_)))
@@ -311,20 +336,14 @@ fn carried(state: State, id: Id, way: SurveyWay, next_way: RwSignal<Option<Surve
             }
         })
         .collect_view();
-    let level = move || {
-        let words = state.words.get();
-        state.findings.with(|f| {
-            f.resolved
-                .profile
-                .station(id)
-                .map(|at| text::line_level_is(words, &words.figure(at.level)))
-        })
-    };
     view! {
-        <div class="levelled" on:focusin=move |_| state.station.set(Some(id))>
-            {fields}
-            <p class="quiet" data-test=format!("station-level-{id}")>{level}</p>
-        </div>
+        <tr class="carried-row" class:chosen=chosen>
+            <td colspan="3">
+                <div class="levelled" on:focusin=move |_| state.station.set(Some(id))>
+                    {fields}
+                </div>
+            </td>
+        </tr>
     }
     .into_any()
 }
