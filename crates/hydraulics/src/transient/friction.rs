@@ -9,7 +9,8 @@ use crate::solve::{Bracket, Tolerance};
 pub struct FrictionModel {
     /// `false`: the Darcy factor of each run stays that of the start (from
     /// shut: that of the flow with every nozzle at full stroke). `true`: it
-    /// follows the flow through a table of f(Re), laminar included.
+    /// follows the flow through a table of f(Re), laminar included (but for the
+    /// half cells at the joints, which keep that of the start).
     pub by_reynolds: bool,
     /// Adds unsteady friction by Brunone's model with Vitkovsky's sign.
     pub unsteady: bool,

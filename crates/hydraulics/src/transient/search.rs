@@ -316,7 +316,7 @@ impl ClosingSearch {
     #[must_use]
     pub fn progress(&self) -> f64 {
         match &self.state {
-            State::Scan { time, .. } => 1.0 - time / self.slowest,
+            State::Scan { held, .. } => held.map_or(0.0, |held| 1.0 - held / self.slowest),
             State::Bracket { holds, .. } => 1.0 - holds / self.slowest,
             State::Done(_) => 1.0,
         }

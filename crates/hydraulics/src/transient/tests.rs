@@ -2,6 +2,8 @@
 
 mod bench_line;
 mod checks;
+mod closing;
+mod laws;
 mod sudden;
 
 use bench_line::{Bench, Pipe};

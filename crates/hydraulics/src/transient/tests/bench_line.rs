@@ -27,7 +27,7 @@ pub(crate) struct Pipe {
     pub(crate) length: f64,
     pub(crate) bore: f64,
     pub(crate) wave_speed: f64,
-    /// Roughness, m; 0 takes Manning's least n only if `frictionless`.
+    /// Roughness, m.
     pub(crate) roughness: f64,
 }
 
@@ -38,6 +38,7 @@ pub(crate) struct Bench {
     pub(crate) pipes: Vec<Pipe>,
     /// Bores of the nozzles.
     pub(crate) nozzles: Vec<f64>,
+    pub(crate) branch_k: f64,
     pub(crate) losses: Vec<LocalLoss>,
     pub(crate) characteristic: Characteristic,
     /// Depth of the inlet below the forebay.
@@ -64,6 +65,7 @@ impl Bench {
             head,
             pipes: vec![pipe],
             nozzles: vec![nozzle],
+            branch_k: 0.3,
             losses: Vec::new(),
             characteristic: Characteristic::Linear,
             cover: 5.0,
@@ -128,7 +130,7 @@ impl Bench {
                         .map(|bore| Nozzle::new(m(*bore), 0.97, 1.0).unwrap())
                         .collect(),
                     axis: Level::from_m(0.0),
-                    branch_k: 0.3,
+                    branch_k: self.branch_k,
                     branch_bore: m(self.pipes.last().unwrap().bore),
                 },
                 characteristic: self.characteristic.clone(),
