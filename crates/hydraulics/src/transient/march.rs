@@ -5,7 +5,7 @@ use super::error::TransientError;
 use super::event::{Course, Event};
 use super::gas::{EndNode, GasCavity};
 use super::grid::{count, nearest};
-use super::kernel::{Rows, step, step_counted};
+use super::kernel::{Rows, step};
 use super::model::{Model, Reach};
 use super::run::{
     Balance, Duration, NodeEnvelope, Probe, Run, RunOptions, Scratch, Separation, Trace,
@@ -438,12 +438,8 @@ impl<'a> March<'a> {
             let (high, low) = (&mut s.high[from..to], &mut s.low[from..to]);
             if !slow {
                 let rows = Rows { p, m, high, low };
-                let curve = self.velocity * reach.curve;
-                if self.options.balance {
-                    step_counted(rows, &mut s.lost[from..to], reach.half_k, curve);
-                } else {
-                    step(rows, reach.half_k, curve);
-                }
+                let lost = self.options.balance.then(|| &mut s.lost[from..to]);
+                step(rows, lost, reach.kernel, self.velocity * reach.curve);
                 continue;
             }
             let gas_constant = self

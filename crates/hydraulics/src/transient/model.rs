@@ -4,6 +4,7 @@ use super::error::TransientError;
 use super::friction::{FrictionModel, Table, brunone_coefficient};
 use super::grid::{Grid, count, nearest};
 use super::joint::Joint;
+use super::kernel::{Friction, MILD};
 use super::surge_line::SurgeLine;
 use crate::line::{RunLayout, Solved};
 use crate::quantity::VolumeRate;
@@ -25,8 +26,10 @@ pub(super) struct Reach {
     pub(super) b: f64,
     /// Half a cell's friction, s2/m5.
     pub(super) half: f64,
-    /// Half of k of the kernel, 1/m.
+    /// Half of k where friction is D/(1 + k|D|), 1/m.
     pub(super) half_k: f64,
+    /// Friction of the fast kernel.
+    pub(super) kernel: Friction,
     /// Twice the velocity head over (P - M)^2, 1/m.
     pub(super) curve: f64,
     /// Velocity head over flow squared, s2/m5.
@@ -261,6 +264,7 @@ impl Model {
         let velocity_head = 1.0 / (2.0 * gravity * run.area * run.area);
         // D of the flow of reference, arriving and leaving, over the flow.
         let (arriving, leaving) = (b + half * reference, b - half * reference);
+        let half_k = half / (arriving * leaving);
         let reynolds = reference / run.area * run.bore / line.spec().water.kinematic_viscosity_si();
         Ok(Reach {
             run: index,
@@ -268,7 +272,8 @@ impl Model {
             cells: 0,
             b,
             half,
-            half_k: half / (arriving * leaving),
+            half_k,
+            kernel: kernel(half_k, arriving * reference),
             curve: 0.5 * velocity_head / (arriving * arriving),
             velocity_head,
             dx,
@@ -310,6 +315,23 @@ impl Model {
             }
             energy -= 2.0 * reach.half * q * q * count(reach.cells);
         }
+    }
+}
+
+/// Friction of the fast kernel that takes as much as D/(1 + k|D|) at D0.
+fn kernel(half_k: f64, d0: f64) -> Friction {
+    let strength = 2.0 * half_k * d0;
+    let mild = strength <= MILD;
+    // u (1 - u) = strength/(1 + strength).
+    let share = strength / (1.0 + strength);
+    let u = 2.0 * share / (1.0 + (1.0 - 4.0 * share).sqrt());
+    Friction {
+        half_k: if mild && strength > 0.0 {
+            half_k * u / strength
+        } else {
+            half_k
+        },
+        mild,
     }
 }
 
