@@ -2,9 +2,9 @@
 
 use super::error::TransientError;
 use super::event::Event;
+use super::family::LawFamily;
 use super::friction::FrictionModel;
 use super::grid::{Grid, count};
-use super::law::ClosingLaw;
 use super::model::Model;
 use super::run::{Run, RunOptions, Scratch};
 use super::surge_line::SurgeLine;
@@ -13,53 +13,6 @@ use uom::si::time::second;
 
 /// Fewest part openings a search closes from.
 const FEWEST_OPENINGS: usize = 10;
-
-/// Laws that differ in their full-stroke time only.
-#[derive(Debug, Clone, PartialEq)]
-pub enum LawFamily {
-    /// One speed.
-    OneSpeed,
-    /// Two speeds; below the knee as if the full stroke took `slow`, above it
-    /// as fast as the time asks.
-    TwoSpeed {
-        /// Stroke of the knee, 0 to 1 (1 excluded).
-        knee: f64,
-        /// Time of a full stroke at the speed below the knee.
-        slow: Time,
-    },
-    /// A shape stretched to the time ([`ClosingLaw::lasting`]).
-    Shape(ClosingLaw),
-}
-
-impl LawFamily {
-    /// The law of a full-stroke time.
-    ///
-    /// # Errors
-    /// A time below [`LawFamily::least`].
-    pub fn law(&self, full_stroke: Time) -> Result<ClosingLaw, TransientError> {
-        match self {
-            Self::OneSpeed => ClosingLaw::linear(full_stroke),
-            Self::TwoSpeed { knee, slow } => {
-                if !(0.0..1.0).contains(knee) {
-                    return Err(TransientError::Law { point: 1 });
-                }
-                let above = full_stroke.get::<second>() - self.least().get::<second>();
-                let fast = Time::new::<second>(above / (1.0 - knee));
-                ClosingLaw::two_speed(fast, *slow, *knee)
-            }
-            Self::Shape(law) => law.lasting(full_stroke),
-        }
-    }
-
-    /// The shortest full-stroke time of the family.
-    #[must_use]
-    pub fn least(&self) -> Time {
-        match self {
-            Self::TwoSpeed { knee, slow } => *slow * *knee,
-            _ => Time::new::<second>(0.0),
-        }
-    }
-}
 
 /// What a search is made over.
 #[derive(Debug, Clone, PartialEq)]
@@ -390,93 +343,4 @@ impl ClosingSearch {
             strokes: Vec::new(),
         })
     }
-}
-
-/// Knees and slow speeds among which two speeds are looked for.
-#[derive(Debug, Clone, PartialEq)]
-pub struct TwoSpeedSpec {
-    /// Strokes of the knee.
-    pub knees: Vec<f64>,
-    /// Times of a full stroke at the slow speed, as multiples of the shortest
-    /// safe time of one speed.
-    pub slow: Vec<f64>,
-}
-
-impl Default for TwoSpeedSpec {
-    /// Knees at 0.15, 0.25, 0.35 and 0.5; slow speeds 0.8, 1, 1.3 and 1.7
-    /// times slower than one speed needs.
-    fn default() -> Self {
-        Self {
-            knees: vec![0.15, 0.25, 0.35, 0.5],
-            slow: vec![0.8, 1.0, 1.3, 1.7],
-        }
-    }
-}
-
-/// A law of two speeds that closes sooner than one speed may.
-#[derive(Debug, Clone, PartialEq)]
-pub struct TwoSpeedAnswer {
-    /// Time from full stroke to shut.
-    pub time: Time,
-    /// Stroke of the knee.
-    pub knee: f64,
-    /// Time of a full stroke at the fast speed.
-    pub fast: Time,
-    /// Time of a full stroke at the slow speed.
-    pub slow: Time,
-    /// The start that decides; `None` when even the least time of this knee
-    /// holds.
-    pub decides: Option<StartCase>,
-}
-
-/// Looks for two speeds that close sooner than the shortest safe time of one
-/// speed; `None` when none of those tried does.
-///
-/// For each knee and slow speed the full-stroke time is searched from that of
-/// one speed down, with the judge and starts of `spec`.
-///
-/// # Errors
-/// What [`ClosingSearch`] refuses.
-pub fn two_speed(
-    line: &SurgeLine,
-    grid: &Grid,
-    spec: &SearchSpec,
-    one_speed: Time,
-    among: &TwoSpeedSpec,
-    scratch: &mut Scratch,
-    mut judge: impl FnMut(&Run, &StartCase) -> bool,
-) -> Result<Option<TwoSpeedAnswer>, TransientError> {
-    let mut best: Option<TwoSpeedAnswer> = None;
-    for knee in &among.knees {
-        for factor in &among.slow {
-            let slow = one_speed * *factor;
-            let family = LawFamily::TwoSpeed { knee: *knee, slow };
-            if family.least() >= one_speed {
-                continue;
-            }
-            let wanted = SearchSpec {
-                family: family.clone(),
-                slowest: one_speed,
-                ..spec.clone()
-            };
-            let search = ClosingSearch::new(line, grid, &wanted)?;
-            let (time, decides) = match search.finish(scratch, &mut judge)? {
-                ClosingAnswer::Shortest { time, decides, .. } => (time, Some(decides)),
-                ClosingAnswer::Any => (family.least(), None),
-                ClosingAnswer::None { .. } => continue,
-            };
-            let sooner = best.as_ref().is_none_or(|found| time < found.time);
-            if sooner && time < one_speed {
-                let fast = (time - family.least()) / (1.0 - knee);
-                best = Some(TwoSpeedAnswer {
-                    time,
-                    knee: *knee,
-                    fast,
-                    slow,
-                    decides,
-                });
-            }
-        }
-    }
-    Ok(best)
 }

@@ -3,6 +3,7 @@
 mod bench_line;
 mod checks;
 mod closing;
+mod grids;
 mod laws;
 mod sudden;
 
