@@ -16,7 +16,7 @@
 //! 4. [`Event`]: what each nozzle does, by constructors;
 //! 5. [`Model::run`]: a [`Run`] with envelope, traces, checks and cautions;
 //! 6. [`ClosingSearch`]: the shortest safe closing time over all starts;
-//!    [`converge`]: whether the grid is fine enough.
+//!    [`converge()`]: whether the grid is fine enough.
 //!
 //! # Example
 //!

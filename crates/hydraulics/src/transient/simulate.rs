@@ -16,7 +16,7 @@ impl Model {
     ///
     /// The run is computed with water that bears suction; where the head falls
     /// to the vapour pressure it is computed again from the start with
-    /// [`GasCavity`] at every node but the inlet, and [`Run::separation`] says
+    /// [`super::GasCavity`] at every node but the inlet, and [`Run::separation`] says
     /// so.
     ///
     /// # Errors
