@@ -216,9 +216,10 @@ impl ClosingSearch {
                 break;
             };
             let event = Event::close(&case.strokes, &law)?;
-            let run = model.run(&event, &self.options, scratch)?;
+            let run = model.run_whole(&event, &self.options, scratch)?;
             self.runs += 1;
-            if run.separation.is_none() && judge(&run, case) {
+            let holds = run.is_some_and(|run| run.separation.is_none() && judge(&run, case));
+            if holds {
                 self.next += 1;
                 if self.next == self.order.len() {
                     self.next = 0;

@@ -30,6 +30,25 @@ impl Model {
         options: &RunOptions,
         scratch: &mut Scratch,
     ) -> Result<Run, TransientError> {
+        if let Some(run) = self.run_whole(event, options, scratch)? {
+            return Ok(run);
+        }
+        let mut again = March::new(self, event, options, scratch, options.cavity)?;
+        match again.run()? {
+            Ended::Done(run) => Ok(*run),
+            // A march with gas never ends in suction.
+            Ended::Suction => Err(TransientError::GasCavity),
+        }
+    }
+
+    /// [`Self::run`], but `None` where the column parts and cavities would be
+    /// modelled: for searches, in which such a run fails whatever follows.
+    pub(super) fn run_whole(
+        &self,
+        event: &Event,
+        options: &RunOptions,
+        scratch: &mut Scratch,
+    ) -> Result<Option<Run>, TransientError> {
         let same = event.strokes().len() == self.strokes.len()
             && event
                 .strokes()
@@ -44,14 +63,9 @@ impl Model {
             self.check_start()?;
         }
         let mut march = March::new(self, event, options, scratch, None)?;
-        if let Ended::Done(run) = march.run()? {
-            return Ok(*run);
-        }
-        let mut again = March::new(self, event, options, scratch, options.cavity)?;
-        match again.run()? {
-            Ended::Done(run) => Ok(*run),
-            // A march with gas never ends in suction.
-            Ended::Suction => Err(TransientError::GasCavity),
+        match march.run()? {
+            Ended::Done(run) => Ok(Some(*run)),
+            Ended::Suction => Ok(None),
         }
     }
 

@@ -208,3 +208,38 @@ fn senseless_lines_and_strokes_are_refused() {
     let found = Model::new(&bench.line(), &grid, &[1.0], FrictionModel::default());
     assert_eq!(found.err(), Some(TransientError::GridTooCoarse { run: 0 }));
 }
+
+/// The extremes lie where pipe and grade say, a low point between nodes
+/// included, and a lumped run has them too.
+#[test]
+fn extremes_are_found_between_nodes() {
+    let mut bench = rich();
+    bench.humps = vec![(0.503, -110.0)];
+    let line = bench.line();
+    let event = Event::close(&[1.0, 1.0], &ClosingLaw::linear(s(5.0)).unwrap()).unwrap();
+    let grid = bench.grid(24);
+    let model = Model::new(&line, &grid, &[1.0, 1.0], FrictionModel::default()).unwrap();
+    let run = model
+        .run(&event, &RunOptions::default(), &mut Scratch::new())
+        .unwrap();
+    let found = run.extremes(&line);
+    assert_eq!(found.len(), 3);
+    for extremes in &found {
+        assert!(extremes.highest.0.m().is_finite() && extremes.lowest.0.m().is_finite());
+    }
+    // The dip lies 110 m below the straight fall, in the last run.
+    let dip = 0.503 * bench.length();
+    assert!(
+        (found[2].highest.1.m() - dip).abs() < 1e-9,
+        "{:?}",
+        found[2]
+    );
+    let (high, _) = run.range_at(found[2].highest.1).unwrap();
+    let level = 115.0 * (1.0 - 0.503) - 110.0;
+    assert!(((high.m() - level) - found[2].highest.0.m()).abs() < 1e-9);
+    // Whatever a node says is inside.
+    for node in &run.nodes {
+        assert!((node.highest - node.level) <= found[node.run].highest.0);
+        assert!((node.lowest - node.level) >= found[node.run].lowest.0);
+    }
+}
