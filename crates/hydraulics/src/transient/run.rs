@@ -8,6 +8,12 @@ use crate::quantity::{Level, PipeLength, Time, Volume, VolumeRate};
 pub enum Duration {
     /// To this many periods (2 sum(l/a)) after the last movement.
     PeriodsAfter(f64),
+    /// The same, but on a line of unlike pipes at least 40 periods after an
+    /// event that lasts less than a period: there the partial waves can meet
+    /// long after. Measured on 2000 random lines of three pipes: after a
+    /// shorter event 5 periods miss up to 17 % of the rise, 40 none; after a
+    /// longer one 3 periods miss none.
+    ToThePeak(f64),
     /// To this time.
     Until(Time),
 }
@@ -33,11 +39,11 @@ pub struct RunOptions {
 }
 
 impl Default for RunOptions {
-    /// 10 periods after the last movement, cavities modelled, 400 points of
+    /// To the peak and 10 periods after the last movement, cavities modelled, 400 points of
     /// trace at the foot, balances added up.
     fn default() -> Self {
         Self {
-            duration: Duration::PeriodsAfter(10.0),
+            duration: Duration::ToThePeak(10.0),
             cavity: Some(GasCavity::default()),
             probes: Vec::new(),
             trace_points: 400,
@@ -48,13 +54,12 @@ impl Default for RunOptions {
 }
 
 impl RunOptions {
-    /// For searches and sweeps: 3 periods after the last movement (the highest
-    /// head of a closure comes while it lasts or in the first period after),
-    /// no traces, no balances.
+    /// For searches and sweeps: to the peak and 4 periods after the last
+    /// movement, no traces, no balances.
     #[must_use]
     pub fn lean() -> Self {
         Self {
-            duration: Duration::PeriodsAfter(3.0),
+            duration: Duration::ToThePeak(4.0),
             trace_points: 0,
             balance: false,
             ..Self::default()

@@ -11,6 +11,9 @@ use super::run::{Duration, Run, RunOptions, Scratch};
 use crate::quantity::{Level, PipeLength, Time};
 use uom::si::time::second;
 
+/// Periods after a sudden event in which partial waves may still meet.
+const LATE_PERIODS: f64 = 40.0;
+
 impl Model {
     /// Runs an event that begins at this start.
     ///
@@ -101,11 +104,25 @@ impl Model {
         Ok(())
     }
 
+    /// Whether a wave meets a change of impedance on its way.
+    fn has_unlike_pipes(&self) -> bool {
+        self.reaches
+            .iter()
+            .zip(self.reaches.iter().skip(1))
+            .any(|(a, b)| (a.b / b.b - 1.0).abs() > 1e-3)
+            || self.grid.lumped_share() > 0.0
+    }
+
     pub(super) fn steps(&self, event: &Event, duration: Duration) -> Result<usize, TransientError> {
         let dt = self.grid.step_si();
+        let period = self.line.period().get::<second>();
         let lasting = match duration {
-            Duration::PeriodsAfter(periods) => {
-                event.end_si() + periods * self.line.period().get::<second>()
+            Duration::PeriodsAfter(periods) => event.end_si() + periods * period,
+            Duration::ToThePeak(periods) => {
+                let late = self.has_unlike_pipes() && event.end_si() < period;
+                let least = if late { LATE_PERIODS } else { periods };
+                let periods = if least > periods { least } else { periods };
+                event.end_si() + periods * period
             }
             Duration::Until(time) => time.get::<second>(),
         };

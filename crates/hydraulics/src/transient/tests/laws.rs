@@ -3,8 +3,8 @@
 use super::bench_line::{G, q, s};
 use super::{Bench, Pipe};
 use crate::transient::{
-    Characteristic, ClosingLaw, Duration, Event, FrictionModel, Model, Run, RunOptions, Scratch,
-    Stroke, brunone_coefficient, shear_decay,
+    Characteristic, ClosingLaw, Duration, Event, FrictionModel, Grid, GridSpec, Model, Run,
+    RunOptions, Scratch, Stroke, brunone_coefficient, shear_decay,
 };
 use proptest::prelude::*;
 use uom::si::time::second;
@@ -90,6 +90,37 @@ proptest! {
         for node in &run.nodes {
             prop_assert!((node.lowest - node.level).m() > -10.22, "{node:?}");
         }
+    }
+
+    /// A lean run sees the peak that sixty periods see, however the waves meet.
+    #[test]
+    fn lean_runs_last_to_the_peak(
+        lengths in prop::array::uniform3(50.0..800.0_f64),
+        speeds in prop::array::uniform3(250.0..1300.0_f64),
+        bores in prop::array::uniform3(0.15..0.4_f64),
+        nozzle in 0.02..0.1_f64, closing in 0.0..12.0_f64,
+    ) {
+        let pipe = |i: usize| Pipe {
+            length: lengths[i],
+            bore: bores[i],
+            wave_speed: speeds[i],
+            roughness: 1e-5,
+        };
+        let bench = Bench {
+            pipes: (0..3).map(pipe).collect(),
+            cover: 40.0,
+            ..Bench::uniform(50.0, pipe(0), nozzle)
+        };
+        let line = bench.line();
+        let event = Event::close(&[1.0], &ClosingLaw::linear(s(closing)).unwrap()).unwrap();
+        let grid = Grid::new(&line, GridSpec::coarse()).unwrap();
+        let model = Model::new(&line, &grid, &[1.0], FrictionModel::default()).unwrap();
+        let peak = |duration: Duration| {
+            let options = RunOptions { cavity: None, duration, ..RunOptions::lean() };
+            model.run(&event, &options, &mut Scratch::new()).unwrap().highest().m()
+        };
+        let (lean, long) = (peak(RunOptions::lean().duration), peak(Duration::PeriodsAfter(60.0)));
+        prop_assert!(lean >= long - 0.02 * (long - 50.0), "{lean} {long}");
     }
 
     /// Two nozzles half as large do what one does, where no branch loses head.
