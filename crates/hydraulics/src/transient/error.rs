@@ -73,6 +73,8 @@ pub enum TransientError {
         /// The greatest alteration on it, as a share.
         alteration: f64,
     },
+    /// The grid was made for another line.
+    GridOfAnotherLine,
     /// Friction in one cell takes more than half of what its wave could stop:
     /// the grid is too coarse for this flow.
     GridTooCoarse {
@@ -141,6 +143,7 @@ impl core::fmt::Display for TransientError {
                 f,
                 "even {cells} cells alter a wave speed by {alteration} of itself"
             ),
+            Self::GridOfAnotherLine => write!(f, "the grid was made for another line"),
             Self::GridTooCoarse { run } => {
                 write!(f, "cells of run {run} are too long for their friction")
             }

@@ -14,7 +14,8 @@ use crate::solve::{Bracket, Tolerance};
 /// no oscillation of the cavity with itself). Wylie, Journal of Fluids
 /// Engineering 106(3), 1984; Bergant, Simpson and Tijsseling, Journal of
 /// Fluids and Structures 22, 2006 (paper found, pages not seen: from memory).
-/// V is above 0 by its equation, and what it takes up is kept in the balance
+/// z is the node's own level, raised by what a surveyed high point beside it
+/// stands above the straight line between nodes. V is above 0 by its equation, and what it takes up is kept in the balance
 /// of volume.
 ///
 /// # Validity

@@ -218,6 +218,16 @@ impl Grid {
             .sum()
     }
 
+    /// Whether it was made for a line of these runs and wave speeds.
+    pub(super) fn fits(&self, line: &SurgeLine) -> bool {
+        let travel = line.travel_times();
+        let alike = |(stretch, time): (&StretchGrid, &f64)| {
+            let walked = count(stretch.cells) * self.step * (1.0 + stretch.alteration);
+            stretch.is_lumped() || (walked / time - 1.0).abs() < 1e-9
+        };
+        travel.len() == self.stretches.len() && self.stretches.iter().zip(&travel).all(alike)
+    }
+
     pub(super) fn step_si(&self) -> f64 {
         self.step
     }

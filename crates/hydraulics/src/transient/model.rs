@@ -59,8 +59,8 @@ pub struct Model {
     pub(super) joints: Vec<Joint>,
     pub(super) chainages: Vec<f64>,
     pub(super) levels: Vec<f64>,
-    /// Level above the axis plus vapour head: the lowest grade a node bears,
-    /// from the highest level within half a cell.
+    /// Level above the axis plus vapour head: the lowest grade a node bears. A
+    /// high point between nodes counts for the nearer.
     pub(super) floors: Vec<f64>,
     /// Energy head above the axis at the start.
     pub(super) energies: Vec<f64>,
@@ -68,6 +68,8 @@ pub struct Model {
     pub(super) forebay: f64,
     /// Level of the axis, m.
     pub(super) axis: f64,
+    /// Vapour pressure less the atmosphere's, as a head, m.
+    pub(super) vapour: f64,
     pub(super) friction: FrictionModel,
     /// Chainage and level of inlet and foot, m.
     pub(super) ends: ((f64, f64), (f64, f64)),
@@ -84,13 +86,17 @@ impl Model {
     /// Lays the steady state at the given strokes on the grid.
     ///
     /// # Errors
-    /// What [`SurgeLine::steady`] refuses; [`TransientError::GridTooCoarse`].
+    /// What [`SurgeLine::steady`] refuses; [`TransientError::GridOfAnotherLine`],
+    /// [`TransientError::GridTooCoarse`].
     pub fn new(
         line: &SurgeLine,
         grid: &Grid,
         strokes: &[f64],
         friction: FrictionModel,
     ) -> Result<Self, TransientError> {
+        if !grid.fits(line) {
+            return Err(TransientError::GridOfAnotherLine);
+        }
         let steady = line.steady(strokes)?;
         let flow = steady.as_ref().map_or(0.0, start_flow);
         // From shut, the factor is that of the flow it may come to.
@@ -121,6 +127,7 @@ impl Model {
             energies: Vec::new(),
             forebay: pipe.spec().forebay.m() - axis,
             axis,
+            vapour: line.vapour_and_air().0,
             friction,
             ends: ((inlet, pipe.level_si(inlet)), (foot, pipe.level_si(foot))),
             last_run: runs.len() - 1,
@@ -293,7 +300,7 @@ impl Model {
 
     fn lay_nodes(&mut self) {
         let line = self.line.spec().line.clone();
-        let (vapour, _) = self.line.vapour_and_air();
+        let vapour = self.vapour;
         let q = self.flow;
         let mut energy = self.forebay;
         for (joint, reach) in self.joints.iter().zip(&self.reaches) {
@@ -308,12 +315,39 @@ impl Model {
                 let level = line.level_si(at);
                 self.chainages.push(at);
                 self.levels.push(level);
-                let crest = crest(&line, at, 0.5 * reach.dx, level);
-                self.floors.push(crest - self.axis + vapour);
+                self.floors.push(level - self.axis + vapour);
                 self.energies
                     .push(energy - 2.0 * reach.half * q * q * count(node));
             }
             energy -= 2.0 * reach.half * q * q * count(reach.cells);
+        }
+        self.raise_floors();
+    }
+
+    /// A surveyed point that stands above the straight line between the nodes
+    /// beside it raises the floor of the nearer one by as much.
+    fn raise_floors(&mut self) {
+        for point in &self.line.spec().line.spec().points {
+            let at = point.chainage.m();
+            let after = self.chainages.partition_point(|node| *node < at);
+            let Some(before) = after.checked_sub(1) else {
+                continue;
+            };
+            let (Some(from), Some(to)) = (self.chainages.get(before), self.chainages.get(after))
+            else {
+                continue;
+            };
+            if to <= from {
+                continue;
+            }
+            let share = (at - from) / (to - from);
+            let chord = self.levels[before] + share * (self.levels[after] - self.levels[before]);
+            let above = point.level.m() - chord;
+            let nearer = if share < 0.5 { before } else { after };
+            let raised = self.levels[nearer] + above - self.axis + self.vapour;
+            if raised > self.floors[nearer] {
+                self.floors[nearer] = raised;
+            }
         }
     }
 }
@@ -338,24 +372,4 @@ fn kernel(half_k: f64, d0: f64) -> Friction {
 /// Flow of a steady state, m3/s.
 fn start_flow(solved: &Solved) -> f64 {
     solved.grade.flow.get::<cubic_meter_per_second>()
-}
-
-/// Highest level of the pipe within `reach` of a chainage.
-fn crest(line: &crate::line::Line, at: f64, reach: f64, level: f64) -> f64 {
-    let points = &line.spec().points;
-    let ends = (
-        points.first().map_or(at, |point| point.chainage.m()),
-        points.last().map_or(at, |point| point.chainage.m()),
-    );
-    let within = |x: f64| x.clamp(ends.0, ends.1);
-    let sides = [within(at - reach), within(at + reach)];
-    let surveyed = points
-        .iter()
-        .filter(|point| (point.chainage.m() - at).abs() <= reach)
-        .map(|point| point.level.m());
-    sides
-        .iter()
-        .map(|side| line.level_si(*side))
-        .chain(surveyed)
-        .fold(level, |a, b| if b > a { b } else { a })
 }

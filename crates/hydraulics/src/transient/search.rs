@@ -56,6 +56,18 @@ impl SearchSpec {
         }
     }
 
+    /// The sets of 1 to `jets` equal jets: the first open, the others shut.
+    #[must_use]
+    pub fn equal_sets(jets: usize) -> Vec<Vec<f64>> {
+        (1..=jets)
+            .map(|open| {
+                (0..jets)
+                    .map(|jet| if jet < open { 1.0 } else { 0.0 })
+                    .collect()
+            })
+            .collect()
+    }
+
     fn check(&self, period: f64) -> Result<f64, TransientError> {
         let longest = 0.25 * period;
         let step = self.step.map_or(longest, |step| step.get::<second>());

@@ -194,3 +194,36 @@ fn two_speeds_close_sooner_where_the_last_part_decides() {
     let wanted = found.fast * (1.0 - found.knee) + found.slow * found.knee;
     assert!((wanted - found.time).get::<second>().abs() < 1e-9);
 }
+
+/// The worst of every set: with two jets the search closes each set from ten
+/// openings.
+#[test]
+fn every_set_closes_from_every_opening() {
+    let pipe = Pipe {
+        length: 600.0,
+        bore: 0.25,
+        wave_speed: 1000.0,
+        roughness: 5e-5,
+    };
+    let bench = Bench {
+        nozzles: vec![0.05, 0.05],
+        ..Bench::uniform(200.0, pipe, 0.05)
+    };
+    let spec = SearchSpec::new(SearchSpec::equal_sets(2), s(40.0));
+    let (search, answer) = search(&bench, &spec, 230.0);
+    assert_eq!(search.cases().len(), 20);
+    let last = search.cases().last().unwrap();
+    assert!(last.set == 1 && (last.opening - 0.1).abs() < 1e-12);
+    assert_eq!(search.cases()[0].strokes, vec![1.0, 0.0]);
+    let ClosingAnswer::Shortest { time, .. } = answer else {
+        panic!("{answer:?}");
+    };
+    // One jet alone could close sooner.
+    let alone = SearchSpec::new(vec![vec![1.0, 0.0]], s(40.0));
+    let (_, answer) = self::search(&bench, &alone, 230.0);
+    match answer {
+        ClosingAnswer::Shortest { time: sooner, .. } => assert!(sooner <= time),
+        ClosingAnswer::Any => {}
+        ClosingAnswer::None { .. } => panic!("one jet alone never holds"),
+    }
+}

@@ -190,6 +190,18 @@ fn senseless_lines_and_strokes_are_refused() {
             stroke: 1.5
         })
     );
+    let other = Bench {
+        pipes: rich().pipes[..1].to_vec(),
+        losses: vec![],
+        ..rich()
+    };
+    let found = Model::new(
+        &line,
+        &other.grid(20),
+        &[1.0, 1.0],
+        FrictionModel::default(),
+    );
+    assert_eq!(found.err(), Some(TransientError::GridOfAnotherLine));
     let steep = Pipe {
         length: 4000.0,
         bore: 0.02,
@@ -242,4 +254,34 @@ fn extremes_are_found_between_nodes() {
         assert!((node.highest - node.level) <= found[node.run].highest.0);
         assert!((node.lowest - node.level) >= found[node.run].lowest.0);
     }
+}
+
+/// A high point between two nodes raises the floor of the nearer; an even
+/// slope raises none.
+#[test]
+fn a_high_point_between_nodes_counts() {
+    let pipe = Pipe {
+        length: 400.0,
+        bore: 0.2,
+        wave_speed: 1000.0,
+        roughness: 5e-5,
+    };
+    let even = Bench::uniform(100.0, pipe, 0.05);
+    let humped = Bench {
+        humps: vec![(0.255, 8.0)],
+        ..even.clone()
+    };
+    let (even, humped) = (even.model(10, &[1.0]), humped.model(10, &[1.0]));
+    for node in 0..11 {
+        let vapour = even.floors[node] - even.levels[node];
+        assert!((vapour + 10.21).abs() < 0.01);
+        assert!((humped.floors[node] - humped.levels[node]) >= vapour - 1e-12);
+    }
+    // 102 m lies between nodes at 80 and 120 m; the point stands at 95 x 0.745
+    // + 8 m.
+    let top = 95.0 * 0.745 + 8.0;
+    let chord = humped.levels[2] + 0.55 * (humped.levels[3] - humped.levels[2]);
+    let expected = humped.levels[3] + top - chord - 10.21;
+    assert!(top - chord > 1.0);
+    assert!((humped.floors[3] - expected).abs() < 0.01);
 }
