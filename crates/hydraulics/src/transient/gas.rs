@@ -19,6 +19,8 @@ use crate::solve::{Bracket, Tolerance};
 /// of volume.
 ///
 /// # Validity
+/// At a joint the gas stands on its upper side; below a joint that loses much
+/// head the pressure may come out lower than that of vapour by that loss.
 /// Cavities small against their cell. Peaks after a cavity collapses depend on
 /// the grid (they do not converge): such a run is for a warning only.
 #[derive(Debug, Clone, Copy, PartialEq)]
