@@ -1,5 +1,5 @@
 //! Water in pipes: properties, friction, fittings, the steady line with its
-//! jets, quick surge figures.
+//! jets, quick surge figures, transients.
 //!
 //! The picture is a penstock: water stands at a known level in a forebay,
 //! runs down a pipe whose bore may change on the way, and leaves through
@@ -16,7 +16,8 @@
 //!   ([`line::Line::flow_for`]) and the nozzle for a given flow
 //!   ([`line::Line::bore_for`]);
 //! - [`surge`] for wave speed and the quick surge figures. They are
-//!   first estimates: they do not replace the transient solution.
+//!   first estimates: they do not replace the transient solution;
+//! - [`transient`] for that solution, and the shortest safe closing time.
 //!
 //! Quantities cross the doors as [`quantity`] types over `uom` (f64, SI);
 //! what `uom` cannot tell apart has a newtype of its own. Kernels run on plain
@@ -38,5 +39,6 @@ pub mod nozzle;
 pub mod quantity;
 pub mod solve;
 pub mod surge;
+pub mod transient;
 pub mod water;
 pub mod wheel;

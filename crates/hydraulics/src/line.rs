@@ -36,5 +36,6 @@ pub use curve::{CurvePoint, PowerCurve};
 pub use grade::{Grade, LineCaution, Node, RunLoss};
 pub use jets::{Jet, NozzleSet, NozzleTemplate, Solved};
 pub use layout::Line;
+pub(crate) use layout::RunLayout;
 pub use spec::{LineError, LineSpec, LocalLoss, Point, Run};
 pub use suction::{SuctionStretch, VapourMargin};

@@ -6,7 +6,18 @@
 
 #![expect(clippy::print_stdout, reason = "a benchmark prints")]
 
-use hydraulics::friction::colebrook_factors;
+use hydraulics::constants::{standard_atmosphere, standard_gravity};
+use hydraulics::friction::{FrictionLaw, colebrook_factors};
+use hydraulics::line::{Line, LineSpec, NozzleSet, Point, Run};
+use hydraulics::nozzle::Nozzle;
+use hydraulics::quantity::{
+    Length, Level, PipeLength, ThermodynamicTemperature, Time, Velocity, unit,
+};
+use hydraulics::transient::{
+    Characteristic, ClosingLaw, Duration as Lasting, Event, Foot, FrictionModel, Grid, GridSpec,
+    Model, RunOptions, Scratch, SurgeLine, SurgeSpec,
+};
+use hydraulics::water::Water;
 use std::hint::black_box;
 use std::time::{Duration, Instant};
 use workbook::book::Station;
@@ -132,10 +143,126 @@ fn long_lines() {
     );
 }
 
+/// One pipe with a nozzle at its foot.
+fn surge_line() -> Option<SurgeLine> {
+    let metres = Length::new::<unit::length::meter>;
+    let celsius = ThermodynamicTemperature::new::<unit::thermodynamic_temperature::degree_celsius>;
+    let point = |chainage, level| Point {
+        chainage: PipeLength::from_m(chainage),
+        level: Level::from_m(level),
+    };
+    let line = Line::new(LineSpec {
+        forebay: Level::from_m(160.0),
+        points: vec![point(0.0, 155.0), point(800.0, 100.0)],
+        runs: vec![Run {
+            to: PipeLength::from_m(800.0),
+            bore: metres(0.2),
+            friction: FrictionLaw::ColebrookWhite {
+                roughness: metres(5e-5),
+            },
+        }],
+        losses: vec![],
+        water: Water::at(celsius(10.0)).ok()?,
+        gravity: standard_gravity(),
+    })
+    .ok()?;
+    SurgeLine::new(SurgeSpec {
+        line,
+        wave_speeds: vec![Velocity::new::<unit::velocity::meter_per_second>(400.0)],
+        foot: Foot {
+            nozzles: NozzleSet {
+                nozzles: vec![Nozzle::new(metres(0.05), 0.97, 1.0).ok()?],
+                axis: Level::from_m(100.0),
+                branch_k: 0.2,
+                branch_bore: metres(0.15),
+            },
+            characteristic: Characteristic::Linear,
+        },
+        atmosphere: standard_atmosphere(),
+    })
+    .ok()
+}
+
+/// Nine operations for each cell over rows like the solver's: what arithmetic
+/// alone takes.
+#[inline(never)]
+fn nine(p: &mut [f64], m: &mut [f64], high: &mut [f64], low: &mut [f64], k: f64) {
+    for (((p, m), high), low) in p.iter_mut().zip(m).zip(high).zip(low) {
+        let d = *p - *m;
+        let r = d * k * d;
+        let sum = *p + *m;
+        *p -= r;
+        *m += r;
+        *high = *high * 0.5 + sum;
+        *low -= sum;
+    }
+}
+
+/// The transient of 2000 steps on 200 cells, against the arithmetic bound.
+fn transient() {
+    const CELLS: usize = 200;
+    const STEPS: usize = 2000;
+    let prepared = surge_line().and_then(|line| {
+        let spec = GridSpec {
+            cells: CELLS,
+            ..GridSpec::default()
+        };
+        let grid = Grid::new(&line, spec).ok()?;
+        let model = Model::new(&line, &grid, &[1.0], FrictionModel::default()).ok()?;
+        let law = ClosingLaw::linear(Time::new::<unit::time::second>(10.0)).ok()?;
+        let event = Event::close(&[1.0], &law).ok()?;
+        let lasting = Lasting::Until(grid.step() * STEPS as f64);
+        Some((model, event, lasting))
+    });
+    let Some((model, event, lasting)) = prepared else {
+        println!("the transient of the benchmark cannot be made");
+        return;
+    };
+    let lean = RunOptions {
+        duration: lasting,
+        ..RunOptions::lean()
+    };
+    let full = RunOptions {
+        duration: lasting,
+        ..RunOptions::default()
+    };
+    let mut scratch = Scratch::new();
+    let mut scratch_full = Scratch::new();
+    let mut rows = vec![vec![0.5; CELLS]; 4];
+    let [bound, lean_s, full_s] = least(
+        60,
+        [
+            &mut || {
+                let [p, m, high, low] = rows.as_mut_slice() else {
+                    return;
+                };
+                for _ in 0..STEPS {
+                    nine(p, m, high, low, black_box(1e-9));
+                }
+                black_box(&rows);
+            },
+            &mut || {
+                let _ = black_box(model.run(black_box(&event), &lean, &mut scratch));
+            },
+            &mut || {
+                let _ = black_box(model.run(black_box(&event), &full, &mut scratch_full));
+            },
+        ],
+    );
+    line(
+        "transient, 2000 steps of 200 cells, against 9 operations a cell",
+        lean_s / bound,
+        "target <= 1.5 wasm",
+    );
+    line("the same with traces and balances", full_s / bound, "");
+    println!("({:.3} ms lean, {:.3} ms full)", lean_s * 1e3, full_s * 1e3);
+}
+
 fn main() {
     println!("{:<64} {:>10}", "ratio", "");
     let one_factor = friction();
     long_lines();
+    transient();
     let book = demo("bench");
     let found = resolve(&book);
     let mut sweep = Sweep::new(&book);

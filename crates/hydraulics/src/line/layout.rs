@@ -25,11 +25,11 @@ pub struct Line {
 
 /// A run in SI numbers.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub(super) struct RunLayout {
-    pub(super) from: f64,
-    pub(super) to: f64,
-    pub(super) bore: f64,
-    pub(super) area: f64,
+pub(crate) struct RunLayout {
+    pub(crate) from: f64,
+    pub(crate) to: f64,
+    pub(crate) bore: f64,
+    pub(crate) area: f64,
     pub(super) law: FrictionLaw,
     /// Head lost locally in the run over flow squared, s2/m5.
     pub(super) local: f64,
@@ -147,6 +147,35 @@ impl Line {
         } else {
             Err(LineError::LossBeyondCounting(flow))
         }
+    }
+
+    /// The runs in SI numbers, for the transient solver.
+    pub(crate) fn run_layouts(&self) -> &[RunLayout] {
+        &self.runs
+    }
+
+    /// Acceleration of free fall, m/s2.
+    pub(crate) fn gravity_si(&self) -> f64 {
+        self.gravity
+    }
+
+    /// Chainage of every local loss and change of bore, m, with head over flow
+    /// squared, s2/m5, from the inlet to the foot.
+    pub(crate) fn local_layouts(&self) -> impl Iterator<Item = (f64, f64)> {
+        self.steps.iter().filter_map(|step| match step.kind {
+            StepKind::Local(coefficient) => Some((step.end.chainage, coefficient)),
+            StepKind::Pipe(_) => None,
+        })
+    }
+
+    /// Level of the pipe's axis at a chainage within the line, m.
+    pub(crate) fn level_si(&self, chainage: f64) -> f64 {
+        level_at(&self.spec, chainage, None)
+    }
+
+    /// Head lost per length in a run, flow in m3/s from zero up.
+    pub(crate) fn gradient_si(&self, run: &RunLayout, flow: f64) -> f64 {
+        self.run_friction(run, flow).gradient
     }
 
     /// Friction in a run, flow in m3/s.

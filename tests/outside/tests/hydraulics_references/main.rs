@@ -13,4 +13,5 @@ mod friction;
 mod jets;
 mod rows;
 mod surge;
+mod transient;
 mod water;
