@@ -2,12 +2,12 @@
 
 use super::sample;
 use words::{Language, Words};
-use workbook::book::{Book, DistanceKind, Reckoning};
+use workbook::book::{Book, DistanceKind, Reckoning, SurveyWay};
 use workbook::evaluate;
 use workbook::import::table::{Choices, Faulty, Ground, Preview, Separator, Table, open};
 use workbook::import::{Encoding, Fault, Given, ImportedLine, Meaning, Note, Obstacle, Refusal};
 use workbook::reading::DecimalMark;
-use workbook::units::UnitSystem;
+use workbook::units::{Kind, UnitSystem};
 
 const GIVEN: Given = Given {
     mark: DecimalMark::Point,
@@ -169,12 +169,14 @@ fn what_a_file_says_of_itself_is_believed() {
 }
 
 #[test]
-fn clinometer_readings_are_carried_until_the_line_takes_them() {
+fn clinometer_readings_level_their_stations() {
     let (_, line) = take("csv/clinometer.csv");
-    assert_eq!(
-        line.carried(),
-        [Meaning::ForeSight, Meaning::BackSight, Meaning::PlanTurn]
-    );
+    let stations = line.stations(1);
+    assert!(stations.iter().skip(1).all(|s| s.way == SurveyWay::Angle));
+    let fore = stations[2].fore_sight_deg.usable(Kind::Angle).unwrap();
+    assert_eq!(fore, Some(-17.8));
+    let turn = stations[2].plan_turn_deg.usable(Kind::Angle).unwrap();
+    assert_eq!(turn, Some(-12.5));
     let fore = line.rows[2].fore_sight.as_ref().unwrap();
     assert_eq!((fore.text.as_str(), fore.unit), ("-17,8", "°"));
     assert!((fore.value.unwrap() + 17.8).abs() < 1e-12);
