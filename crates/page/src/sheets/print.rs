@@ -14,7 +14,6 @@ use crate::sheets::head;
 use crate::state::{State, state};
 use leptos::prelude::*;
 use words::{Key, Words, text};
-use workbook::Measure;
 use workbook::book::Paper;
 use workbook::schedule::schedule;
 use workbook::{Book, Findings};
@@ -123,10 +122,7 @@ fn title_block(words: Words, book: &Book, findings: &Findings) -> AnyView {
         &resolved.design_flow,
         book.stream.design_flow_m3_s.plus_minus,
     ) {
-        (Ok(flow), Some(doubt)) => {
-            let doubt = Measure::new(doubt, workbook::units::Kind::Flow);
-            text::figure_plus_minus(words, &words.figure(*flow), &words.figure(doubt))
-        }
+        (Ok(flow), Some(doubt)) => words.doubtful(*flow, doubt),
         (Ok(flow), None) => words.figure(*flow),
         (Err(gap), _) => words.about(book).gap(gap),
     };
