@@ -138,7 +138,7 @@ fn state_line(state: State) -> String {
     });
     match state.saved.get() {
         Saved::Nothing => {}
-        Saved::Saving => parts.push(words.say(Key::STATE_SAVING).to_owned()),
+        Saved::Saving => parts.push(words.say(Key::STATE_SAVING).to_lowercase()),
         // The list of books says it at length; a phone's title has no room.
         Saved::Kept
             if state.persistence.get() == Persistence::MayBeCleared
@@ -146,7 +146,7 @@ fn state_line(state: State) -> String {
         {
             parts.push(words.say(Key::PAGE_SAVED_FOR_NOW).to_owned());
         }
-        Saved::Kept => parts.push(words.say(Key::STATE_SAVED).to_owned()),
+        Saved::Kept => parts.push(words.say(Key::STATE_SAVED).to_lowercase()),
         Saved::Not(_) => parts.insert(0, words.say(Key::STATE_NOT_SAVED).to_owned()),
     }
     parts.join(" · ")

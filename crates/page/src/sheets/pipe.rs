@@ -72,8 +72,8 @@ pub fn PipeSheet() -> impl IntoView {
                         text::page_figures_of(words, &name)
                     };
                     view! {
-                        <details class="sheet-part" data-test="stretch-figures">
-                            <summary class="button-quiet">{said}</summary>
+                        <details class="sheet-part fold" data-test="stretch-figures">
+                            <summary>{said}</summary>
                             {figures(stretch_figures(id))}
                         </details>
                     }

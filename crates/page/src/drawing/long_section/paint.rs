@@ -365,6 +365,9 @@ impl Painter<'_> {
             x1: size.width,
             y1: size.height,
         });
+        // The levels have but two rows above their lines; a point has places all
+        // around it.
+        self.level_labels(&SHARES);
         if let Some(lowest) = &section.lowest
             && let Some(at) = self.layout.px((lowest.x, lowest.y))
         {
@@ -393,7 +396,6 @@ impl Painter<'_> {
                 &SHARES,
             );
         }
-        self.level_labels(&SHARES);
         let line = plain(section);
         for f in section.fittings.iter().filter(|f| !f.label.is_empty()) {
             let y = f.y.or_else(|| polyline::at(&line, f.x));
@@ -463,8 +465,8 @@ impl Painter<'_> {
                 let below = text_box(low, &place);
                 let y = place.y - self.text * 1.1;
                 [
-                    (below.x1, Anchor::End),
                     (below.x0, Anchor::Start),
+                    (below.x1, Anchor::End),
                     (f64::midpoint(below.x0, below.x1), Anchor::Middle),
                 ]
                 .map(|(x, anchor)| Place { x, y, anchor })

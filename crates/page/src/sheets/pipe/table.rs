@@ -360,22 +360,17 @@ fn row(state: State, words: Words, row: &Row, chosen: bool) -> AnyView {
 
 /// What the columns hold that a phone has no room for.
 fn rest_of(words: Words, row: &Row) -> String {
-    let said: Vec<String> = [
-        Column::Velocity,
-        Column::NetHead,
-        Column::Power,
-        Column::Quick,
-    ]
-    .into_iter()
-    .filter_map(|c| {
-        let value = cell(words, row, c)?;
-        let (name, unit) = column(words, c);
-        Some(match c {
-            Column::Velocity | Column::Power => format!("{value}\u{202f}{unit}"),
-            _ => format!("{} {value}\u{202f}{unit}", name.to_lowercase()),
+    let said: Vec<String> = [Column::Velocity, Column::NetHead, Column::Quick]
+        .into_iter()
+        .filter_map(|c| {
+            let value = cell(words, row, c)?;
+            let (name, unit) = column(words, c);
+            Some(match c {
+                Column::Velocity => format!("{value}\u{202f}{unit}"),
+                _ => format!("{} {value}\u{202f}{unit}", name.to_lowercase()),
+            })
         })
-    })
-    .collect();
+        .collect();
     said.join(" · ")
 }
 

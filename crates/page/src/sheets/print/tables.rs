@@ -168,7 +168,7 @@ fn schedule_row(words: Words, book: &Book, id: Id, line: &Figure<Line>) -> AnyVi
             {td(words.value(line.from))}
             {td(words.value(line.to))}
             {td(words.value(line.length))}
-            <td>
+            <td class="print-name">
                 <div>{pipe.designation.clone()}</div>
                 <div>{pipe.standard.clone()} " " {speak::memory(words, seen)}</div>
                 <div>{words.name(line.laying)}</div>
