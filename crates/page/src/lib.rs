@@ -26,10 +26,10 @@
 //! | `first-demo`, `first-file`, `today` | Stream sheet |
 //! | `station-table`, `station-<id>`, `station-pick-<id>`, `station-add`, `station-tools`, `station-above`, `station-below`, `station-split`, `station-fitting`, `station-delete` | stations |
 //! | `line-stretch-<id>`, `stretch-start-<id>`, `stretch-delete-<id>`, `stretch-to-pipe-<id>` | stretches on the Line sheet |
-//! | `fitting-add`, `fitting-<id>`, `fitting-kind-<id>`, `fitting-station-<id>`, `fitting-delete-<id>` | fittings |
+//! | `fitting-add`, `fitting-<id>`, `fitting-kind-<id>`, `fitting-station-<id>`, `fitting-delete-<id>`; `fitting-fold-<id>` opens one | fittings |
 //! | `figure-<FigureKey>` | a figure, which opens `working` (`working-formula`, `working-result`, `working-close`) |
 //! | `stretch-<id>`, `stretch-pick-<id>`, `stretch-pipe-<id>`, `verdict-<id>` (with `data-verdict`) | stretches on the Pipe sheet |
-//! | `sweep-material`, `sweep-fit-fit`, `sweep-fit-all`, `sweep-target`, `sweep-whole-line`, `sweep-progress`, `sweep-count`, `sweep-chart`, `sweep-said`, `sweep-table`, `sort-<Column>`, `sweep-all` | the sweep |
+//! | `sweep-material`, `sweep-fit-fit`, `sweep-fit-all`, `sweep-target`, `sweep-whole-line`, `sweep-progress`, `sweep-count`, `sweep-memory`, `sweep-chart`, `sweep-said`, `sweep-left-out`, `sweep-table`, `sort-<Column>`, `sweep-all` | the sweep |
 //! | `row-<pipe>`, `choose-<pipe>` | a pipe of it: [`slug::pipe`], as `choose-pe100-iso4427-225-sdr17` |
 //! | `own-add`, `own-<id>-delete`, `choose-own-<id>` | pipes of the user's own |
 //! | `jet-table`, `jets-open-<n>`, `power-curve` | Jets sheet |

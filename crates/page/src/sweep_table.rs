@@ -36,15 +36,18 @@ pub enum Column {
     Verdict,
 }
 
-/// Every column, in the order of the table: what is chosen by first, so that a
-/// phone shows it without moving sideways.
+/// How many of [`COLUMNS`] a phone shows; the others follow in a second line.
+pub const NARROW: usize = 5;
+
+/// Every column, in the order of the table: the verdict beside the name, then
+/// what is chosen by, so that a phone shows it without moving sideways.
 pub const COLUMNS: [Column; 12] = [
     Column::Pipe,
+    Column::Verdict,
     Column::Bore,
-    Column::Velocity,
     Column::LossShare,
     Column::Share,
-    Column::Verdict,
+    Column::Velocity,
     Column::Loss,
     Column::NetHead,
     Column::Power,
@@ -108,15 +111,37 @@ pub fn is_fit(row: &Row, cap: Option<f64>) -> bool {
     row.verdict.verdict != Verdict::Fails && !too_much
 }
 
-/// Places of the rows shown, in order. Rows without the figure they are
-/// ordered by come last, whichever way.
+/// Whether the filter takes a row, its sources apart.
+fn is_asked_for(row: &Row, filter: Filter, cap: Option<f64>) -> bool {
+    filter.material.is_none_or(|m| row.material == m) && (!filter.fit_only || is_fit(row, cap))
+}
+
+/// Whether a row stands back: it rests on values from memory, so it cannot
+/// hold, and it is shown only where it is asked for.
+fn stands_back(row: &Row, filter: Filter) -> bool {
+    !row.seen && filter.fit_only && filter.material.is_none()
+}
+
+/// How many rows that the filter takes stand back, resting on values from
+/// memory.
 #[must_use]
-pub fn shown(rows: &[Row], filter: Filter, cap: Option<f64>) -> Vec<usize> {
+pub fn held_back(rows: &[Row], filter: Filter, cap: Option<f64>, chosen: &[String]) -> usize {
+    rows.iter()
+        .filter(|r| is_asked_for(r, filter, cap) && stands_back(r, filter))
+        .filter(|r| !chosen.contains(&r.pipe))
+        .count()
+}
+
+/// Places of the rows shown, in order. Rows without the figure they are
+/// ordered by come last, whichever way. What is chosen is shown though it rests
+/// on values from memory.
+#[must_use]
+pub fn shown(rows: &[Row], filter: Filter, cap: Option<f64>, chosen: &[String]) -> Vec<usize> {
     let mut places: Vec<usize> = (0..rows.len())
         .filter(|i| {
             let row = &rows[*i];
-            filter.material.is_none_or(|m| row.material == m)
-                && (!filter.fit_only || is_fit(row, cap))
+            is_asked_for(row, filter, cap)
+                && (!stands_back(row, filter) || chosen.contains(&row.pipe))
         })
         .collect();
     if filter.by == Column::Pipe {
@@ -182,7 +207,7 @@ mod tests {
             by: Column::LossShare,
             ..Filter::default()
         };
-        let places = shown(&rows, filter, Some(0.1));
+        let places = shown(&rows, filter, Some(0.1), &[]);
         assert!(!places.is_empty());
         for pair in places.windows(2) {
             let [a, b] = pair else { continue };
@@ -197,7 +222,31 @@ mod tests {
             fit_only: false,
             ..filter
         };
-        assert!(shown(&rows, all, Some(0.1)).len() > places.len());
+        assert!(shown(&rows, all, Some(0.1), &[]).len() > places.len());
+    }
+
+    #[test]
+    fn values_from_memory_stand_back_until_asked_for() {
+        let rows = rows();
+        let filter = Filter::default();
+        let unseen = |places: &[usize]| places.iter().filter(|i| !rows[**i].seen).count();
+        let plain = shown(&rows, filter, None, &[]);
+        assert_eq!(unseen(&plain), 0);
+        let back = held_back(&rows, filter, None, &[]);
+        assert!(back > 0 && !plain.is_empty());
+        let one = rows
+            .iter()
+            .find(|r| !r.seen && is_fit(r, None))
+            .map(|r| vec![r.pipe.clone()])
+            .unwrap();
+        assert_eq!(unseen(&shown(&rows, filter, None, &one)), 1);
+        assert_eq!(held_back(&rows, filter, None, &one), back - 1);
+        let grp = Filter {
+            material: Some(Material::Grp),
+            ..filter
+        };
+        assert!(unseen(&shown(&rows, grp, None, &[])) > 0);
+        assert_eq!(held_back(&rows, grp, None, &[]), 0);
     }
 
     #[test]
@@ -210,7 +259,7 @@ mod tests {
                 down,
                 ..Filter::default()
             };
-            let places = shown(&rows, filter, None);
+            let places = shown(&rows, filter, None, &[]);
             let first_gap = places
                 .iter()
                 .position(|i| rows[*i].net_head.is_err())
@@ -237,6 +286,7 @@ mod tests {
                 ..Filter::default()
             },
             None,
+            &[],
         );
         let down = shown(
             &rows,
@@ -246,6 +296,7 @@ mod tests {
                 ..Filter::default()
             },
             None,
+            &[],
         );
         up.reverse();
         assert_eq!(up, down);

@@ -9,7 +9,7 @@ mod rule;
 #[cfg(test)]
 mod tests;
 
-use crate::Words;
+use crate::{Words, text};
 use rule::{leading_place, most_decimals, rule};
 use workbook::export::Cell;
 use workbook::measure::Measure;
@@ -109,10 +109,12 @@ impl Words {
     /// The same without unit, for a column whose head names it.
     #[must_use]
     pub fn value(self, measure: impl Into<Measure>) -> String {
-        match self.plain(measure.into()) {
-            Some(plain) => dress(&plain, self.mark),
-            None => NONE.to_owned(),
-        }
+        let measure = measure.into();
+        let Some(plain) = self.plain(measure) else {
+            return NONE.to_owned();
+        };
+        self.below(measure, &plain)
+            .unwrap_or_else(|| dress(&plain, self.mark))
     }
 
     /// The same as a number for a spreadsheet, with the decimals it is shown
@@ -146,6 +148,45 @@ impl Words {
         })
     }
 
+    /// "below 0.001" for what is there, but less than the last digit that
+    /// means something: a loss of a hair is not printed as none.
+    fn below(self, measure: Measure, plain: &str) -> Option<String> {
+        let keeps_small = rule(measure.kind, self.units).least > 0;
+        let nothing = plain
+            .parse::<f64>()
+            .is_ok_and(|x| x.total_cmp(&0.0).is_eq());
+        let hidden = nothing && self.shown(measure)? > 0.0;
+        let decimals = usize::try_from(most_decimals(measure.kind)).ok()?;
+        (keeps_small && hidden).then(|| {
+            let digit = format!("0.{:0>decimals$}", 1);
+            text::figure_below(self, &dress(&digit, self.mark))
+        })
+    }
+
+    /// A figure with the doubt about it, to the digits the doubt leaves:
+    /// "42 ± 2 L/s". The doubt is a difference, in the base unit of the kind.
+    #[must_use]
+    pub fn doubtful(self, measure: impl Into<Measure>, doubt: f64) -> String {
+        let measure = measure.into();
+        let unit = measure.kind.default_unit(self.units);
+        let Some(x) = self.shown(measure) else {
+            return NONE.to_owned();
+        };
+        let doubt = (unit.from_base(doubt) - unit.from_base(0.0)).abs();
+        // Two figures of the doubt at most, fewer where it was typed with fewer.
+        let Some(leading) = leading_place(doubt).filter(|_| doubt.is_finite()) else {
+            return self.figure(measure);
+        };
+        let decimals = (1 - leading).clamp(0, most_decimals(measure.kind));
+        let plain = fixed(doubt, decimals);
+        let short = trimmed(&plain);
+        let kept = short.split_once('.').map_or(0, |(_, d)| d.len());
+        let value = fixed(x, i32::try_from(kept).unwrap_or(0));
+        let both =
+            text::figure_plus_minus(self, &dress(&value, self.mark), &dress(short, self.mark));
+        self.with_unit(both, measure.kind)
+    }
+
     /// A figure with its unit and every digit that means something.
     #[must_use]
     pub fn full(self, measure: impl Into<Measure>) -> String {
@@ -157,6 +198,9 @@ impl Words {
             (FULL_FIGURES - 1 - leading).clamp(0, most_decimals(measure.kind))
         });
         let plain = fixed(x, decimals);
+        if let Some(below) = self.below(measure, &plain) {
+            return self.with_unit(below, measure.kind);
+        }
         self.with_unit(dress(trimmed(&plain), self.mark), measure.kind)
     }
 

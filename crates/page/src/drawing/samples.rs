@@ -262,6 +262,7 @@ pub(crate) fn sweep(count: usize) -> SweepChart {
             unsettled: "unsettled".into(),
             tight: "tight".into(),
             dominated: "beaten by another".into(),
+            more: "more pipes close by".into(),
             title: "Loss against bore".into(),
             desc: "Invented: pipes of three classes.".into(),
         },

@@ -61,7 +61,7 @@ where
         .collect();
     let label_id = format!("{slug}-label");
     view! {
-        <div class="field">
+        <div class="field field-wide">
             <span class="field-label" id=label_id.clone()>
                 {move || state.words.get().say(label)}
             </span>

@@ -43,8 +43,7 @@ impl Handle {
             let value = words.full(Measure::new(reading.value, kind));
             let shown = match reading.plus_minus {
                 Some(doubt) if field.kind() != workbook::units::Kind::Temperature => {
-                    let doubt = words.full(Measure::new(doubt, kind));
-                    text::figure_plus_minus(words, &value, &doubt)
+                    words.doubtful(Measure::new(reading.value, kind), doubt)
                 }
                 _ => value,
             };
@@ -112,9 +111,16 @@ impl Handle {
         let described = format!("{id}-trouble {id}-read {id}-hint");
         let hint = move || {
             let words = self.state.words.get();
-            self.field
-                .preset()
-                .map(|p| words.value(Measure::new(p.value, self.field.kind())))
+            let stands_in = match self.field {
+                // Distances are counted from there.
+                Field::StationDistance(id) => self
+                    .state
+                    .book
+                    .with(|b| b.line.stations.first().is_some_and(|s| s.id == id))
+                    .then_some(0.0),
+                field => field.preset().map(|p| p.value),
+            };
+            stands_in.map(|x| words.value(Measure::new(x, self.field.kind())))
         };
         view! {
             <input

@@ -28,7 +28,7 @@ pub fn picker(
             .collect_view()
     };
     view! {
-        <div class="field">
+        <div class="field field-wide">
             <label class="field-label" for=id.to_owned()>{move || label.get()}</label>
             <div class="field-line">
                 <select

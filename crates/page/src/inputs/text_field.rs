@@ -13,6 +13,8 @@ use workbook::Book;
 pub struct TextLook {
     /// Several lines.
     pub long: bool,
+    /// Of a few letters: shares its row with others.
+    pub short: bool,
     /// What to enter.
     pub hint: Option<Key>,
 }
@@ -26,7 +28,7 @@ pub fn text_field(
     get: impl Fn(&Book) -> String + Copy + Send + Sync + 'static,
     set: impl Fn(&mut Book, String) + Copy + 'static,
 ) -> AnyView {
-    let TextLook { long, hint } = look;
+    let TextLook { long, short, hint } = look;
     let state = state();
     let id = format!("text-{slug}");
     let touch = Touch::Text(slug.to_owned());
@@ -89,7 +91,7 @@ pub fn text_field(
         .into_any()
     };
     view! {
-        <div class="field" class:field-wide=long>
+        <div class="field" class:field-wide=!short>
             <label class="field-label" for=id>{move || state.words.get().say(label)}</label>
             <div class="field-line">{entry}</div>
             <p class="field-hint" id=described>

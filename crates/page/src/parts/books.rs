@@ -167,11 +167,11 @@ pub fn BooksDialog() -> impl IntoView {
             </div>
             <div class="dialog-body">
                 {move || storage_words(state).map(|w| view! { <p class="quiet">{w}</p> })}
-                <ul class="menu">{rows}</ul>
+                <ul class="books">{rows}</ul>
                 <Show when=move || state.stored.with(Vec::is_empty)>
                     <p class="quiet">{say(Key::STATE_NO_BOOKS)}</p>
                 </Show>
-                <div class="buttons">
+                <div class="buttons buttons-even">
                     {act(
                         "book-new",
                         Key::DO_NEW_BOOK,
@@ -278,6 +278,8 @@ fn row(state: State, record: Record, here: &str) -> impl IntoView + use<> {
                 }
             >
                 <strong>{named}</strong>
+                {is_here
+                    .then(|| view! { <span class="marked">{say(Key::PAGE_BOOK_HERE)}</span> })}
                 <span class="quiet">{when}</span>
             </button>
             <div class="buttons">

@@ -255,13 +255,15 @@ fn one_line(state: State) -> AnyView {
     match worst(state) {
         Some(verdict) => {
             let (lead, _) = speak::stretch_verdict(words, &book, &findings, &verdict);
+            // Two things, and neither the reason of the other.
             view! {
                 {mark_svg(verdict.verdict, share_of(&verdict))}
-                <span>{lead} " " {lowest}</span>
+                <span>{lead.trim_end_matches(':').to_owned()}</span>
+                <span class="drawing-lowest">{lowest}</span>
             }
             .into_any()
         }
-        None => view! { <span>{lowest}</span> }.into_any(),
+        None => view! { <span class="drawing-lowest">{lowest}</span> }.into_any(),
     }
 }
 

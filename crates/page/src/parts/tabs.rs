@@ -79,7 +79,7 @@ pub fn Tabs() -> impl IntoView {
                 }
                 on:click=move |_| state.next_theme()
             >
-                {move || state.words.get().say(state.theme.get().key())}
+                {say(Key::SETTING_THEME)}
             </button>
             <button
                 type="button"

@@ -3,6 +3,7 @@
 
 use crate::keeping::Saved;
 use crate::parts::books;
+use crate::parts::drawing_panel::WIDE;
 use crate::parts::figures::figure_text;
 use crate::parts::working;
 use crate::platform::storage::Persistence;
@@ -137,11 +138,15 @@ fn state_line(state: State) -> String {
     });
     match state.saved.get() {
         Saved::Nothing => {}
-        Saved::Saving => parts.push(words.say(Key::STATE_SAVING).to_owned()),
-        Saved::Kept if state.persistence.get() == Persistence::MayBeCleared => {
+        Saved::Saving => parts.push(words.say(Key::STATE_SAVING).to_lowercase()),
+        // The list of books says it at length; a phone's title has no room.
+        Saved::Kept
+            if state.persistence.get() == Persistence::MayBeCleared
+                && state.window.get().0 >= WIDE =>
+        {
             parts.push(words.say(Key::PAGE_SAVED_FOR_NOW).to_owned());
         }
-        Saved::Kept => parts.push(words.say(Key::STATE_SAVED).to_owned()),
+        Saved::Kept => parts.push(words.say(Key::STATE_SAVED).to_lowercase()),
         Saved::Not(_) => parts.insert(0, words.say(Key::STATE_NOT_SAVED).to_owned()),
     }
     parts.join(" · ")

@@ -29,10 +29,22 @@ pub fn focus(id: &str) -> bool {
     let Some(element) = by_id(id) else {
         return false;
     };
+    unfold(&element);
     let options = web_sys::ScrollIntoViewOptions::new();
     options.set_block(web_sys::ScrollLogicalPosition::Center);
     element.scroll_into_view_with_scroll_into_view_options(&options);
     element.focus().is_ok()
+}
+
+/// Opens every fold the element is in, or is.
+fn unfold(element: &web_sys::Element) {
+    let mut fold = element.closest("details").ok().flatten();
+    while let Some(details) = fold {
+        let _ = details.set_attribute("open", "");
+        fold = details
+            .parent_element()
+            .and_then(|up| up.closest("details").ok().flatten());
+    }
 }
 
 /// Brings the element of this id into view, without the focus.

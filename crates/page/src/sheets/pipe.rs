@@ -72,8 +72,8 @@ pub fn PipeSheet() -> impl IntoView {
                         text::page_figures_of(words, &name)
                     };
                     view! {
-                        <details class="sheet-part" data-test="stretch-figures">
-                            <summary class="button-quiet">{said}</summary>
+                        <details class="sheet-part fold" data-test="stretch-figures">
+                            <summary>{said}</summary>
                             {figures(stretch_figures(id))}
                         </details>
                     }
@@ -138,20 +138,24 @@ fn stretch(state: State, id: Id) -> AnyView {
             tabindex="-1"
             data-test=format!("stretch-{id}")
         >
-            <h3 class:chosen=chosen>
+            <h3>
                 <button
                     type="button"
-                    class="button-quiet"
+                    class="pick-head"
                     data-test=format!("stretch-pick-{id}")
                     aria-pressed=move || if chosen() { "true" } else { "false" }
                     on:click=move |_| {
                         state.stretch.set(if chosen() { None } else { Some(id) });
                     }
                 >
-                    {named}
+                    <span>
+                        {named}
+                        <span class="pick-more" data-test=format!("stretch-pipe-{id}")>
+                            {pipe}
+                        </span>
+                    </span>
                 </button>
             </h3>
-            <p class="quiet" data-test=format!("stretch-pipe-{id}")>{pipe}</p>
             {verdict_line(id)}
             {move || {
                 changed

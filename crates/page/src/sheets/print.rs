@@ -16,7 +16,6 @@ use crate::slug;
 use crate::state::{State, state};
 use leptos::prelude::*;
 use words::{Key, Words, csv, text};
-use workbook::Measure;
 use workbook::book::{LayingOrder, Paper, PrintParts};
 use workbook::laying::laying;
 use workbook::schedule::schedule;
@@ -208,10 +207,7 @@ fn title_block(words: Words, book: &Book, findings: &Findings) -> AnyView {
         &resolved.design_flow,
         book.stream.design_flow_m3_s.plus_minus,
     ) {
-        (Ok(flow), Some(doubt)) => {
-            let doubt = Measure::new(doubt, workbook::units::Kind::Flow);
-            text::figure_plus_minus(words, &words.figure(*flow), &words.figure(doubt))
-        }
+        (Ok(flow), Some(doubt)) => words.doubtful(*flow, doubt),
         (Ok(flow), None) => words.figure(*flow),
         (Err(gap), _) => words.about(book).gap(gap),
     };

@@ -74,7 +74,7 @@ pub fn StreamSheet() -> impl IntoView {
             {text_field(
                 "date",
                 Key::FIELD_SITE_DATE,
-                TextLook::default(),
+                TextLook { short: true, ..TextLook::default() },
                 |b| b.site.date.clone(),
                 |b, t| b.site.date = t,
             )}
@@ -115,7 +115,7 @@ pub fn StreamSheet() -> impl IntoView {
     }
     .into_any();
     view! {
-        {head(Key::SHEET_STREAM, Key::STREAM_NOT_GAUGED)}
+        {head(Key::SHEET_STREAM, Key::PAGE_ABOUT_STREAM)}
         <Show when=move || is_untouched(state)>
             <div class="buttons" data-test="first-start">
                 <button
@@ -136,7 +136,7 @@ pub fn StreamSheet() -> impl IntoView {
                 </button>
             </div>
         </Show>
-        <div class="fields">
+        <div class="fields fields-one">
             <NumberField field=Field::DesignFlow doubt=true/>
         </div>
         {part("site", Key::FIGURE_SITE, site)}

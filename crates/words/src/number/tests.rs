@@ -84,10 +84,32 @@ fn figures_as_printed() {
         (en, 14.567, Kind::MassPerLength, "14.6 kg/m", "14.567 kg/m"),
         (es, 12.5, Kind::PricePerLength, "12,50/m", "12,5/m"),
         (en, 0.0, Kind::Pressure, "0.00 bar", "0 bar"),
+        (en, 0.0003, Kind::Head, "below 0.001 m", "below 0.001 m"),
+        (
+            es,
+            0.0003,
+            Kind::Head,
+            "menos de 0,001 m",
+            "menos de 0,001 m",
+        ),
+        (en, 0.0, Kind::Head, "0.00 m", "0 m"),
     ] {
         let measure = Measure::new(value, kind);
         assert_eq!(easy(&words.figure(measure)), short);
         assert_eq!(easy(&words.full(measure)), full);
+    }
+    for (words, value, doubt, kind, shown) in [
+        (en, 0.042, 0.002, Kind::Flow, "42 ± 2 L/s"),
+        (es, 0.0425, 0.0015, Kind::Flow, "42,5 ± 1,5 L/s"),
+        (us, 0.042, 0.002, Kind::Flow, "666 ± 32 gpm"),
+        (en, 0.042, 0.0, Kind::Flow, "42.0 L/s"),
+        (en, 0.12, 0.0123, Kind::Flow, "120 ± 12 L/s"),
+        (us, 20.0, 1.0, Kind::Temperature, "68.0 ± 1.8 °F"),
+    ] {
+        assert_eq!(
+            easy(&words.doubtful(Measure::new(value, kind), doubt)),
+            shown
+        );
     }
     let limit = Measure::new(3.0, Kind::Velocity);
     assert_eq!(easy(&en.brief(limit)), "3 m/s");
@@ -138,6 +160,12 @@ fn what_is_no_number_stops_a_debug_build() {
     let _ = words.figure(Measure::new(f64::NAN, Kind::Pressure));
 }
 
+/// The bound of "below 0.001 m".
+fn below(words: Words, text: &str) -> Option<&str> {
+    let said = text::figure_below(words, "");
+    text.strip_prefix(&said)
+}
+
 /// Half of the last digit printed, in the unit shown.
 fn half_digit(text: &str) -> f64 {
     let number = text.split(['e', '/', '%', '°']).next().unwrap_or("");
@@ -175,6 +203,12 @@ proptest! {
                     (words.figure(measure), rule.most, trimmed),
                     (words.full(measure), FULL_FIGURES, 0.0),
                 ] {
+                    if let Some(bound) = below(words, &text) {
+                        // Less than the last digit that means something.
+                        let bound = read(bound, kind, unit, words.mark).unwrap().unwrap();
+                        prop_assert!(x > 0.0 && x < unit.from_base(bound.value), "{kind:?} {x}: {text}");
+                        continue;
+                    }
                     let back = read(&text, kind, unit, words.mark).unwrap().unwrap();
                     prop_assert_eq!(back.own_unit, !unit.symbol.is_empty());
                     let digit = half_digit(&text)
@@ -202,10 +236,14 @@ proptest! {
                 let words = Words::new(Language::Spanish, system);
                 let text = words.full(measure);
                 let unit = kind.default_unit(system);
-                let base = read(&text, kind, unit, words.mark).unwrap().unwrap().value;
+                let number = |text: &str| read(text, kind, unit, words.mark).unwrap().unwrap().value;
+                if let Some(bound) = below(words, &text) {
+                    // Somewhere between nothing and the bound.
+                    return (0.0, number(bound));
+                }
                 // Half of the last decimal that means something.
                 let last = format!("0.5e-{}", most_decimals(kind)).parse().unwrap();
-                (base, unit.to_base(last) - unit.to_base(0.0))
+                (number(&text), unit.to_base(last) - unit.to_base(0.0))
             };
             let (metric, a) = back(UnitSystem::Metric);
             let (us, b) = back(UnitSystem::UsCustomary);
@@ -225,7 +263,8 @@ proptest! {
                 let unit = kind.default_unit(words.units);
                 let printed = |x: f64| {
                     let text = words.value(Measure::new(unit.to_base(x), kind));
-                    read(&text, kind, unit, words.mark).unwrap().unwrap().value
+                    let text = below(words, &text).unwrap_or(&text);
+                    read(text, kind, unit, words.mark).unwrap().unwrap().value
                 };
                 prop_assert!(printed(low) <= printed(high), "{kind:?}");
             }

@@ -67,6 +67,9 @@ impl Layout {
         let roof = text
             * if section.level_unit.is_empty() {
                 0.8
+            } else if section.highest_static.is_some() {
+                // For two names, one upon the other.
+                2.4
             } else {
                 1.7
             };

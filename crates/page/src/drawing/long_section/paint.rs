@@ -1,6 +1,6 @@
 //! The drawing itself, from the back to the front.
 
-use super::super::label::{Placer, Rect, Words, along, around, text_box, text_width};
+use super::super::label::{Place, Placer, Rect, Words, along, around, text_box, text_width};
 use super::super::svg::{Anchor, Path, Svg};
 use super::super::{Verdict, hatch, polyline, under};
 use super::layout::Layout;
@@ -365,6 +365,9 @@ impl Painter<'_> {
             x1: size.width,
             y1: size.height,
         });
+        // The levels have but two rows above their lines; a point has places all
+        // around it.
+        self.level_labels(&SHARES);
         if let Some(lowest) = &section.lowest
             && let Some(at) = self.layout.px((lowest.x, lowest.y))
         {
@@ -393,11 +396,6 @@ impl Painter<'_> {
                 &SHARES,
             );
         }
-        for level in section.static_level.iter().chain(&section.highest_static) {
-            if let Some(line) = self.level_line(level.y) {
-                self.line_label(&level.label, "d-text d-halo", &line, false, &SHARES);
-            }
-        }
         let line = plain(section);
         for f in section.fittings.iter().filter(|f| !f.label.is_empty()) {
             let y = f.y.or_else(|| polyline::at(&line, f.x));
@@ -406,6 +404,76 @@ impl Painter<'_> {
             }
         }
         self.note();
+    }
+
+    /// The names of both standing levels, the higher one's always above the
+    /// other's: where the lines lie close, one stands upon the other.
+    fn level_labels(&mut self, shares: &[f64]) {
+        const CLASS: &str = "d-text d-halo";
+        let section = self.section;
+        let of =
+            |level: &super::StandingLevel| Some((level.label.clone(), self.level_line(level.y)?));
+        let standing = section.static_level.as_ref().and_then(of);
+        let highest = section.highest_static.as_ref().and_then(of);
+        let (Some((low, low_line)), Some((high, high_line))) = (&standing, &highest) else {
+            for (label, line) in standing.iter().chain(&highest) {
+                self.line_label(label, CLASS, line, false, shares);
+            }
+            return;
+        };
+        let (low_words, high_words) = (self.words(low, CLASS), self.words(high, CLASS));
+        if under(low_line[0].1 - high_line[0].1, self.text * 1.6)
+            && let Some((low_at, high_at)) =
+                self.stacked(&low_words, &high_words, high_line, shares)
+        {
+            for (words, place) in [(&low_words, low_at), (&high_words, high_at)] {
+                self.placer.write(&mut self.svg, words, &[place]);
+            }
+            return;
+        }
+        for (words, line, is_high) in [
+            (&high_words, high_line, true),
+            (&low_words, low_line, false),
+        ] {
+            let side = |gap: f64| {
+                let mut all = along(line, words, gap, shares, !is_high);
+                all.retain(|p| under(p.y, line[0].1) == is_high);
+                all
+            };
+            let (near, far) = (side(2.0), side(self.text * 0.7));
+            let placed = self
+                .placer
+                .write(&mut self.svg, words, &near)
+                .or_else(|| self.placer.write(&mut self.svg, words, &far));
+            self.tell_if_left_out(words.text, placed.is_some());
+        }
+    }
+
+    /// Places for two texts above a line, the second standing upon the first.
+    fn stacked(
+        &self,
+        low: &Words<'_>,
+        high: &Words<'_>,
+        line: &[(f64, f64)],
+        shares: &[f64],
+    ) -> Option<(Place, Place)> {
+        let places = along(line, low, 2.0, shares, false);
+        let above = places.into_iter().filter(|p| under(p.y, line[0].1));
+        above
+            .filter(|p| self.placer.is_free(&text_box(low, p)))
+            .find_map(|place| {
+                let below = text_box(low, &place);
+                let y = place.y - self.text * 1.1;
+                [
+                    (below.x0, Anchor::Start),
+                    (below.x1, Anchor::End),
+                    (f64::midpoint(below.x0, below.x1), Anchor::Middle),
+                ]
+                .map(|(x, anchor)| Place { x, y, anchor })
+                .into_iter()
+                .find(|p| self.placer.is_free(&text_box(high, p)))
+                .map(|p| (place, p))
+            })
     }
 
     fn sub_atmospheric_label(&mut self) {
@@ -478,7 +546,7 @@ impl Painter<'_> {
             (field.x1, low, Anchor::End),
             (field.x0 + 3.0, high, Anchor::Start),
         ]
-        .map(|(x, y, anchor)| super::super::label::Place { x, y, anchor });
+        .map(|(x, y, anchor)| Place { x, y, anchor });
         let note = self.section.note.clone();
         let words = self.words(&note, "d-text d-soft d-halo");
         let placed = self.placer.write(&mut self.svg, &words, &places);
@@ -566,7 +634,7 @@ impl Painter<'_> {
             } else {
                 (x, Anchor::Middle)
             };
-            let place = super::super::label::Place { x, y, anchor };
+            let place = Place { x, y, anchor };
             let rect = text_box(&words, &place);
             let wide = Rect {
                 x0: rect.x0 - self.text * 0.5,

@@ -133,6 +133,28 @@ fn what_cannot_be_drawn_is_named() {
     ));
 }
 
+#[test]
+fn the_higher_level_is_named_above_the_lower() {
+    // From lines on top of one another to lines well apart, on phone and desk.
+    for rise in [0.3, 2.0, 9.0, 30.0] {
+        for (width, height) in [(320.0, 220.0), (360.0, 230.0), (690.0, 560.0)] {
+            let mut section = samples::long_line(12);
+            if let (Some(low), Some(high)) = (&section.static_level, &mut section.highest_static) {
+                high.y = low.y + rise;
+            }
+            let d = drawn(&section, Size::screen(width, height));
+            let boxes = text_boxes(&d.picture.svg);
+            let at = |label: &str| boxes.iter().find(|b| b.0 == label).map(|b| b.1.y0);
+            let (high, low) = (at("highest 421.5 m"), at("static level 418 m"));
+            let (Some(high), Some(low)) = (high, low) else {
+                assert!(!d.left_out.is_empty(), "{rise} {width}");
+                continue;
+            };
+            assert!(high < low, "{rise} m at {width}: {high} under {low}");
+        }
+    }
+}
+
 /// The boxes of all texts in a drawing, as wide as they are taken to be.
 fn text_boxes(svg: &str) -> Vec<(String, crate::drawing::label::Rect)> {
     use crate::drawing::label::{Place, Words, text_box};

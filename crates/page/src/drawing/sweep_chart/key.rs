@@ -4,6 +4,7 @@ use super::super::label::text_width;
 use super::super::shape::Shape;
 use super::super::{Size, Verdict};
 use super::SweepChart;
+use super::thin::Role;
 
 /// What an entry shows before its words.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -18,6 +19,8 @@ pub(super) enum Sign {
     Fails,
     /// Small and light.
     Dominated,
+    /// A tick.
+    More,
 }
 
 /// One entry: where its sign is centred, and its words.
@@ -38,10 +41,16 @@ pub(super) struct Key {
 }
 
 impl Key {
-    /// Rows no wider than `width`.
-    pub(super) fn of(chart: &SweepChart, size: Size, width: f64) -> Key {
+    /// Rows no wider than `width`. Where the roles of the points are known, only
+    /// what is drawn is named.
+    pub(super) fn of(chart: &SweepChart, roles: Option<&[Role]>, size: Size, width: f64) -> Key {
         let text = size.text();
-        let has = |f: &dyn Fn(&super::SweepPoint) -> bool| chart.points.iter().any(f);
+        let role = |i: usize| roles.and_then(|r| r.get(i)).copied();
+        let has = |f: &dyn Fn(&super::SweepPoint) -> bool| {
+            let drawn = |i| !matches!(role(i), Some(Role::Tick | Role::Absent));
+            let mut points = chart.points.iter().enumerate();
+            points.any(|(i, p)| drawn(i) && f(p))
+        };
         let mut wanted: Vec<(Sign, &str)> = chart
             .families
             .iter()
@@ -70,6 +79,11 @@ impl Key {
                 Sign::Dominated,
                 &words.dominated,
                 has(&|p| p.dominated && !p.chosen),
+            ),
+            (
+                Sign::More,
+                &words.more,
+                roles.is_some_and(|r| r.contains(&Role::Tick)),
             ),
         ] {
             if occurs {

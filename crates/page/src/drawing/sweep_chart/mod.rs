@@ -4,17 +4,19 @@
 //! straight band and small losses are read as well as large ones. A family (one
 //! pressure class, one series) has a shape of its own. An outline that is broken
 //! is unsettled, as everywhere; a pipe that fails is struck through; one that
-//! another pipe beats in every way is small and light, so that seven hundred
-//! points still read. The loss cap is the strongest line: it is what the
+//! another pipe beats in every way is small and light, and one whose mark would lie
+//! over another is a tick, so that seven hundred points still read. The loss cap is the strongest line: it is what the
 //! installer decided. Greatest power is a curiosity and stays quiet.
 
 mod key;
 mod paint;
+mod thin;
 
 use super::label::Rect;
 use super::scale::Scale;
 use super::ticks::{Tick, logarithmic_ticks};
 use super::{DrawingError, NumberFormat, Picture, Size, Verdict, under};
+use thin::Role;
 
 /// One pipe.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -60,6 +62,8 @@ pub struct SweepWords {
     pub tight: String,
     /// In the key, for small light points.
     pub dominated: String,
+    /// In the key, for ticks.
+    pub more: String,
     /// Name of the chart.
     pub title: String,
     /// What it shows.
@@ -100,6 +104,8 @@ pub struct SweepDrawing {
     pub picture: Picture,
     /// How many points are not in the picture, so that the page can say so.
     pub not_shown: NotShown,
+    /// How many are ticks, for want of room.
+    pub ticks: usize,
     /// Labels that found no room.
     pub left_out: Vec<String>,
     /// Pixels of each point, in the order of the input; `None` when not shown.
@@ -167,19 +173,17 @@ pub fn draw(
     bore: NumberFormat<'_>,
     percent: NumberFormat<'_>,
 ) -> Result<SweepDrawing, DrawingError> {
-    let layout = Layout::of(chart, size, bore, percent)?;
-    let pixels: Vec<Option<(f64, f64)>> = chart
-        .points
-        .iter()
-        .map(|p| {
-            if !is_drawable(p) {
-                return None;
-            }
-            let at = (layout.x.px(p.bore)?, layout.y.px(p.loss_share)?);
-            layout.field.holds_point(at.0, at.1).then_some(at)
-        })
-        .collect();
-    let painted = paint::paint(chart, &layout, &pixels);
+    let mut layout = Layout::of(chart, size, bore, percent, None)?;
+    let mut pixels = layout.pixels(chart);
+    let mut roles = layout.roles(chart, &pixels);
+    if roles.contains(&Role::Tick) {
+        // The key tells of ticks, and names no family that is ticks alone: it
+        // takes other room, and the field with it.
+        layout = Layout::of(chart, size, bore, percent, Some(&roles))?;
+        pixels = layout.pixels(chart);
+        roles = layout.roles(chart, &pixels);
+    }
+    let painted = paint::paint(chart, &layout, &pixels, &roles);
     Ok(SweepDrawing {
         picture: Picture {
             svg: painted.svg,
@@ -189,12 +193,12 @@ pub fn draw(
             desc: chart.words.desc.clone(),
         },
         not_shown: count_not_shown(chart, &pixels),
+        ticks: roles.iter().filter(|r| **r == Role::Tick).count(),
         left_out: painted.left_out,
         pixels,
-        lesser: chart
-            .points
+        lesser: roles
             .iter()
-            .map(|p| p.dominated && !p.chosen)
+            .map(|r| matches!(r, Role::Light | Role::Tick))
             .collect(),
         field: layout.field,
     })
@@ -231,6 +235,13 @@ const BELOW_CAP: f64 = 15.0;
 /// A loss above this share of the head is not shown: beyond one third more loss
 /// means less power, and no one goes that far.
 pub const MOST_SHARE: f64 = 0.6;
+/// Losses under this share of the head are not shown.
+#[must_use]
+pub fn least_share(cap: Option<f64>) -> f64 {
+    let usable = cap.filter(|c| *c > 0.0 && *c <= 1.0);
+    usable.unwrap_or(USUAL_CAP) / BELOW_CAP
+}
+
 /// What stands in for the cap where there is none: one tenth of the head (common
 /// practice).
 const USUAL_CAP: f64 = 0.1;
@@ -246,6 +257,7 @@ impl Layout {
         size: Size,
         bore: NumberFormat<'_>,
         percent: NumberFormat<'_>,
+        roles: Option<&[Role]>,
     ) -> Result<Layout, DrawingError> {
         let text = size.text();
         let no_room = DrawingError::NoRoom {
@@ -258,7 +270,7 @@ impl Layout {
         })?;
 
         let right = size.width - text * 0.9;
-        let key = key::Key::of(chart, size, right - text * 0.5);
+        let key = key::Key::of(chart, roles, size, right - text * 0.5);
         let roof = text
             * if chart.words.loss.is_empty() {
                 1.0
@@ -307,17 +319,32 @@ impl Layout {
     }
 }
 
+impl Layout {
+    /// Where each point stands; `None` for those not in the picture.
+    fn pixels(&self, chart: &SweepChart) -> Vec<Option<(f64, f64)>> {
+        let at = |p: &SweepPoint| {
+            if !is_drawable(p) {
+                return None;
+            }
+            let at = (self.x.px(p.bore)?, self.y.px(p.loss_share)?);
+            self.field.holds_point(at.0, at.1).then_some(at)
+        };
+        chart.points.iter().map(at).collect()
+    }
+
+    /// How each point is drawn, that no mark lies over another.
+    fn roles(&self, chart: &SweepChart, pixels: &[Option<(f64, f64)>]) -> Vec<Role> {
+        let scale = self.size.text() / 12.0;
+        thin::roles(chart, pixels, (12.0 * scale, 6.5 * scale, 19.0 * scale))
+    }
+}
+
 type Ranges = ((f64, f64), (f64, f64));
 
 /// Bores and losses with a margin, so that no shape is cut by the edge; the
 /// limits are always in.
 fn ranges(chart: &SweepChart) -> Option<Ranges> {
-    let cap = chart
-        .cap
-        .as_ref()
-        .map(|c| c.share)
-        .filter(|c| *c > 0.0 && *c <= 1.0);
-    let least = cap.unwrap_or(USUAL_CAP) / BELOW_CAP;
+    let least = least_share(chart.cap.as_ref().map(|c| c.share));
     // The window gives way to the chosen one, and to a chart with nothing in it.
     let inside = |p: &SweepPoint| p.loss_share >= least && p.loss_share <= MOST_SHARE;
     let none_inside = !chart.points.iter().any(|p| is_drawable(p) && inside(p));

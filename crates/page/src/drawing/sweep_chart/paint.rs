@@ -5,6 +5,7 @@ use super::super::label::{Place, Placer, Rect, Words, around, text_box, text_wid
 use super::super::shape::Shape;
 use super::super::svg::{Anchor, Path, Svg};
 use super::key::Sign;
+use super::thin::Role;
 use super::{Layout, Limit, SweepChart, SweepPoint};
 
 pub(super) struct Painted {
@@ -16,18 +17,25 @@ struct Painter<'a> {
     chart: &'a SweepChart,
     layout: &'a Layout,
     pixels: &'a [Option<(f64, f64)>],
+    roles: &'a [Role],
     text: f64,
     svg: Svg,
     placer: Placer,
     left_out: Vec<String>,
 }
 
-pub(super) fn paint(chart: &SweepChart, layout: &Layout, pixels: &[Option<(f64, f64)>]) -> Painted {
+pub(super) fn paint(
+    chart: &SweepChart,
+    layout: &Layout,
+    pixels: &[Option<(f64, f64)>],
+    roles: &[Role],
+) -> Painted {
     let field = layout.field;
     let mut painter = Painter {
         chart,
         layout,
         pixels,
+        roles,
         text: layout.size.text(),
         svg: Svg::new(),
         placer: Placer::new(Rect {
@@ -56,24 +64,8 @@ const SMALL: f64 = 0.34;
 impl Painter<'_> {
     /// Radius of a full point and of a light one.
     fn radii(&self) -> (f64, f64) {
-        let shown = |(p, at): &(&SweepPoint, &Option<(f64, f64)>)| !p.dominated && at.is_some();
-        let crowd = self
-            .chart
-            .points
-            .iter()
-            .zip(self.pixels)
-            .filter(shown)
-            .count();
-        // A crowd of full points gets smaller ones.
-        let full = if crowd > 120 {
-            3.2
-        } else if crowd > 50 {
-            3.9
-        } else {
-            4.8
-        };
         let scale = self.text / 12.0;
-        (full * scale, 2.0 * scale)
+        (4.8 * scale, 2.0 * scale)
     }
 
     /// Beyond the cap lies a light veil.
@@ -176,35 +168,30 @@ impl Painter<'_> {
 
     fn points(&mut self) {
         let (full, light) = self.radii();
-        // Light ones first, then what fails, then the rest: the best on top.
-        let rank = |p: &SweepPoint| match (p.dominated, p.verdict) {
-            (true, _) => 0,
-            (false, Verdict::Fails) => 1,
-            (false, Verdict::Unsettled) => 2,
-            (false, Verdict::Tight) => 3,
-            (false, Verdict::Holds) => 4,
+        let of = |role: Role| {
+            let all = self.chart.points.iter().zip(self.pixels).zip(self.roles);
+            all.filter(move |(_, r)| **r == role)
+                .filter_map(|((p, at), _)| Some((p, (*at)?)))
+                .collect::<Vec<(&SweepPoint, (f64, f64))>>()
         };
-        let mut order: Vec<(&SweepPoint, (f64, f64))> = self
-            .chart
-            .points
-            .iter()
-            .zip(self.pixels)
-            .filter_map(|(p, at)| Some((p, (*at)?)))
-            .filter(|(p, _)| !p.chosen)
-            .collect();
-        order.sort_by_key(|(p, _)| rank(p));
-        // Light ones go into one path: seven hundred elements would be slow to draw,
-        // and at their size no broken outline would be seen.
+        let (ticks, small, marks) = (of(Role::Tick), of(Role::Light), of(Role::Full));
+        // Ticks and light ones go into one path each: seven hundred elements would
+        // be slow to draw, and at their size no broken outline would be seen.
+        let mut path = Path::new();
+        for (_, at) in ticks {
+            path.stroke((at.0, at.1 - light), (at.0, at.1 + light));
+        }
+        self.svg.path("d-more", &path);
         let (mut lights, mut struck) = (Path::new(), Path::new());
-        for (p, at) in order.iter().filter(|(p, _)| p.dominated) {
-            Shape::of(p.family).outline(&mut lights, *at, light);
+        for (p, at) in small {
+            Shape::of(p.family).outline(&mut lights, at, light);
             if p.verdict == Verdict::Fails {
-                strike(&mut struck, *at, light * 1.3);
+                strike(&mut struck, at, light * 1.3);
             }
         }
         self.svg.path("d-shape-lesser", &lights);
         self.svg.path("d-strike d-strike-lesser", &struck);
-        for (p, at) in order.into_iter().filter(|(p, _)| !p.dominated) {
+        for (p, at) in marks {
             self.point(Shape::of(p.family), p.verdict, at, full);
             let r = full * 1.1;
             self.placer.take(Rect {
@@ -357,6 +344,13 @@ impl Painter<'_> {
                     let mut path = Path::new();
                     Shape::Circle.outline(&mut path, at, r * 0.45);
                     self.svg.path("d-shape-lesser", &path);
+                }
+                Sign::More => {
+                    let mut path = Path::new();
+                    for dx in [-r * 0.6, 0.0, r * 0.6] {
+                        path.stroke((at.0 + dx, at.1 - r * 0.45), (at.0 + dx, at.1 + r * 0.45));
+                    }
+                    self.svg.path("d-more", &path);
                 }
                 Sign::Tight => self.point(Shape::Circle, Verdict::Tight, at, r),
                 Sign::Unsettled => self.point(Shape::Circle, Verdict::Unsettled, at, r),

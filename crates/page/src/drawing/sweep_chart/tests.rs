@@ -46,6 +46,38 @@ fn seven_hundred_points_are_few_elements() {
 }
 
 #[test]
+fn no_mark_lies_over_another_and_the_rest_are_ticks() {
+    let chart = samples::catalogue_sweep();
+    let mut last = usize::MAX;
+    for width in [336.0, 528.0, 900.0] {
+        let d = drawn(&chart, Size::screen(width, 300.0));
+        let full: Vec<(f64, f64)> = d
+            .pixels
+            .iter()
+            .zip(&d.lesser)
+            .filter(|(_, lesser)| !**lesser)
+            .filter_map(|(at, _)| *at)
+            .collect();
+        for (i, a) in full.iter().enumerate() {
+            for b in &full[i + 1..] {
+                let (dx, dy) = (a.0 - b.0, a.1 - b.1);
+                assert!(dx * dx + dy * dy >= 12.0 * 12.0 - 1e-9, "{a:?} {b:?}");
+            }
+        }
+        assert!(full.len() > 15, "{width}: {}", full.len());
+        assert!(d.ticks > 0 && d.ticks <= last, "{width}: {}", d.ticks);
+        assert!(d.picture.svg.contains("class=\"d-more\""));
+        assert!(d.picture.svg.contains(&chart.words.more));
+        last = d.ticks;
+    }
+    // A few pipes need no tick, and no word about one.
+    let few = samples::sweep(9);
+    let d = drawn(&few, Size::screen(900.0, 500.0));
+    assert_eq!(d.ticks, 0);
+    assert!(!d.picture.svg.contains(&few.words.more));
+}
+
+#[test]
 fn the_nearest_point_is_the_one_touched() {
     let chart = samples::sweep(24);
     let d = drawn(&chart, PHONE);

@@ -6,7 +6,7 @@ use crate::parts::figures::{figure_name, plain_figure};
 use crate::speak;
 use crate::state::{State, state};
 use leptos::prelude::*;
-use words::Key;
+use words::{Key, capital};
 use workbook::book::{FittingEntry, FittingKind, Id};
 use workbook::field::fitting_fields;
 use workbook::working::FigureKey;
@@ -25,7 +25,10 @@ pub(super) fn fittings() -> AnyView {
             .book
             .with(|b| b.line.fittings.iter().map(|f| f.id).collect::<Vec<Id>>())
     });
+    // What is added from now on opens by itself; the rest are one line each.
+    let opens = StoredValue::new(false);
     let add_one = move |_| {
+        opens.set_value(true);
         // The first is the entrance, at the head of the line; then mostly bends.
         let first = state.book.with_untracked(|b| b.line.fittings.is_empty());
         let station = state
@@ -52,7 +55,7 @@ pub(super) fn fittings() -> AnyView {
         <Show when=move || ids.with(Vec::is_empty)>
             <p class="quiet">{say(Key::LINE_NO_FITTINGS)}</p>
         </Show>
-        <For each=move || ids.get() key=|id| *id children=move |id| one(state, id)/>
+        <For each=move || ids.get() key=|id| *id children=move |id| one(state, id, opens.get_value())/>
         <div class="buttons">
             <button type="button" class="button" data-test="fitting-add" on:click=add_one>
                 {say(Key::DO_ADD_FITTING)}
@@ -62,7 +65,7 @@ pub(super) fn fittings() -> AnyView {
     .into_any()
 }
 
-fn one(state: State, id: Id) -> AnyView {
+fn one(state: State, id: Id, open: bool) -> AnyView {
     let say = move |key: Key| move || state.words.get().say(key);
     let kind = Memo::new(move |_| {
         state
@@ -103,19 +106,31 @@ fn one(state: State, id: Id) -> AnyView {
             .findings
             .with(|f| f.working(FigureKey::FittingLoss(id)).map(|w| w.result))
     });
+    let named = move || {
+        let words = state.words.get();
+        state.book.with(|b| capital(&words.about(b).fitting(id)))
+    };
+    let lost = move || {
+        let words = state.words.get();
+        k.with(|k| {
+            k.as_ref()
+                .map_or_else(|_| speak::none(), |k| words.figure(*k))
+        })
+    };
     view! {
-        <fieldset
-            class="sheet-part"
+        <details
+            class="fold"
             id=format!("fitting-{id}")
             tabindex="-1"
+            open=open
             data-test=format!("fitting-{id}")
         >
-            <legend class="visually-hidden">
-                {move || {
-                    let words = state.words.get();
-                    state.book.with(|b| words.about(b).fitting(id))
-                }}
-            </legend>
+            <summary data-test=format!("fitting-fold-{id}")>
+                <span>{named}</span>
+                <span class="num">{lost}</span>
+            </summary>
+            <fieldset>
+            <legend class="visually-hidden">{named}</legend>
             <div class="fields">
                 {picker(
                     &format!("fitting-kind-{id}"),
@@ -183,7 +198,8 @@ fn one(state: State, id: Id) -> AnyView {
                     {say(Key::DO_DELETE_FITTING)}
                 </button>
             </div>
-        </fieldset>
+            </fieldset>
+        </details>
     }
     .into_any()
 }

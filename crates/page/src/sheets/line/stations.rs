@@ -279,7 +279,7 @@ fn row(
             <th scope="row">
                 <button
                     type="button"
-                    class="button-quiet"
+                    class="station-pick"
                     data-test=format!("station-pick-{id}")
                     aria-expanded=move || if is_open.get() { "true" } else { "false" }
                     on:click=move |_| {
@@ -287,7 +287,9 @@ fn row(
                         open.set(if is_open.get_untracked() { None } else { Some(id) });
                     }
                 >
-                    {move || format!("{} {}", number.get(), name.get())}
+                    <span class="station-number">{number}</span>
+                    " "
+                    <span>{name}</span>
                 </button>
             </th>
             <td>{cell(Side::Distance, distance_unit, Key::FIELD_STATION_DISTANCE)}</td>

@@ -60,6 +60,7 @@ fn one(state: State, id: Id) -> AnyView {
                 .map_or_else(String::new, |s| s.from_station.to_string())
         })
     });
+    let is_chosen = move || state.stretch.get() == Some(id);
     let many = move || state.book.with(|b| b.line.stretches.len() > 1);
     let named = move || {
         let words = state.words.get();
@@ -88,11 +89,14 @@ fn one(state: State, id: Id) -> AnyView {
             <legend>
                 <button
                     type="button"
-                    class="button-quiet"
+                    class="pick-head"
                     data-test=format!("line-stretch-pick-{id}")
-                    on:click=move |_| state.stretch.set(Some(id))
+                    aria-pressed=move || if is_chosen() { "true" } else { "false" }
+                    on:click=move |_| {
+                        state.stretch.set(if is_chosen() { None } else { Some(id) });
+                    }
                 >
-                    <strong class:chosen=move || state.stretch.get() == Some(id)>{named}</strong>
+                    <strong>{named}</strong>
                 </button>
             </legend>
             <div class="fields">

@@ -1,7 +1,10 @@
 //! The sweep as a chart: loss against bore.
 
 use crate::drawing::Size;
-use crate::drawing::sweep_chart::{Limit, SweepChart, SweepDrawing, SweepPoint, SweepWords, draw};
+use crate::drawing::sweep_chart::{
+    Limit, MOST_SHARE, NotShown, SweepChart, SweepDrawing, SweepPoint, SweepWords, draw,
+    least_share,
+};
 use crate::parts::drawing_panel::WIDE;
 use crate::parts::line_drawing::mark;
 use crate::platform::place;
@@ -95,6 +98,7 @@ fn chart_of(
             unsettled: say(Key::VERDICT_UNSETTLED),
             tight: say(Key::VERDICT_TIGHT),
             dominated: say(Key::PAGE_OVER_CAP_OR_FAILS),
+            more: say(Key::PAGE_MORE_CLOSE),
             title: say(Key::SWEEP_CHART),
             desc: text::sweep_chart_described(words, &words.count(picked.len())),
         },
@@ -115,6 +119,31 @@ fn room(window: (f64, f64), big: bool) -> Size {
     }
 }
 
+/// What the chart leaves out or only hints at, counted.
+fn left_out(words: Words, drawing: &SweepDrawing, cap: Option<f64>) -> String {
+    let share = |s: f64| words.brief(Measure::share(s));
+    let NotShown {
+        above,
+        below,
+        without,
+    } = drawing.not_shown;
+    let mut said = Vec::new();
+    if drawing.ticks > 0 {
+        said.push(text::sweep_chart_ticks(words, drawing.ticks));
+    }
+    if above > 0 {
+        said.push(text::sweep_chart_above(words, above, &share(MOST_SHARE)));
+    }
+    if below > 0 {
+        let least = words.figure(Measure::share(least_share(cap)));
+        said.push(text::sweep_chart_below(words, below, &least));
+    }
+    if without > 0 {
+        said.push(text::sweep_chart_without(words, without));
+    }
+    said.join(" ")
+}
+
 /// The chart with what a touch shows on it.
 pub(super) fn chart(state: State) -> AnyView {
     let touched = RwSignal::new(None::<usize>);
@@ -130,7 +159,7 @@ pub(super) fn chart(state: State) -> AnyView {
         let chosen = chosen_pipes(state);
         let size = room(state.window.get(), state.theme.get() == Theme::Outdoor);
         state.rows.with(|all| {
-            let places = shown(all, filter, cap);
+            let places = shown(all, filter, cap, &chosen);
             let (chart, rows) = chart_of(all, &places, filter, (cap, greatest), &chosen, words);
             let bore = |x: f64, d: usize| words.axis(x, d);
             let per_cent = |x: f64, d: usize| format!("{}\u{202f}%", words.axis(x, d));
@@ -147,6 +176,7 @@ pub(super) fn chart(state: State) -> AnyView {
                 view! { <p class="quiet" data-test="sweep-empty">{said}</p> }.into_any()
             });
         };
+        let left_out = left_out(state.words.get(), &drawing, cap_of(state));
         let picture = drawing.picture.clone();
         let (width, height) = (picture.width, picture.height);
         let drawing = StoredValue::new(drawing);
@@ -195,6 +225,7 @@ pub(super) fn chart(state: State) -> AnyView {
                         })
                 }}
             </p>
+            <p class="quiet" data-test="sweep-left-out">{left_out}</p>
         };
         Some(drawn.into_any())
     })
@@ -222,8 +253,8 @@ mod tests {
                 fit_only: false,
                 ..Filter::default()
             };
-            let places = shown(&rows, filter, Some(0.1));
             let chosen = vec!["pe100-iso4427/225/sdr17".to_owned()];
+            let places = shown(&rows, filter, Some(0.1), &chosen);
             let (chart, drawn) =
                 chart_of(&rows, &places, filter, (Some(0.1), None), &chosen, words);
             assert_eq!(chart.points.len(), drawn.len());

@@ -7,10 +7,10 @@ use crate::parts::verdicts::{mark_svg, share_of, slug as verdict_slug};
 use crate::slug;
 use crate::speak;
 use crate::state::State;
-use crate::sweep_table::{COLUMNS, Column, collapse_share, shown};
+use crate::sweep_table::{COLUMNS, Column, NARROW, collapse_share, held_back, shown};
 use leptos::prelude::*;
 use pipes::Material;
-use words::{Key, Words, text};
+use words::{Key, Words, capital, text};
 use workbook::Measure;
 use workbook::figure::Figure;
 use workbook::sweep::Row;
@@ -188,8 +188,16 @@ pub(super) fn table(state: State) -> AnyView {
     let places = Memo::new(move |_| {
         let filter = state.filter.get();
         let cap = cap_of(state);
-        state.rows.with(|rows| shown(rows, filter, cap))
+        let chosen = chosen_pipes(state);
+        state.rows.with(|rows| shown(rows, filter, cap, &chosen))
     });
+    let back = move || {
+        let (filter, cap, chosen) = (state.filter.get(), cap_of(state), chosen_pipes(state));
+        let count = state
+            .rows
+            .with(|rows| held_back(rows, filter, cap, &chosen));
+        (count > 0).then(|| text::sweep_from_memory(state.words.get(), count))
+    };
     let in_view = move || {
         let most = if all.get() { usize::MAX } else { FIRST_ROWS };
         places.with(|p| p.iter().copied().take(most).collect::<Vec<_>>())
@@ -210,6 +218,7 @@ pub(super) fn table(state: State) -> AnyView {
     let count = move || text::sweep_pipes(state.words.get(), places.with(Vec::len));
     view! {
         <p class="quiet" data-test="sweep-count">{count}</p>
+        <p class="quiet" data-test="sweep-memory">{back}</p>
         <div
             class="table-scroll"
             tabindex="0"
@@ -223,7 +232,7 @@ pub(super) fn table(state: State) -> AnyView {
             >
                 <thead>
                     <tr>
-                        {heads} <th scope="col">{say(Key::SWEEP_WHY)}</th>
+                        {heads} <th scope="col" class="wide-only">{say(Key::SWEEP_WHY)}</th>
                     </tr>
                 </thead>
                 <tbody>{rows}</tbody>
@@ -266,6 +275,7 @@ fn column_head(state: State, c: Column) -> AnyView {
         <th
             scope="col"
             class:num=!matches!(c, Column::Pipe | Column::Verdict)
+            class:wide-only=!COLUMNS[..NARROW].contains(&c)
             aria-sort=sorted
         >
             <button
@@ -301,15 +311,23 @@ fn row(state: State, words: Words, row: &Row, chosen: bool) -> AnyView {
     let share = share_of(&row.verdict);
     let cells: Vec<AnyView> = COLUMNS
         .into_iter()
-        .filter(|c| *c != Column::Pipe)
-        .map(|c| {
+        .enumerate()
+        .filter(|(_, c)| *c != Column::Pipe)
+        .map(|(i, c)| {
             if c == Column::Verdict {
                 return verdict_cell(words, verdict, share);
             }
             let value = cell(words, row, c).unwrap_or_else(speak::none);
-            view! { <td class="num">{value}</td> }.into_any()
+            let class = if i < NARROW { "num" } else { "num wide-only" };
+            view! { <td class=class>{value}</td> }.into_any()
         })
         .collect();
+    // On a phone: what fails says why, the others what else they come to.
+    let rest = if verdict == Verdict::Fails {
+        capital(&why)
+    } else {
+        rest_of(words, row)
+    };
     let test = slug::pipe(&row.pipe);
     view! {
         <tr class:chosen=chosen data-test=format!("row-{test}")>
@@ -329,17 +347,36 @@ fn row(state: State, words: Words, row: &Row, chosen: bool) -> AnyView {
                     })}
             </th>
             {cells}
-            <td>
+            <td class="wide-only">
                 <p class="table-why">{why}</p>
             </td>
+        </tr>
+        <tr class="table-rest" class:chosen=chosen>
+            <td colspan=NARROW.to_string()>{rest}</td>
         </tr>
     }
     .into_any()
 }
 
+/// What the columns hold that a phone has no room for.
+fn rest_of(words: Words, row: &Row) -> String {
+    let said: Vec<String> = [Column::Velocity, Column::NetHead, Column::Quick]
+        .into_iter()
+        .filter_map(|c| {
+            let value = cell(words, row, c)?;
+            let (name, unit) = column(words, c);
+            Some(match c {
+                Column::Velocity => format!("{value}\u{202f}{unit}"),
+                _ => format!("{} {value}\u{202f}{unit}", name.to_lowercase()),
+            })
+        })
+        .collect();
+    said.join(" · ")
+}
+
 fn verdict_cell(words: Words, verdict: Verdict, share: Option<f64>) -> AnyView {
     view! {
-        <td class="num" data-verdict=verdict_slug(verdict)>
+        <td class="verdict-cell" data-verdict=verdict_slug(verdict)>
             {mark_svg(verdict, share)} " "
             <span class=format!("verdict-word is-{}", verdict_slug(verdict))>
                 {words.verdict(verdict)}

@@ -168,9 +168,9 @@ fn schedule_row(words: Words, book: &Book, id: Id, line: &Figure<Line>) -> AnyVi
             {td(words.value(line.from))}
             {td(words.value(line.to))}
             {td(words.value(line.length))}
-            <td>
-                {pipe.designation.clone()} " "
-                {pipe.standard.clone()} " " {speak::memory(words, seen)}
+            <td class="print-name">
+                <div>{pipe.designation.clone()}</div>
+                <div>{pipe.standard.clone()} " " {speak::memory(words, seen)}</div>
                 <div>{words.name(line.laying)}</div>
             </td>
             {td(words.value(Measure::bore(pipe.outside_diameter)))}
@@ -333,11 +333,15 @@ fn shape(words: Words, shape: Option<&Shape>) -> String {
         Some(Shape::Bend { angle_deg, radius }) => format!(
             "{}, {} {}",
             angle(*angle_deg),
-            words.say(Key::FIELD_FITTING_RADIUS),
+            words.say(Key::FIELD_FITTING_RADIUS).to_lowercase(),
             words.value(Measure::number(*radius))
         ),
         Some(Shape::Mitre { angle_deg }) => angle(*angle_deg),
-        Some(Shape::Valve { opening }) => words.figure(Measure::share(*opening)),
+        Some(Shape::Valve { opening }) => format!(
+            "{} {}",
+            words.say(Key::FIELD_FITTING_OPENING).to_lowercase(),
+            words.brief(Measure::share(*opening))
+        ),
         _ => String::new(),
     }
 }
@@ -394,7 +398,7 @@ pub(super) fn nozzles(words: Words, book: &Book, findings: &Findings) -> AnyView
         <section class="print-section print-keep">
             <h2>{words.say(Key::SCHEDULE_NOZZLES)}</h2>
             <p>{what}</p>
-            <table class="print-table" data-test="print-nozzles">
+            <table class="print-table print-pairs" data-test="print-nozzles">
                 <tbody>{rows}</tbody>
             </table>
         </section>
