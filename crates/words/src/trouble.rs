@@ -7,9 +7,9 @@ use hydraulics::intake::IntakeError;
 use hydraulics::line::LineError;
 use pipes::OwnPipeError;
 use workbook::figure::{Gap, Lack, Trouble};
-use workbook::format::MOST_ROWS;
 use workbook::measure::Measure;
 use workbook::pipe_copy::PipeCopyError;
+use workbook::resolve::profile::MOST_STATIONS;
 use workbook::units::Kind;
 
 impl About<'_> {
@@ -81,7 +81,7 @@ impl About<'_> {
             Trouble::TooManyStations { count } => text::trouble_too_many_stations(
                 words,
                 &words.count(*count),
-                &words.count(MOST_ROWS),
+                &words.count(MOST_STATIONS),
             ),
             Trouble::StretchStart { stretch } => {
                 text::trouble_stretch_start(words, &self.stretch(*stretch))

@@ -43,7 +43,8 @@ pub struct Cut {
     pub chainage: PipeLength,
     /// At a station, or where a new one is put in.
     pub at: CutAt,
-    /// The pipe above: as it is, or the weakest of its kind that is enough.
+    /// The pipe above: the one laid now, which is used to its end there, so
+    /// that no weaker one of its kind would be enough.
     pub above: String,
     /// The pipe below.
     pub below: String,
@@ -363,6 +364,9 @@ mod tests {
                                 typed(Field::StationDistance(3), "170");
                         }
                         book.line.bend = crate::book::BendKind::Joints;
+                        // What is carried from the head down is spread, too.
+                        book.line.spread_error = way != SurveyWay::Level;
+                        book.line.known_fall_m = typed(Field::KnownFall, "67.5");
                         let what = format!("{way:?} {kind:?} {reckoning:?} {own:?}");
                         let found = evaluate(&book);
                         let Ok(Proposal::Cut(cut)) = proposals(&found)[0].1.clone() else {

@@ -111,6 +111,7 @@ impl Findings {
         for (_, loss) in self.steady.fittings.iter().chain(&self.steady.bends) {
             add(loss.as_ref().err());
         }
+        add(self.intake.submergence.as_ref().err());
         for (_, quick) in &self.transient.quick {
             add(quick.as_ref().err());
         }

@@ -10,6 +10,8 @@ use workbook::working::FigureKey;
 use workbook::{EntryTrouble, Field, Trouble, evaluate};
 
 const FORMAT_1: &[u8] = include_bytes!("../data/books/format-1.json");
+/// With the fields that format 1 grew by for the line as surveyed.
+const SURVEY: &[u8] = include_bytes!("../data/books/format-1-survey.json");
 
 #[test]
 fn format_1_opens_with_its_figures() {
@@ -66,19 +68,56 @@ fn format_1_opens_with_its_figures() {
 }
 
 #[test]
+fn a_line_surveyed_in_every_way_opens_with_its_figures() {
+    let book = format::read(SURVEY).unwrap();
+    let found = evaluate(&book);
+    assert_eq!(found.troubles(), vec![]);
+    // Typed as a slope in per cent, with a decimal comma, in feet.
+    let sight = book.value(Field::StationForeSight(12)).unwrap().unwrap();
+    assert!((sight + 14.305_552).abs() < 1e-6, "{sight}");
+    assert_eq!(book.value(Field::StationStaffBack(13)), Ok(Some(0.412)));
+    let near = |a: f64, b: f64| assert!((a - b).abs() < 1e-9 * b.abs(), "{a} was {b}");
+    let closing = found.resolved.profile.closing.clone().unwrap().unwrap();
+    near(closing.surveyed.m(), 67.394_403_350_785_27);
+    near(closing.spread_over.unwrap().m(), 102.5);
+    near(
+        found.resolved.profile.pipe_length.clone().unwrap().m(),
+        374.000_251_120_075_9,
+    );
+    near(found.steady.loss.clone().unwrap().m(), 3.913_611_034_652_72);
+    let bends: Vec<u32> = found.steady.bends.iter().map(|(at, _)| *at).collect();
+    assert_eq!(bends, [3, 5, 10]);
+    let vents: Vec<u32> = found
+        .relief
+        .vents
+        .clone()
+        .unwrap()
+        .iter()
+        .map(|v| v.station)
+        .collect();
+    assert_eq!(vents, [3, 7, 8]);
+    let intake = found.intake.submergence.unwrap();
+    near(intake.needed.value, 0.331_014_203_227_964_8);
+}
+
+#[test]
 fn what_is_written_again_is_what_was_read() {
-    let book = format::read(FORMAT_1).unwrap();
-    let again = format::write(&book).unwrap();
-    let before: serde_json::Value = serde_json::from_slice(FORMAT_1).unwrap();
-    let after: serde_json::Value = serde_json::from_str(&again).unwrap();
-    assert_eq!(before, after);
+    for file in [FORMAT_1, SURVEY] {
+        let book = format::read(file).unwrap();
+        let again = format::write(&book).unwrap();
+        let before: serde_json::Value = serde_json::from_slice(file).unwrap();
+        let after: serde_json::Value = serde_json::from_str(&again).unwrap();
+        assert_eq!(before, after);
+    }
 }
 
 #[test]
 fn the_schema_knows_every_name_of_the_frozen_book() {
     let schema: serde_json::Value = serde_json::from_str(&format::schema()).unwrap();
-    let book: serde_json::Value = serde_json::from_slice(FORMAT_1).unwrap();
-    check(&book, &schema, &schema, "book");
+    for file in [FORMAT_1, SURVEY] {
+        let book: serde_json::Value = serde_json::from_slice(file).unwrap();
+        check(&book, &schema, &schema, "book");
+    }
 }
 
 /// Follows a value along its schema, as far as names go.
