@@ -74,18 +74,25 @@ pub fn verdict_line(stretch: Id) -> AnyView {
         // One stretch at a time shows all it was checked for.
         let looked_at =
             state.stretch.get() == Some(stretch) || findings.judged.stretches.len() == 1;
+        let mut told = Vec::new();
         let checks: Vec<AnyView> = found
             .checks
             .iter()
             .filter(|_| looked_at)
-            .map(|check| {
+            .filter_map(|check| {
                 let said = words.about(&book).check(check);
-                view! {
+                // Several checks may want for the same thing.
+                if told.contains(&said) {
+                    return None;
+                }
+                told.push(said.clone());
+                let line = view! {
                     <span class="verdict-more" data-verdict=slug(check.verdict)>
                         {said}
                     </span>
                 }
-                .into_any()
+                .into_any();
+                Some(line)
             })
             .collect();
         Some(view! {
