@@ -1,7 +1,7 @@
-//! Trunk and wasm-bindgen: those already there at the right version, or else
+//! Trunk, wasm-bindgen and the tools of the campaigns: those already there at the right version, or else
 //! built once into the user's cache.
 
-use super::Kit;
+use super::{Kit, apt};
 use crate::trouble::Trouble;
 use crate::{places, process, say};
 use std::fs;
@@ -9,6 +9,8 @@ use std::process::Command;
 
 /// Newer ones ask for a newer compiler than ours.
 const TRUNK: &str = "0.21.14";
+const FUZZ: &str = "0.13.2";
+const MUTANTS: &str = "27.1.0";
 
 /// Makes trunk, wasm-bindgen and its test runner available to the kit's commands.
 pub(super) fn ensure(kit: &mut Kit) -> Result<(), Trouble> {
@@ -34,6 +36,33 @@ pub(super) fn ensure(kit: &mut Kit) -> Result<(), Trouble> {
         install(kit, "wasm-bindgen-cli", &wasm_bindgen, &[], &programs)?;
     }
     Ok(())
+}
+
+/// Makes `cargo fuzz` available to the kit's commands.
+pub(super) fn ensure_fuzz(kit: &mut Kit) -> Result<(), Trouble> {
+    // What compiles libFuzzer, under the names that are asked for.
+    let compilers = ["c++", "g++", "clang++"];
+    if !compilers
+        .iter()
+        .any(|name| places::on_path(name, None).is_some())
+    {
+        apt::install(&["g++"], "compiles libFuzzer, which is written in C++")?;
+    }
+    ensure_one(kit, "cargo-fuzz", FUZZ)
+}
+
+/// Makes `cargo mutants` available to the kit's commands.
+pub(super) fn ensure_mutants(kit: &mut Kit) -> Result<(), Trouble> {
+    ensure_one(kit, "cargo-mutants", MUTANTS)
+}
+
+/// A package whose only program has its name.
+fn ensure_one(kit: &mut Kit, package: &str, version: &str) -> Result<(), Trouble> {
+    kit.put_first(places::tools().join("bin"));
+    if present(kit, &[package], version) {
+        return Ok(());
+    }
+    install(kit, package, version, &["--locked"], &[package])
 }
 
 /// The version of a package in a lock file.
