@@ -48,21 +48,21 @@ pub(super) fn ensure_fuzz(kit: &mut Kit) -> Result<(), Trouble> {
     {
         apt::install(&["g++"], "compiles libFuzzer, which is written in C++")?;
     }
-    ensure_one(kit, "cargo-fuzz", FUZZ)
+    ensure_one(kit, "cargo-fuzz", "cargo fuzz", FUZZ)
 }
 
 /// Makes `cargo mutants` available to the kit's commands.
 pub(super) fn ensure_mutants(kit: &mut Kit) -> Result<(), Trouble> {
-    ensure_one(kit, "cargo-mutants", MUTANTS)
+    ensure_one(kit, "cargo-mutants", "cargo mutants", MUTANTS)
 }
 
-/// A package whose only program has its name.
-fn ensure_one(kit: &mut Kit, package: &str, version: &str) -> Result<(), Trouble> {
+/// A package that adds one command to cargo, and answers as that only.
+fn ensure_one(kit: &mut Kit, package: &str, program: &str, version: &str) -> Result<(), Trouble> {
     kit.put_first(places::tools().join("bin"));
-    if present(kit, &[package], version) {
+    if present(kit, &[program], version) {
         return Ok(());
     }
-    install(kit, package, version, &["--locked"], &[package])
+    install(kit, package, version, &["--locked"], &[program])
 }
 
 /// The version of a package in a lock file.
@@ -76,10 +76,15 @@ fn version_in(lock: &str, package: &str) -> Option<String> {
     Some(version.to_owned())
 }
 
-/// Whether each program answers with the version wanted.
+/// Whether each program, or command of cargo, answers with the version wanted.
 fn present(kit: &Kit, programs: &[&str], version: &str) -> bool {
     programs.iter().all(|program| {
-        let found = process::output(kit.command(program).arg("--version")).unwrap_or_default();
+        let (program, command) = match program.split_once(' ') {
+            Some((program, command)) => (program, Some(command)),
+            None => (*program, None),
+        };
+        let found = process::output(kit.command(program).args(command).arg("--version"))
+            .unwrap_or_default();
         found.split_whitespace().any(|word| word == version)
     })
 }
