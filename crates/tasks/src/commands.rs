@@ -43,8 +43,9 @@ const COMMANDS: &[Command] = &[
     },
     Command {
         name: "bench",
-        arguments: "",
-        about: "prints speeds as ratios within one run",
+        arguments: "[native|wasm|page]...",
+        about: "prints speeds beside their targets, or those named: ratios natively, ratios of the \
+                browser to native, and the built page on a slow processor",
         run: bench::run,
         trouble_code: 1,
     },
@@ -64,9 +65,10 @@ const COMMANDS: &[Command] = &[
     },
     Command {
         name: "proof",
-        arguments: "[properties|crash]...",
+        arguments: "[properties|crash|fuzz|mutants]...",
         about: "longer campaigns, or those named: many cases of every property; \
-                killing the browser while it saves",
+                killing the browser while it saves; random bytes as files, texts and books; \
+                small changes to the engineering that a test must notice",
         run: proof::run,
         trouble_code: 1,
     },

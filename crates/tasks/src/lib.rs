@@ -6,6 +6,7 @@
 mod bench;
 mod commands;
 mod evaluate;
+mod page;
 pub mod places;
 mod post_build;
 mod process;

@@ -52,6 +52,20 @@ pub(crate) fn output(command: &mut Command) -> Option<String> {
 ///
 /// One that runs longer than `limit` is ended with everything it started.
 pub(crate) fn counted(command: &mut Command, limit: Duration) -> Result<(bool, Tally), Trouble> {
+    let mut tally = Tally::default();
+    let good = lines(command, limit, |line| tally.read(line))?;
+    Ok((good, tally))
+}
+
+/// Runs a command, shows what it prints and hands on each line; says whether it
+/// ended well.
+///
+/// One that runs longer than `limit` is ended with everything it started.
+pub(crate) fn lines(
+    command: &mut Command,
+    limit: Duration,
+    mut each: impl FnMut(&str),
+) -> Result<bool, Trouble> {
     say::note(&typed(command));
     let shown = typed(command);
     let not_started = |error: std::io::Error| {
@@ -80,12 +94,11 @@ pub(crate) fn counted(command: &mut Command, limit: Duration) -> Result<(bool, T
         });
     }
     let deadline = Instant::now() + limit;
-    let mut tally = Tally::default();
     loop {
         match lines.recv_timeout(deadline.saturating_duration_since(Instant::now())) {
             Ok(line) => {
                 say::line(&line);
-                tally.read(&line);
+                each(&line);
             }
             Err(mpsc::RecvTimeoutError::Disconnected) => break,
             Err(mpsc::RecvTimeoutError::Timeout) => {
@@ -101,7 +114,7 @@ pub(crate) fn counted(command: &mut Command, limit: Duration) -> Result<(bool, T
         }
     }
     let status = child.wait().map_err(not_started)?;
-    Ok((status.success(), tally))
+    Ok(status.success())
 }
 
 /// Ends a child and everything below it.

@@ -3,7 +3,7 @@
 use crate::setup::{self, Browser, Kit};
 use crate::tally::Tally;
 use crate::trouble::Trouble;
-use crate::{places, process, say, serve};
+use crate::{page, places, process, say};
 use std::process::{Command, ExitCode};
 use std::time::{Duration, Instant};
 
@@ -142,24 +142,8 @@ fn wasm(board: &mut Board, kit: &Kit, browser: &Browser) {
         packages.push("page");
     }
     for package in packages {
-        let mut command = kit.command("cargo");
-        command
-            .args([
-                "test",
-                "--release",
-                "--target",
-                TARGET,
-                "--tests",
-                "-p",
-                package,
-            ])
-            .current_dir(places::root())
-            .env(
-                "CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_RUNNER",
-                "wasm-bindgen-test-runner",
-            )
-            .env("CHROMEDRIVER", &browser.driver)
-            .env("WASM_BINDGEN_TEST_TIMEOUT", "120");
+        let mut command = in_browser(kit, browser);
+        command.args(["--release", "--tests", "-p", package]);
         board.tests(
             &format!("WebAssembly in the browser: {package}"),
             &mut command,
@@ -168,10 +152,25 @@ fn wasm(board: &mut Board, kit: &Kit, browser: &Browser) {
     }
 }
 
+/// `cargo test` for WebAssembly, run in the browser.
+pub(crate) fn in_browser(kit: &Kit, browser: &Browser) -> Command {
+    let mut command = kit.command("cargo");
+    command
+        .args(["test", "--target", TARGET])
+        .current_dir(places::root())
+        .env(
+            "CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_RUNNER",
+            "wasm-bindgen-test-runner",
+        )
+        .env("CHROMEDRIVER", &browser.driver)
+        .env("WASM_BINDGEN_TEST_TIMEOUT", "120");
+    command
+}
+
 fn walk(board: &mut Board, kit: &Kit, browser: &Browser) {
     say::step("page");
     let begun = Instant::now();
-    let built = serve::build(kit);
+    let built = page::build(kit);
     board.add("building the page", Tally::of(built.is_ok()), begun);
     if let Err(trouble) = built {
         say::trouble(&trouble);
@@ -229,7 +228,8 @@ impl Board {
         self.add(name, tally, begun);
     }
 
-    fn add(&mut self, name: &str, tally: Tally, begun: Instant) {
+    /// Takes up what was counted under a name.
+    pub(crate) fn add(&mut self, name: &str, tally: Tally, begun: Instant) {
         self.rows.push((name.to_owned(), tally, begun.elapsed()));
     }
 

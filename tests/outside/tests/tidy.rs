@@ -246,3 +246,60 @@ fn every_lint_exception_gives_its_reason() {
         }
     }
 }
+
+/// Keys of the reference messages, as the generated code names them.
+fn message_names() -> Vec<(String, String)> {
+    let text = fs::read_to_string(root().join("crates/words/messages/en.txt")).unwrap();
+    let mut section = String::new();
+    let mut keys = BTreeSet::new();
+    for line in text.lines() {
+        if line.is_empty() || line.starts_with(['#', ' ', '\t']) {
+            continue;
+        }
+        match line.strip_prefix('[').and_then(|l| l.strip_suffix(']')) {
+            Some(name) => section = name.to_owned(),
+            None => {
+                let key = line.split('=').next().unwrap().trim();
+                keys.insert(format!("{section}.{key}"));
+            }
+        }
+    }
+    // The two forms of a plural are one message.
+    let stem = |key: &str| {
+        let pair = key
+            .strip_suffix(".one")
+            .map(|stem| (stem, ".other"))
+            .or_else(|| key.strip_suffix(".other").map(|stem| (stem, ".one")))?;
+        keys.contains(&format!("{}{}", pair.0, pair.1))
+            .then(|| pair.0.to_owned())
+    };
+    keys.iter()
+        .map(|key| {
+            let name = stem(key).unwrap_or_else(|| key.clone());
+            (key.clone(), name.replace('.', "_"))
+        })
+        .collect()
+}
+
+#[test]
+fn every_message_is_said_somewhere() {
+    let mut named = BTreeSet::new();
+    for krate in ["words", "page", "tasks"] {
+        for file in files(&root().join("crates").join(krate).join("src"), &[".rs"]) {
+            let text = fs::read_to_string(&file).unwrap();
+            named.extend(
+                text.split(|c: char| !c.is_ascii_alphanumeric() && c != '_')
+                    .map(str::to_owned),
+            );
+        }
+    }
+    let unsaid: Vec<String> = message_names()
+        .into_iter()
+        .filter(|(_, name)| !named.contains(name) && !named.contains(&name.to_uppercase()))
+        .map(|(key, _)| key)
+        .collect();
+    assert!(
+        unsaid.is_empty(),
+        "nothing says {unsaid:?}: take them out of every file in crates/words/messages"
+    );
+}

@@ -4,8 +4,11 @@
 //! calls it natively, at every build anew, and keeps what it gave; the test in
 //! `tests/bits.rs` calls it in the browser and compares. Nothing is pinned by
 //! hand, so the figures may change, but never on one side alone.
+//!
+//! [`speed`] is timed on both sides too, for `cargo task bench`.
 
 mod grid;
+pub mod speed;
 
 /// What the native build computed: groups headed by `# name`, a line for a figure.
 pub const NATIVE: &str = include_str!(concat!(env!("OUT_DIR"), "/native.txt"));

@@ -5,6 +5,17 @@ use super::long_section::{
 };
 use super::sweep_chart::{Limit, SweepChart, SweepPoint, SweepWords};
 use super::{Verdict, polyline};
+use proptest::prelude::ProptestConfig;
+
+/// A drawing takes its time: fewer cases than usual, unless the campaign asks
+/// for more by `PROPTEST_CASES`.
+pub(crate) fn cases() -> ProptestConfig {
+    if std::env::var_os("PROPTEST_CASES").is_some() {
+        ProptestConfig::default()
+    } else {
+        ProptestConfig::with_cases(64)
+    }
+}
 
 /// A line of 418 m with a high point that comes to lie above the grade line.
 pub(crate) fn section() -> LongSection {

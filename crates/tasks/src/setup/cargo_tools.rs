@@ -1,7 +1,7 @@
-//! Trunk and wasm-bindgen: those already there at the right version, or else
+//! Trunk, wasm-bindgen and the tools of the campaigns: those already there at the right version, or else
 //! built once into the user's cache.
 
-use super::Kit;
+use super::{Kit, apt};
 use crate::trouble::Trouble;
 use crate::{places, process, say};
 use std::fs;
@@ -9,6 +9,8 @@ use std::process::Command;
 
 /// Newer ones ask for a newer compiler than ours.
 const TRUNK: &str = "0.21.14";
+const FUZZ: &str = "0.13.2";
+const MUTANTS: &str = "27.1.0";
 
 /// Makes trunk, wasm-bindgen and its test runner available to the kit's commands.
 pub(super) fn ensure(kit: &mut Kit) -> Result<(), Trouble> {
@@ -36,6 +38,33 @@ pub(super) fn ensure(kit: &mut Kit) -> Result<(), Trouble> {
     Ok(())
 }
 
+/// Makes `cargo fuzz` available to the kit's commands.
+pub(super) fn ensure_fuzz(kit: &mut Kit) -> Result<(), Trouble> {
+    // What compiles libFuzzer, under the names that are asked for.
+    let compilers = ["c++", "g++", "clang++"];
+    if !compilers
+        .iter()
+        .any(|name| places::on_path(name, None).is_some())
+    {
+        apt::install(&["g++"], "compiles libFuzzer, which is written in C++")?;
+    }
+    ensure_one(kit, "cargo-fuzz", "cargo fuzz", FUZZ)
+}
+
+/// Makes `cargo mutants` available to the kit's commands.
+pub(super) fn ensure_mutants(kit: &mut Kit) -> Result<(), Trouble> {
+    ensure_one(kit, "cargo-mutants", "cargo mutants", MUTANTS)
+}
+
+/// A package that adds one command to cargo, and answers as that only.
+fn ensure_one(kit: &mut Kit, package: &str, program: &str, version: &str) -> Result<(), Trouble> {
+    kit.put_first(places::tools().join("bin"));
+    if present(kit, &[program], version) {
+        return Ok(());
+    }
+    install(kit, package, version, &["--locked"], &[program])
+}
+
 /// The version of a package in a lock file.
 fn version_in(lock: &str, package: &str) -> Option<String> {
     let mut lines = lock.lines();
@@ -47,10 +76,15 @@ fn version_in(lock: &str, package: &str) -> Option<String> {
     Some(version.to_owned())
 }
 
-/// Whether each program answers with the version wanted.
+/// Whether each program, or command of cargo, answers with the version wanted.
 fn present(kit: &Kit, programs: &[&str], version: &str) -> bool {
     programs.iter().all(|program| {
-        let found = process::output(kit.command(program).arg("--version")).unwrap_or_default();
+        let (program, command) = match program.split_once(' ') {
+            Some((program, command)) => (program, Some(command)),
+            None => (*program, None),
+        };
+        let found = process::output(kit.command(program).args(command).arg("--version"))
+            .unwrap_or_default();
         found.split_whitespace().any(|word| word == version)
     })
 }

@@ -70,3 +70,17 @@ pub(crate) fn for_walk() -> Result<(), Trouble> {
     browser::ensure_pdf_reader()?;
     axe::ensure()
 }
+
+/// What `tests/fuzz` needs.
+pub(crate) fn for_fuzz() -> Result<Kit, Trouble> {
+    let mut kit = Kit::default();
+    cargo_tools::ensure_fuzz(&mut kit)?;
+    Ok(kit)
+}
+
+/// What changing the engineering needs.
+pub(crate) fn for_mutants() -> Result<Kit, Trouble> {
+    let mut kit = Kit::default();
+    cargo_tools::ensure_mutants(&mut kit)?;
+    Ok(kit)
+}

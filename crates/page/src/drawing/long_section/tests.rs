@@ -232,7 +232,7 @@ fn no_label_overlaps_or_leaves_at_any_usual_size() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(64))]
+    #![proptest_config(samples::cases())]
 
     #[test]
     fn any_line_is_drawn_inside_and_legibly(

@@ -180,7 +180,7 @@ fn one_pipe_is_a_chart_too() {
 }
 
 proptest! {
-    #![proptest_config(ProptestConfig::with_cases(64))]
+    #![proptest_config(samples::cases())]
 
     #[test]
     fn points_shown_lie_in_the_field_and_larger_losses_lie_higher(
