@@ -67,7 +67,13 @@ fn orders(words: Words, line: &Line) -> Vec<String> {
         .iter()
         .enumerate()
         .map(|(i, o)| {
-            let said = format!("{} ({})", order(words, o), words.figure(o.piece_mass));
+            let joints = usize::try_from(o.joints).unwrap_or(usize::MAX);
+            let said = format!(
+                "{} ({}), {}",
+                order(words, o),
+                words.figure(o.piece_mass),
+                text::schedule_joints(words, joints)
+            );
             if i == 0 {
                 said
             } else {
