@@ -53,12 +53,14 @@ pub fn App() -> impl IntoView {
             class="app"
             data-test="app"
             data-ready=move || if state.ready.get() { "yes" } else { "no" }
-            on:focusin=move |_| state.writing.set(place::is_writing() || place::is_keyed())
-            on:focusout=move |_| {
-                frame::after(GROW_MS, move || {
-                    state.writing.set(place::is_writing() || place::is_keyed());
-                });
+            on:focusin=move |_| {
+                if is_written_in() {
+                    state.writing.set(true);
+                } else {
+                    grow(state);
+                }
             }
+            on:focusout=move |_| grow(state)
         >
             <a class="skip-link" href="#sheet" on:click=|e| {
                 e.prevent_default();
@@ -90,6 +92,16 @@ pub fn App() -> impl IntoView {
         <WorkingDialog/>
         <DrawingFull/>
     }
+}
+
+/// Whether the person writes, or goes through the sheet by keyboard.
+fn is_written_in() -> bool {
+    place::is_writing() || place::is_keyed()
+}
+
+/// Lets the drawing grow back, a moment later, unless there is writing again.
+fn grow(state: State) {
+    frame::after(GROW_MS, move || state.writing.set(is_written_in()));
 }
 
 /// Follows what happens to the window.

@@ -137,8 +137,7 @@ fn an_empty_book_is_accessible_too() {
 /// Marks every control that Tab should reach, and returns how many there are.
 /// Of radio buttons with one name, the browser stops at one.
 const MARK: &str = "
-    const shown = (one) => one.getClientRects().length > 0
-      && getComputedStyle(one).visibility === 'visible';
+    const shown = (one) => one.checkVisibility({ visibilityProperty: true });
     const all = [...document.querySelectorAll(
       '#sheet :is(a[href], button, input, select, textarea, summary, [tabindex=\"0\"])')]
       .filter((one) => !one.disabled && one.tabIndex >= 0 && shown(one));
@@ -187,8 +186,13 @@ const LOOK: &str = "
 
 async fn tab_through(page: &Page, sheet: &str) -> Result<Vec<String>> {
     open(page, sheet).await?;
-    page.script("document.getElementById('sheet').focus();", vec![])
-        .await?;
+    // What is folded away has controls too.
+    page.script(
+        "document.querySelectorAll('#sheet details').forEach((fold) => { fold.open = true; });
+         document.getElementById('sheet').focus();",
+        vec![],
+    )
+    .await?;
     let count = page.script(MARK, vec![]).await?.as_u64().unwrap_or(0);
     assert!(count > 3, "{count} controls on {sheet}");
     let mut reached = std::collections::BTreeSet::new();

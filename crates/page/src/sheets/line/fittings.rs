@@ -120,12 +120,10 @@ fn one(state: State, id: Id, open: bool) -> AnyView {
     view! {
         <details
             class="fold"
-            id=format!("fitting-{id}")
-            tabindex="-1"
             open=open
             data-test=format!("fitting-{id}")
         >
-            <summary data-test=format!("fitting-fold-{id}")>
+            <summary id=format!("fitting-{id}") data-test=format!("fitting-fold-{id}")>
                 <span>{named}</span>
                 <span class="num">{lost}</span>
             </summary>
