@@ -236,17 +236,21 @@ proptest! {
                 let words = Words::new(Language::Spanish, system);
                 let text = words.full(measure);
                 let unit = kind.default_unit(system);
-                let number = |text: &str| read(text, kind, unit, words.mark).unwrap().unwrap().value;
                 if let Some(bound) = below(words, &text) {
-                    // Somewhere between nothing and the bound.
-                    return (0.0, number(bound));
+                    let bound = read(bound, kind, unit, words.mark).unwrap().unwrap().value;
+                    assert!(value < bound, "{kind:?} {value}: {text}");
+                    return None;
                 }
+                let base = read(&text, kind, unit, words.mark).unwrap().unwrap().value;
                 // Half of the last decimal that means something.
                 let last = format!("0.5e-{}", most_decimals(kind)).parse().unwrap();
-                (number(&text), unit.to_base(last) - unit.to_base(0.0))
+                Some((base, unit.to_base(last) - unit.to_base(0.0)))
             };
-            let (metric, a) = back(UnitSystem::Metric);
-            let (us, b) = back(UnitSystem::UsCustomary);
+            let (Some((metric, a)), Some((us, b))) =
+                (back(UnitSystem::Metric), back(UnitSystem::UsCustomary))
+            else {
+                continue;
+            };
             // And half a digit at seven figures, of each.
             let off = (a + b) * (1.0 + 1e-9) + 1e-6 * value;
             prop_assert!((metric - us).abs() <= off, "{kind:?} {value}: {metric} {us}");

@@ -70,9 +70,20 @@ fn no_mark_lies_over_another_and_the_rest_are_ticks() {
         assert!(d.picture.svg.contains(&chart.words.more));
         last = d.ticks;
     }
-    // A few pipes need no tick, and no word about one.
-    let few = samples::sweep(9);
-    let d = drawn(&few, Size::screen(900.0, 500.0));
+    // Pipes that stand apart need no tick, and no word about one.
+    let points = [100.0, 160.0, 250.0].map(|bore| SweepPoint {
+        bore,
+        loss_share: 5.0 / bore,
+        family: 0,
+        verdict: Verdict::Holds,
+        dominated: false,
+        chosen: false,
+    });
+    let few = SweepChart {
+        points: points.to_vec(),
+        ..samples::sweep(1)
+    };
+    let d = drawn(&few, PHONE);
     assert_eq!(d.ticks, 0);
     assert!(!d.picture.svg.contains(&few.words.more));
 }
@@ -85,7 +96,7 @@ fn the_nearest_point_is_the_one_touched() {
         .points
         .iter()
         .enumerate()
-        .filter(|(_, p)| !p.dominated)
+        .filter(|(i, _)| !d.lesser[*i])
     {
         let Some((x, y)) = d.pixel_of(i) else {
             assert!(p.loss_share < 0.1 / 15.0, "{p:?}");
