@@ -105,6 +105,7 @@ fn long_book() -> Book {
                     Field::StationLevel(id),
                     first + (last - first) * share + uneven,
                 ),
+                ..Station::default()
             }
         })
         .collect();

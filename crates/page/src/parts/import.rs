@@ -167,8 +167,8 @@ pub fn ImportDialog() -> impl IntoView {
     let body = move || match import.source.get() {
         Source::Nothing => view! { <p class="quiet">{say(Key::IMPORT_WHAT)}</p> }.into_any(),
         Source::Refused(why) => refused(state, &why),
-        Source::Table(table) => table_view(import, table),
-        Source::Gpx(gpx) => gpx_view(import, gpx),
+        Source::Table(table) => table_view(import, &table),
+        Source::Gpx(gpx) => gpx_view(import, &gpx),
     };
     let count = move || {
         line.with(|l| match l {
@@ -317,10 +317,10 @@ fn faults(state: State, faults: &[RowFault], columns: &[Column]) -> AnyView {
     .into_any()
 }
 
-fn table_view(import: Import, table: Arc<Table>) -> AnyView {
+fn table_view(import: Import, table: &Arc<Table>) -> AnyView {
     let state = import.state;
     let preview = {
-        let table = Arc::clone(&table);
+        let table = Arc::clone(table);
         Memo::new(move |_| import.choices.with(|c| table.preview(c)))
     };
     let settled = move |get: fn(&Preview) -> DecimalMark| preview.with(get);
@@ -508,7 +508,7 @@ fn column_head(import: Import, preview: Memo<Preview>, index: usize) -> AnyView 
     .into_any()
 }
 
-fn gpx_view(import: Import, gpx: Arc<Gpx>) -> AnyView {
+fn gpx_view(import: Import, gpx: &Gpx) -> AnyView {
     let state = import.state;
     let summaries = StoredValue::new(gpx.summaries());
     let lines = Signal::derive(move || {
