@@ -3,6 +3,7 @@
 //! - [`state`]: the book with its history, and all that is derived from it
 //! - [`history`], [`edits`], [`slices`], [`save_queue`], [`sweep_table`],
 //!   [`slug`]: plain logic, tested natively
+//! - [`gate`], [`station_rows`]: what keeps a key in one field from waking all
 //! - [`keeping`], [`sweeping`]: writing to the store; working the sweep in slices
 //! - [`platform`]: all that is asked of the browser
 //! - [`inputs`], [`parts`], [`sheets`], [`app`]: what is shown
@@ -41,6 +42,7 @@
 pub mod app;
 pub mod drawing;
 pub mod edits;
+pub mod gate;
 pub mod history;
 pub mod inputs;
 pub mod keeping;
@@ -52,6 +54,7 @@ pub mod slices;
 pub mod slug;
 pub mod speak;
 pub mod state;
+pub mod station_rows;
 pub mod sweep_table;
 pub mod sweeping;
 pub mod theme;

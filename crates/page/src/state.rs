@@ -4,12 +4,14 @@
 //! Everything shown is derived from [`State::book`]; nothing is kept in step
 //! by hand.
 
+use crate::gate::gate;
 use crate::history::{History, Touch};
 use crate::keeping::{Keeper, Saved};
 use crate::parts::books::Incoming;
 use crate::platform::storage::{Persistence, Record};
 use crate::platform::{clock, frame, place, root, settings, update, viewport};
 use crate::slices::Progress;
+use crate::station_rows::{StationRow, StationRows};
 use crate::sweep_table::Filter;
 use crate::theme::Theme;
 use leptos::prelude::*;
@@ -20,6 +22,7 @@ use workbook::book::Id;
 use workbook::caution::Sheet;
 use workbook::figure::{Place, Trouble};
 use workbook::reading::DecimalMark;
+use workbook::resolve::profile::station_entry;
 use workbook::sweep::Row;
 use workbook::working::FigureKey;
 use workbook::{Book, Entry, Field, Findings, evaluate};
@@ -75,8 +78,12 @@ pub struct State {
     pub book: Memo<Arc<Book>>,
     /// All that is computed from it.
     pub findings: Memo<Arc<Findings>>,
+    /// The stations, each on its own.
+    rows_of_stations: StoredValue<StationRows>,
+    /// What each station is called, in the order of the line.
+    pub called: ReadSignal<Vec<(Id, String)>>,
     /// Everything in it that is wrong.
-    pub troubles: Memo<Vec<Trouble>>,
+    pub troubles: ReadSignal<Vec<Trouble>>,
     /// Language of the page.
     pub language: RwSignal<Language>,
     /// Language, units and decimal mark.
@@ -129,14 +136,14 @@ impl State {
         let history = RwSignal::new(History::new(Book::new(&clock::new_key())));
         let book = Memo::new(move |_| history.with(|h| Arc::clone(h.now())));
         let findings = Memo::new(move |_| Arc::new(evaluate(&book.get())));
-        let troubles = Memo::new(move |_| findings.with(|f| f.troubles()));
+        let troubles = gate(move || findings.with(|f| f.troubles()));
         let tags = settings::browser_languages();
         let asked: Vec<String> = settings::get(settings::LANGUAGE)
             .into_iter()
             .chain(tags.iter().cloned())
             .collect();
         let language = RwSignal::new(Language::pick(asked.iter().map(String::as_str)));
-        let units = Memo::new(move |_| book.with(|b| b.units));
+        let units = gate(move || book.with(|b| b.units));
         let words = Memo::new(move |_| {
             let language = language.get();
             // A browser of the same language tells which mark its region
@@ -153,9 +160,25 @@ impl State {
             };
             Words::new(language, units.get()).with_mark(mark)
         });
+        let rows_of_stations = StoredValue::new(StationRows::default());
+        Effect::new(move |_| {
+            book.with(|b| rows_of_stations.update_value(|rows| rows.follow(b)));
+        });
+        let called = gate(move || {
+            let words = words.get();
+            book.with(|b| {
+                let about = words.about(b);
+                about
+                    .every_station()
+                    .map(|(id, name)| (id, words::capital(&name)))
+                    .collect()
+            })
+        });
         State {
             history,
             book,
+            rows_of_stations,
+            called,
             findings,
             troubles,
             language,
@@ -294,11 +317,36 @@ impl State {
         });
     }
 
+    /// A station on its own, followed.
+    #[must_use]
+    pub fn station_row(self, id: Id) -> ArcRwSignal<StationRow> {
+        let book = self.book.get_untracked();
+        self.rows_of_stations
+            .try_update_value(|rows| rows.row(&book, id))
+            .unwrap_or_default()
+    }
+
     /// The entry of this name, followed.
     #[must_use]
     pub fn entry(self, field: Field) -> Memo<Entry> {
         let book = self.book;
-        Memo::new(move |_| book.with(|b| b.entry(field).cloned().unwrap_or_default()))
+        let of_station = match field {
+            Field::StationDistance(id)
+            | Field::StationLevel(id)
+            | Field::StationForeSight(id)
+            | Field::StationBackSight(id)
+            | Field::StationStaffBack(id)
+            | Field::StationStaffFore(id)
+            | Field::StationTurn(id) => Some(id),
+            _ => None,
+        };
+        match of_station {
+            Some(id) => {
+                let row = self.station_row(id);
+                Memo::new(move |_| row.with(|r| station_entry(&r.station, field).clone()))
+            }
+            None => Memo::new(move |_| book.with(|b| b.entry(field).cloned().unwrap_or_default())),
+        }
     }
 
     /// Takes what a person types into a field whose unit button shows `unit`.

@@ -34,18 +34,36 @@ fn place_in(ids: impl Iterator<Item = Id>, id: Id) -> usize {
         .map_or(usize::try_from(id).unwrap_or(usize::MAX), |i| i + 1)
 }
 
+impl Words {
+    /// "station 3 (Spring box)", by its number, from 1, and its name, if any.
+    #[must_use]
+    pub fn station(self, number: usize, name: &str) -> String {
+        let number = self.count(number);
+        match name.trim() {
+            "" => text::place_station(self, &number),
+            name => text::place_station_named(self, &number, name),
+        }
+    }
+}
+
 impl About<'_> {
     /// "station 3 (Spring box)".
     #[must_use]
     pub fn station(self, id: Id) -> String {
         let stations = &self.book.line.stations;
-        let number = self
-            .words
-            .count(place_in(stations.iter().map(|s| s.id), id));
-        match stations.iter().find(|s| s.id == id).map(|s| s.name.trim()) {
-            Some(name) if !name.is_empty() => text::place_station_named(self.words, &number, name),
-            _ => text::place_station(self.words, &number),
-        }
+        let number = place_in(stations.iter().map(|s| s.id), id);
+        let name = stations
+            .iter()
+            .find(|s| s.id == id)
+            .map(|s| s.name.as_str());
+        self.words.station(number, name.unwrap_or_default())
+    }
+
+    /// Every station of the line, each as [`About::station`] says it, without
+    /// looking for each.
+    pub fn every_station(self) -> impl Iterator<Item = (Id, String)> {
+        let stations = self.book.line.stations.iter().enumerate();
+        stations.map(move |(place, s)| (s.id, self.words.station(place + 1, &s.name)))
     }
 
     /// Several stations, "station 1, station 2 (Saddle)".

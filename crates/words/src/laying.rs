@@ -106,8 +106,12 @@ impl About<'_> {
                 }
                 let angle = words.figure(Measure::new(*deflection_deg, Kind::Angle));
                 let turned = words.turned(*vertical_deg, *plan_deg);
+                let one_way = vertical_deg.abs() < UNSEEN_DEG || plan_deg.abs() < UNSEEN_DEG;
                 if turned.is_empty() {
                     text::lay_turn(words, words.made(*made), &angle)
+                } else if one_way {
+                    // The one angle is the deflection.
+                    text::lay_turn(words, words.made(*made), &turned)
                 } else {
                     text::lay_turn_by(words, words.made(*made), &angle, &turned)
                 }

@@ -36,7 +36,7 @@ const STRETCHES: [(u32, &str); 2] = [
 ];
 
 /// Turns of the invented line on the plan, by station.
-const TURNS: [(u32, &str); 2] = [(3, "12"), (10, "-9")];
+const TURNS: [(u32, &str); 4] = [(3, "12"), (7, "21"), (10, "-9"), (13, "30")];
 
 /// The demo book under this key.
 #[must_use]

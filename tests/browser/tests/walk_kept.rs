@@ -327,7 +327,14 @@ fn several_books_stand_side_by_side_and_deleting_asks() {
         page.sheet("stream").await?;
         page.write("text-name", "Third").await?;
         page.until_saved().await?;
-        assert_eq!(books(page).await?.len(), 3);
+        page.tap_test("tab-books").await?;
+        // The list is read from the store anew each time it is opened.
+        page.until(
+            "three books are listed",
+            "return document.querySelectorAll('[data-test^=book-open-]').length === 3;",
+        )
+        .await?;
+        page.tap_test("books-close").await?;
 
         page.tap_test("tab-books").await?;
         page.find_test(&format!("book-{first}")).await?;

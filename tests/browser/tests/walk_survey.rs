@@ -91,7 +91,7 @@ async fn enter_line(page: &Page) -> Result {
 
 async fn enter_rest(page: &Page) -> Result {
     page.sheet("stream").await?;
-    page.fill("Design flow", "9").await?;
+    page.fill("Design flow", "15").await?;
     for (label, text) in [
         ("Altitude above sea", "700"),
         ("Coldest water", "2"),

@@ -36,7 +36,7 @@ impl Handle {
             let system = state.words.get().units;
             entry.with(|e| unit_of(e, kind, system))
         });
-        let trouble = Memo::new(move |_| trouble_of(state, field));
+        let trouble = Memo::new(move |_| trouble_of(state, field, entry));
         let read_as = Memo::new(move |_| {
             let words = state.words.get();
             let reading = entry.with(|e| worth_showing(&e.text, kind, unit.get(), words.mark))?;
@@ -109,16 +109,16 @@ impl Handle {
     fn input(self, name: Option<Signal<String>>, next: Option<Callback<()>>) -> impl IntoView {
         let id = self.id();
         let described = format!("{id}-trouble {id}-read {id}-hint");
+        let first = match self.field {
+            Field::StationDistance(id) => Some(self.state.station_row(id)),
+            _ => None,
+        };
         let hint = move || {
             let words = self.state.words.get();
-            let stands_in = match self.field {
-                // Distances are counted from there.
-                Field::StationDistance(id) => self
-                    .state
-                    .book
-                    .with(|b| b.line.stations.first().is_some_and(|s| s.id == id))
-                    .then_some(0.0),
-                field => field.preset().map(|p| p.value),
+            let stands_in = match &first {
+                // Distances are counted from the first station.
+                Some(row) => row.with(|r| r.place == Some(0)).then_some(0.0),
+                None => self.field.preset().map(|p| p.value),
             };
             stands_in.map(|x| words.value(Measure::new(x, self.field.kind())))
         };
@@ -235,9 +235,9 @@ impl Handle {
 
 /// What is wrong with an entry, in words: what was typed, or else what it does
 /// to the rest.
-fn trouble_of(state: State, field: Field) -> Option<String> {
+fn trouble_of(state: State, field: Field, entry: Memo<Entry>) -> Option<String> {
     let words = state.words.get();
-    let own = state.book.with(|b| b.value(field).err());
+    let own = entry.with(|e| field.value_of(e).err());
     if let Some(why) = own {
         return Some(words.entry_trouble(field, &why));
     }

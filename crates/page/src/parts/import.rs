@@ -379,7 +379,9 @@ fn table_view(import: Import, table: &Arc<Table>) -> AnyView {
                 <tbody>{first}</tbody>
             </table>
         </div>
-        <ul role="alert" data-test="import-obstacles">{obstacles}</ul>
+        <div role="alert">
+            <ul data-test="import-obstacles">{obstacles}</ul>
+        </div>
         <div class="fields">
             {choice_of(
                 state,

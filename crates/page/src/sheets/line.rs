@@ -82,7 +82,7 @@ pub fn LineSheet() -> impl IntoView {
             view! { <div class="fields">{levels}</div> }.into_any(),
         )}
         {found::found()}
-        {part("survey", Key::LINE_SURVEY, survey::of_line())}
+        {survey::of_line()}
         {part(
             "stretches",
             Key::LINE_STRETCHES,

@@ -151,8 +151,10 @@ pub(crate) fn begun(station: &Station) -> bool {
     .any(|entry| !entry.is_empty())
 }
 
-/// The entry of a station by its name.
-fn entry(station: &Station, field: Field) -> &crate::entry::Entry {
+/// The entry of a station by its name; its distance for a name that is no
+/// station's.
+#[must_use]
+pub fn station_entry(station: &Station, field: Field) -> &crate::entry::Entry {
     match field {
         Field::StationLevel(_) => &station.level_m,
         Field::StationForeSight(_) => &station.fore_sight_deg,
@@ -167,7 +169,7 @@ fn entry(station: &Station, field: Field) -> &crate::entry::Entry {
 impl Reader<'_> {
     /// The value of a station's entry, without looking the station up.
     pub(crate) fn of_station(&mut self, s: &Station, field: Field) -> Figure<Option<f64>> {
-        self.optional_of(field, entry(s, field))
+        self.optional_of(field, station_entry(s, field))
     }
 
     fn station_needs(&mut self, s: &Station, field: Field) -> Figure<f64> {

@@ -80,12 +80,9 @@ fn one(state: State, id: Id, open: bool) -> AnyView {
             .collect::<Vec<_>>()
     });
     let stations = Signal::derive(move || {
-        let words = state.words.get();
-        state.book.with(|b| {
-            b.line
-                .stations
-                .iter()
-                .map(|s| (s.id.to_string(), speak::station(words, b, s.id)))
+        state.called.with(|all| {
+            all.iter()
+                .map(|(id, name)| (id.to_string(), name.clone()))
                 .collect::<Vec<_>>()
         })
     });

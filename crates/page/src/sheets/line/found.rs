@@ -16,7 +16,7 @@ pub(super) fn found() -> AnyView {
     let open = RwSignal::new(false);
     view! {
         <details
-            class="more"
+            class="sheet-part fold"
             data-test="stations-found"
             on:toggle=move |e| open.set(crate::platform::place::is_open(&e))
         >
@@ -63,7 +63,7 @@ fn table(state: State) -> AnyView {
         .collect();
     view! {
         <div
-            class="table-scroll"
+            class="table-scroll table-tall"
             tabindex="0"
             role="region"
             aria-label=words.say(Key::LAY_FOUND)

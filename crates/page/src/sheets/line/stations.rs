@@ -3,6 +3,7 @@
 
 use super::survey::{self, WAYS};
 use crate::edits::{fittings, stations, stretches};
+use crate::gate::gate;
 use crate::inputs::typing::{next_unit, unit_of};
 use crate::inputs::{NumberCell, NumberField, choice_of};
 use crate::platform::{frame, place};
@@ -13,6 +14,7 @@ use leptos::prelude::*;
 use words::{Key, text};
 use workbook::book::{FittingKind, Id, SurveyWay};
 use workbook::field::station_fields;
+use workbook::resolve::profile::station_entry;
 use workbook::units::Kind;
 use workbook::{Book, Entry, Field};
 
@@ -48,7 +50,7 @@ fn column_unit(state: State, side: Side) -> &'static str {
             .line
             .stations
             .iter()
-            .filter_map(|s| b.entry(side.field(s.id)))
+            .map(|s| station_entry(s, side.field(s.id)))
             .find(|e| !e.is_empty());
         unit_of(first.unwrap_or(&Entry::default()), side.kind(), system)
     })
@@ -133,9 +135,9 @@ pub(super) fn stations() -> AnyView {
             .get()
             .unwrap_or_else(|| state.book.with(|b| stations::usual_way(b)))
     });
-    let distance_unit = Memo::new(move |_| column_unit(state, Side::Distance));
-    let level_unit = Memo::new(move |_| column_unit(state, Side::Level));
-    let unit_button = move |side: Side, unit: Memo<&'static str>| {
+    let distance_unit = gate(move || column_unit(state, Side::Distance));
+    let level_unit = gate(move || column_unit(state, Side::Level));
+    let unit_button = move |side: Side, unit: ReadSignal<&'static str>| {
         let test = match side {
             Side::Distance => "stations-distance-unit",
             Side::Level => "stations-level-unit",
@@ -216,40 +218,24 @@ fn row(
     id: Id,
     open: RwSignal<Option<Id>>,
     next_way: RwSignal<Option<SurveyWay>>,
-    (distance_unit, level_unit): (Memo<&'static str>, Memo<&'static str>),
+    (distance_unit, level_unit): (ReadSignal<&'static str>, ReadSignal<&'static str>),
 ) -> AnyView {
     let is_open = Memo::new(move |_| open.get() == Some(id));
-    let number = Memo::new(move |_| {
-        state
-            .book
-            .with(|b| b.line.stations.iter().position(|s| s.id == id))
-            .map_or(0, |p| p + 1)
-    });
-    let name = Memo::new(move |_| {
-        state.book.with(|b| {
-            b.line
-                .stations
-                .iter()
-                .find(|s| s.id == id)
-                .map(|s| s.name.clone())
-                .unwrap_or_default()
-        })
-    });
+    let row = state.station_row(id);
+    let number = {
+        let row = row.clone();
+        Memo::new(move |_| row.with(|r| r.place.map_or(0, |p| p + 1)))
+    };
+    let name = {
+        let row = row.clone();
+        Memo::new(move |_| row.with(|r| r.station.name.clone()))
+    };
     let chosen = move || state.station.get() == Some(id);
-    let way = Memo::new(move |_| {
-        let at = state.book.with(|b| {
-            b.line
-                .stations
-                .iter()
-                .position(|s| s.id == id)
-                .map(|p| (p, b.line.stations[p].way))
-        });
-        at.map_or(SurveyWay::Level, |(place, way)| way_at(place, way))
-    });
-    let cell = move |side: Side, unit: Memo<&'static str>, label: Key| {
+    let way = Memo::new(move |_| row.with(|r| way_at(r.place.unwrap_or_default(), r.station.way)));
+    let cell = move |side: Side, unit: ReadSignal<&'static str>, label: Key| {
         let called = Signal::derive(move || {
             let words = state.words.get();
-            let place = state.book.with(|b| speak::station(words, b, id));
+            let place = words::capital(&name.with(|name| words.station(number.get(), name)));
             text::field_at(words, words.say(label), &place)
         });
         let field = side.field(id);
@@ -263,12 +249,11 @@ fn row(
             />
         }
     };
-    let levelled = move || {
-        match way.get() {
+    let level = Memo::new(move |_| level(state, id, way.get()));
+    let levelled = move || match way.get() {
         SurveyWay::Level => cell(Side::Level, level_unit, Key::FIELD_STATION_LEVEL).into_any(),
-        _ => view! { <p class="carried" data-test=format!("station-level-{id}")>{move || level(state, id)}</p> }
+        _ => view! { <p class="carried" data-test=format!("station-level-{id}")>{level}</p> }
             .into_any(),
-    }
     };
     let carried_row = move || match way.get() {
         SurveyWay::Level => None,
@@ -305,8 +290,11 @@ fn row(
     .into_any()
 }
 
-/// The level that comes of sights or readings.
-fn level(state: State, id: Id) -> String {
+/// The level that comes of sights or readings; nothing where it was entered.
+fn level(state: State, id: Id, way: SurveyWay) -> String {
+    if way == SurveyWay::Level {
+        return String::new();
+    }
     let words = state.words.get();
     state.findings.with(|f| {
         f.resolved

@@ -43,11 +43,13 @@ fn one(state: State, id: Id) -> AnyView {
         })
     });
     let starts = Signal::derive(move || {
-        let words = state.words.get();
-        state.book.with(|b| {
-            stretches::starts_for(b, id)
-                .into_iter()
-                .map(|s| (s.to_string(), speak::station(words, b, s)))
+        let starts = state.book.with(|b| stretches::starts_for(b, id));
+        state.called.with(|all| {
+            // Both in the order of the line.
+            let mut starts = starts.iter().peekable();
+            all.iter()
+                .filter(|(id, _)| starts.next_if_eq(&id).is_some())
+                .map(|(id, name)| (id.to_string(), name.clone()))
                 .collect::<Vec<_>>()
         })
     });

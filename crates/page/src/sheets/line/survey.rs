@@ -125,6 +125,11 @@ pub(super) fn of_station(state: State, id: Id) -> AnyView {
 pub(super) fn of_line() -> AnyView {
     let state = state();
     view! {
+        <details class="sheet-part fold" data-test="survey">
+        <summary data-test="survey-fold">
+            <span>{move || state.words.get().say(Key::LINE_SURVEY)}</span>
+            <span class="num">{move || error(state)}</span>
+        </summary>
         <div class="fields">
             <NumberField field=Field::KnownFall/>
             {choice(
@@ -150,8 +155,18 @@ pub(super) fn of_line() -> AnyView {
                 |b, v| b.limits.intake_approach = v,
             )}
         </div>
+        </details>
     }
     .into_any()
+}
+
+/// The closing error alone, beside the fold's name.
+fn error(state: State) -> Option<String> {
+    let words = state.words.get();
+    state.findings.with(|f| {
+        let closing = f.resolved.profile.closing.as_ref().ok()?.as_ref()?;
+        Some(words.figure(closing.error))
+    })
 }
 
 /// How the survey closes, where there is something to close on.

@@ -3,7 +3,7 @@
 use crate::speak;
 use leptos::prelude::*;
 use words::{Key, Words, text};
-use workbook::book::Id;
+use workbook::book::{Id, LayingOrder};
 use workbook::figure::Figure;
 use workbook::schedule::{BendGroup, Schedule};
 use workbook::units::Kind;
@@ -131,7 +131,17 @@ pub(super) fn laying(words: Words, book: &Book, findings: &Findings) -> AnyView 
     let body = match workbook::laying::laying(findings, book.print.laid) {
         Err(gap) => view! { <p>{words.about(book).gap(&gap)}</p> }.into_any(),
         Ok(rows) => {
-            let rows: Vec<AnyView> = rows.iter().map(|row| laid(words, book, row)).collect();
+            let mut pipe = None;
+            let rows: Vec<AnyView> = rows
+                .iter()
+                .map(|row| {
+                    // A pipe is named where it begins, not at every station.
+                    let stretch = row.next.as_ref().map(|leg| leg.stretch);
+                    let begins = stretch != pipe;
+                    pipe = stretch;
+                    laid(words, book, row, begins)
+                })
+                .collect();
             view! {
                 <table class="print-table print-large" data-test="print-laying">
                     <thead>
@@ -142,7 +152,9 @@ pub(super) fn laying(words: Words, book: &Book, findings: &Findings) -> AnyView 
                                 {words.unit(Kind::Distance)}
                             </th>
                             <th scope="col">{words.say(Key::LAY_HERE)}</th>
-                            <th scope="col">{words.say(Key::LAY_NEXT)}</th>
+                            <th scope="col" class="print-next">
+                                {words.say(Key::LAY_NEXT)}
+                            </th>
                         </tr>
                     </thead>
                     <tbody>{rows}</tbody>
@@ -165,7 +177,7 @@ pub(super) fn laying(words: Words, book: &Book, findings: &Findings) -> AnyView 
     .into_any()
 }
 
-fn laid(words: Words, book: &Book, row: &workbook::laying::Row) -> AnyView {
+fn laid(words: Words, book: &Book, row: &workbook::laying::Row, begins: bool) -> AnyView {
     let about = words.about(book);
     let items: Vec<AnyView> = row
         .items
@@ -179,7 +191,9 @@ fn laid(words: Words, book: &Book, row: &workbook::laying::Row) -> AnyView {
             .as_ref()
             .map_or_else(|gap| about.gap(gap), |p| p.short.clone());
         let slope = words.figure(Measure::new(leg.slope_deg.abs(), Kind::Angle));
-        let slope = if leg.slope_deg >= 0.0 {
+        // Told as the crew goes.
+        let down = (leg.slope_deg >= 0.0) == (book.print.laid == LayingOrder::Downhill);
+        let slope = if down {
             text::lay_down(words, &slope)
         } else {
             text::lay_up(words, &slope)
@@ -190,7 +204,7 @@ fn laid(words: Words, book: &Book, row: &workbook::laying::Row) -> AnyView {
                 ", "
                 {slope}
             </div>
-            <div>{pipe} ", " {words.name(leg.laying)}</div>
+            {begins.then(|| view! { <div>{pipe} ", " {words.name(leg.laying)}</div> })}
         }
     });
     view! {
