@@ -11,7 +11,7 @@ use crate::parts::books::Incoming;
 use crate::platform::storage::{Persistence, Record};
 use crate::platform::{clock, frame, place, root, settings, update, viewport};
 use crate::slices::Progress;
-use crate::station_rows::{StationRow, StationRows};
+use crate::station_rows::{StationRow, StationRows, station_of};
 use crate::sweep_table::Filter;
 use crate::theme::Theme;
 use leptos::prelude::*;
@@ -162,7 +162,8 @@ impl State {
         });
         let rows_of_stations = StoredValue::new(StationRows::default());
         Effect::new(move |_| {
-            book.with(|b| rows_of_stations.update_value(|rows| rows.follow(b)));
+            let (words, troubles) = (words.get(), troubles.get());
+            book.with(|b| rows_of_stations.update_value(|rows| rows.follow(words, b, &troubles)));
         });
         let called = gate(move || {
             let words = words.get();
@@ -320,27 +321,30 @@ impl State {
     /// A station on its own, followed.
     #[must_use]
     pub fn station_row(self, id: Id) -> ArcRwSignal<StationRow> {
-        let book = self.book.get_untracked();
+        let (words, book) = (self.words.get_untracked(), self.book.get_untracked());
         self.rows_of_stations
-            .try_update_value(|rows| rows.row(&book, id))
+            .try_update_value(|rows| rows.row(words, &book, &self.troubles.get_untracked(), id))
             .unwrap_or_default()
+    }
+
+    /// The words a field is told in: those of its station's row, or the page's.
+    #[must_use]
+    pub fn words_of(self, field: Field) -> Signal<Words> {
+        match station_of(field) {
+            Some(id) => {
+                let row = self.station_row(id);
+                let page = self.words;
+                Memo::new(move |_| row.with(|r| r.words).unwrap_or_else(|| page.get())).into()
+            }
+            None => self.words.into(),
+        }
     }
 
     /// The entry of this name, followed.
     #[must_use]
     pub fn entry(self, field: Field) -> Memo<Entry> {
         let book = self.book;
-        let of_station = match field {
-            Field::StationDistance(id)
-            | Field::StationLevel(id)
-            | Field::StationForeSight(id)
-            | Field::StationBackSight(id)
-            | Field::StationStaffBack(id)
-            | Field::StationStaffFore(id)
-            | Field::StationTurn(id) => Some(id),
-            _ => None,
-        };
-        match of_station {
+        match station_of(field) {
             Some(id) => {
                 let row = self.station_row(id);
                 Memo::new(move |_| row.with(|r| station_entry(&r.station, field).clone()))
@@ -380,17 +384,24 @@ impl State {
 
     /// Carries language, theme, paper and title out to the document.
     pub fn carry_out(self) {
-        let (book, words, theme) = (self.book, self.words, self.theme);
+        let (book, words, theme, sheet) = (self.book, self.words, self.theme, self.sheet);
+        let set_foot = move || {
+            let foot = book.with(|b| crate::parts::title_block::foot(b, words.get()));
+            root::set_property("--print-foot", &foot);
+        };
         Effect::new(move |_| root::set("lang", words.get().language.code()));
         Effect::new(move |_| {
             let paper = book.with(|b| b.print.paper);
             root::set("class", &crate::theme::classes(theme.get(), paper));
         });
         Effect::new(move |_| {
-            // The foot of every printed page.
-            let foot = book.with(|b| crate::parts::title_block::foot(b, words.get()));
-            root::set_property("--print-foot", &foot);
+            // The foot of every printed page. On the root it touches the style
+            // of everything there is, so only where it is about to be seen.
+            if sheet.get() == Sheet::Print {
+                set_foot();
+            }
         });
+        root::before_print(set_foot);
         Effect::new(move |_| {
             root::set_title(&book.with(|b| crate::parts::title_block::title(b, words.get())));
         });

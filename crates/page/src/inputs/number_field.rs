@@ -8,9 +8,10 @@ use super::typing::{add_doubt, change_sign, next_unit, unit_of, worth_showing};
 use crate::platform::place;
 use crate::slug;
 use crate::state::{State, state};
+use crate::station_rows::{StationRow, station_of};
 use leptos::ev;
 use leptos::prelude::*;
-use words::{Key, text};
+use words::{Key, Words, text};
 use workbook::figure::{Place, Trouble};
 use workbook::{Entry, Field, Measure};
 
@@ -18,6 +19,7 @@ use workbook::{Entry, Field, Measure};
 #[derive(Debug, Clone, Copy)]
 struct Handle {
     state: State,
+    words: Signal<Words>,
     field: Field,
     entry: Memo<Entry>,
     unit: Memo<&'static str>,
@@ -30,15 +32,18 @@ struct Handle {
 impl Handle {
     fn new(field: Field) -> Handle {
         let state = state();
+        let words = state.words_of(field);
         let entry = state.entry(field);
         let kind = field.kind();
         let unit = Memo::new(move |_| {
-            let system = state.words.get().units;
+            let system = words.get().units;
             entry.with(|e| unit_of(e, kind, system))
         });
-        let trouble = Memo::new(move |_| trouble_of(state, field, entry));
+        let row = station_of(field).map(|id| state.station_row(id));
+        let trouble =
+            Memo::new(move |_| trouble_of(state, words.get(), field, entry, row.as_ref()));
         let read_as = Memo::new(move |_| {
-            let words = state.words.get();
+            let words = words.get();
             let reading = entry.with(|e| worth_showing(&e.text, kind, unit.get(), words.mark))?;
             let value = words.full(Measure::new(reading.value, kind));
             let shown = match reading.plus_minus {
@@ -51,6 +56,7 @@ impl Handle {
         });
         Handle {
             state,
+            words,
             field,
             entry,
             unit,
@@ -114,7 +120,7 @@ impl Handle {
             _ => None,
         };
         let hint = move || {
-            let words = self.state.words.get();
+            let words = self.words.get();
             let stands_in = match &first {
                 // Distances are counted from the first station.
                 Some(row) => row.with(|r| r.place == Some(0)).then_some(0.0),
@@ -166,7 +172,7 @@ impl Handle {
                 <button
                     type="button"
                     class="field-minus"
-                    aria-label=move || self.state.words.get().say(Key::DO_MINUS)
+                    aria-label=move || self.words.get().say(Key::DO_MINUS)
                     data-test=format!("{}-minus", self.id())
                     on:mousedown=|e| e.prevent_default()
                     on:click=move |_| self.with_text(change_sign)
@@ -187,7 +193,7 @@ impl Handle {
                     <button
                         type="button"
                         class="field-unit"
-                        aria-label=move || text::do_unit(self.state.words.get(), self.unit.get())
+                        aria-label=move || text::do_unit(self.words.get(), self.unit.get())
                         data-test=format!("{}-unit", self.id())
                         on:mousedown=|e| e.prevent_default()
                         on:click=move |_| self.turn_unit()
@@ -205,7 +211,7 @@ impl Handle {
     fn below(self, brief: bool) -> impl IntoView {
         let id = self.id();
         let preset = move || {
-            let words = self.state.words.get();
+            let words = self.words.get();
             if brief {
                 None
             } else if self.focused.get() {
@@ -235,17 +241,26 @@ impl Handle {
 
 /// What is wrong with an entry, in words: what was typed, or else what it does
 /// to the rest.
-fn trouble_of(state: State, field: Field, entry: Memo<Entry>) -> Option<String> {
-    let words = state.words.get();
+fn trouble_of(
+    state: State,
+    words: Words,
+    field: Field,
+    entry: Memo<Entry>,
+    row: Option<&ArcRwSignal<StationRow>>,
+) -> Option<String> {
     let own = entry.with(|e| field.value_of(e).err());
     if let Some(why) = own {
         return Some(words.entry_trouble(field, &why));
     }
-    let found = state.troubles.with(|all| {
+    let of_rest = |all: &[Trouble]| {
         all.iter()
             .find(|t| !matches!(t, Trouble::Entry(..)) && shown_at(t, field))
             .cloned()
-    })?;
+    };
+    let found = match row {
+        Some(row) => row.with(|r| of_rest(&r.troubles)),
+        None => state.troubles.with(|all| of_rest(all)),
+    }?;
     Some(state.book.with(|b| words.about(b).trouble(&found)))
 }
 

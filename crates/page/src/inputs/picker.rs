@@ -1,5 +1,6 @@
 //! One of many, in a list that opens.
 
+use crate::gate::gate;
 use leptos::prelude::*;
 
 /// A list to pick from: each option a value and its words. `id` is its `id` and
@@ -13,6 +14,8 @@ pub fn picker(
 ) -> AnyView {
     // Drawn anew only where the list itself changes, not with every key.
     let options = Memo::new(move |_| options.get());
+    // Every option of a long list asks for it.
+    let now = gate(move || now.get());
     let options_view = move || {
         options
             .get()

@@ -23,6 +23,13 @@ pub fn set_property(name: &str, value: &str) {
     }
 }
 
+/// Does this right before the page prints, whoever asks for it.
+pub fn before_print(act: impl Fn() + 'static) {
+    let handle = leptos::prelude::window_event_listener_untyped("beforeprint", move |_| act());
+    // The page listens for as long as it lives.
+    std::mem::forget(handle);
+}
+
 /// Sets the title of the document: the browser offers it as the name of a
 /// printed file too.
 pub fn set_title(title: &str) {

@@ -233,8 +233,9 @@ fn row(
     let chosen = move || state.station.get() == Some(id);
     let way = Memo::new(move |_| row.with(|r| way_at(r.place.unwrap_or_default(), r.station.way)));
     let cell = move |side: Side, unit: ReadSignal<&'static str>, label: Key| {
+        let spoken = state.words_of(side.field(id));
         let called = Signal::derive(move || {
-            let words = state.words.get();
+            let words = spoken.get();
             let place = words::capital(&name.with(|name| words.station(number.get(), name)));
             text::field_at(words, words.say(label), &place)
         });
