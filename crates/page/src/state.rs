@@ -301,9 +301,9 @@ impl State {
     /// Goes to where a place of the book is entered, and puts the cursor there.
     pub fn go_to(self, sheet: Sheet, place: &Place) {
         match place {
-            Place::Station(id)
-            | Place::Field(Field::StationDistance(id) | Field::StationLevel(id)) => {
-                self.station.set(Some(*id));
+            Place::Station(id) => self.station.set(Some(*id)),
+            Place::Field(field) if station_of(*field).is_some() => {
+                self.station.set(station_of(*field));
             }
             Place::Stretch(id) | Place::Field(Field::StretchCover(id)) => {
                 self.stretch.set(Some(*id));
@@ -390,9 +390,9 @@ impl State {
             root::set_property("--print-foot", &foot);
         };
         Effect::new(move |_| root::set("lang", words.get().language.code()));
+        let paper = gate(move || book.with(|b| b.print.paper));
         Effect::new(move |_| {
-            let paper = book.with(|b| b.print.paper);
-            root::set("class", &crate::theme::classes(theme.get(), paper));
+            root::set("class", &crate::theme::classes(theme.get(), paper.get()));
         });
         Effect::new(move |_| {
             // The foot of every printed page. On the root it touches the style
@@ -402,9 +402,8 @@ impl State {
             }
         });
         root::before_print(set_foot);
-        Effect::new(move |_| {
-            root::set_title(&book.with(|b| crate::parts::title_block::title(b, words.get())));
-        });
+        let title = gate(move || book.with(|b| crate::parts::title_block::title(b, words.get())));
+        Effect::new(move |_| title.with(|title| root::set_title(title)));
     }
 
     fn changing(self, change: impl FnOnce(&mut History) -> bool) -> bool {

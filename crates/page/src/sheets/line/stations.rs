@@ -5,11 +5,12 @@ use super::survey::{self, WAYS};
 use crate::edits::{fittings, stations, stretches};
 use crate::gate::gate;
 use crate::inputs::typing::{next_unit, unit_of};
-use crate::inputs::{NumberCell, NumberField, choice_of};
+use crate::inputs::{NumberCell, NumberField, choice_of, picker};
 use crate::platform::{frame, place};
 use crate::slug;
 use crate::speak;
 use crate::state::{State, state};
+use crate::station_rows::station_of;
 use leptos::prelude::*;
 use words::{Key, text};
 use workbook::book::{FittingKind, Id, SurveyWay};
@@ -87,7 +88,39 @@ fn way_at(place: usize, way: SurveyWay) -> SurveyWay {
     if place == 0 { SurveyWay::Level } else { way }
 }
 
-fn focus(field: Field) {
+/// Rows in the table at once: a phone draws hundreds of them at every key only
+/// with a delay that is felt, and a thumb does not find its way among them.
+const WINDOW: usize = 50;
+
+/// The windows of a line: first and last place of each, from 0. A last window
+/// of a few rows is one with the window before it.
+fn windows(count: usize) -> Vec<(usize, usize)> {
+    let mut all: Vec<(usize, usize)> = (0..count)
+        .step_by(WINDOW)
+        .map(|from| (from, (from + WINDOW).min(count) - 1))
+        .collect();
+    if let [.., before, last] = all.as_mut_slice()
+        && last.1 - last.0 < WINDOW / 5
+    {
+        before.1 = last.1;
+        all.pop();
+    }
+    all
+}
+
+/// The window a place is in.
+fn window_of(count: usize, place: usize) -> usize {
+    windows(count)
+        .iter()
+        .position(|(from, to)| (*from..=*to).contains(&place))
+        .unwrap_or(0)
+}
+
+fn focus(state: State, field: Field) {
+    // The window follows the station.
+    if let Some(id) = station_of(field) {
+        state.station.set(Some(id));
+    }
     let id = format!("field-{}", slug::field(field));
     // A row that was just added draws itself first.
     if !place::focus(&id) {
@@ -99,7 +132,7 @@ fn focus(field: Field) {
 
 fn enter(state: State, field: Field, next_way: RwSignal<Option<SurveyWay>>) {
     match state.book.with_untracked(|b| after(b, field)) {
-        Some(field) => focus(field),
+        Some(field) => focus(state, field),
         None => add(state, next_way),
     }
 }
@@ -115,7 +148,7 @@ fn add(state: State, next_way: RwSignal<Option<SurveyWay>>) {
         added = Some(id);
     });
     if let Some(id) = added {
-        focus(Field::StationDistance(id));
+        focus(state, Field::StationDistance(id));
     }
 }
 
@@ -127,6 +160,30 @@ pub(super) fn stations() -> AnyView {
         state
             .book
             .with(|b| b.line.stations.iter().map(|s| s.id).collect::<Vec<Id>>())
+    });
+    let window = RwSignal::new(0);
+    let shown = Memo::new(move |_| {
+        ids.with(|all| {
+            windows(all.len())
+                .get(window.get())
+                .or(windows(all.len()).last())
+                .and_then(|(from, to)| all.get(*from..=*to))
+                .map(<[Id]>::to_vec)
+                .unwrap_or_default()
+        })
+    });
+    // The selected station is always in the window.
+    Effect::new(move |_| {
+        let Some(id) = state.station.get() else {
+            return;
+        };
+        let place = ids.with(|all| {
+            let place = all.iter().position(|i| *i == id)?;
+            Some(window_of(all.len(), place))
+        });
+        if let Some(place) = place.filter(|p| *p != window.get_untracked()) {
+            window.set(place);
+        }
     });
     let open = RwSignal::new(None);
     let next_way = RwSignal::new(None);
@@ -169,6 +226,9 @@ pub(super) fn stations() -> AnyView {
                 state.act(|b| stations::level_by(b, way));
             },
         )}
+        <Show when=move || ids.with(|all| windows(all.len()).len() > 1)>
+            {window_picker(state, ids, window)}
+        </Show>
         <table class="table table-entry" data-test="station-table">
             <thead>
                 <tr>
@@ -185,7 +245,7 @@ pub(super) fn stations() -> AnyView {
             </thead>
             <tbody>
                 <For
-                    each=move || ids.get()
+                    each=move || shown.get()
                     key=|id| *id
                     children=move |id| row(state, id, open, next_way, (distance_unit, level_unit))
                 />
@@ -291,6 +351,32 @@ fn row(
     .into_any()
 }
 
+/// Which part of a long line the table shows.
+fn window_picker(state: State, ids: Memo<Vec<Id>>, window: RwSignal<usize>) -> AnyView {
+    let parts = Signal::derive(move || {
+        let words = state.words.get();
+        windows(ids.with(Vec::len))
+            .iter()
+            .enumerate()
+            .map(|(i, (from, to))| {
+                let (from, to) = (words.count(from + 1), words.count(to + 1));
+                (i.to_string(), text::place_from_to(words, &from, &to))
+            })
+            .collect::<Vec<_>>()
+    });
+    picker(
+        "station-window",
+        Signal::derive(move || state.words.get().say(Key::LINE_WINDOW).to_owned()),
+        parts,
+        Signal::derive(move || window.get().to_string()),
+        move |value| {
+            if let Ok(place) = value.parse() {
+                window.set(place);
+            }
+        },
+    )
+}
+
 /// The level that comes of sights or readings; nothing where it was entered.
 fn level(state: State, id: Id, way: SurveyWay) -> String {
     if way == SurveyWay::Level {
@@ -366,7 +452,7 @@ fn tools(state: State, id: Id) -> AnyView {
                 };
             });
             if let Some(id) = added {
-                focus(Field::StationDistance(id));
+                focus(state, Field::StationDistance(id));
             }
         })
     };
@@ -455,6 +541,26 @@ mod tests {
             Some(Field::StationDistance(2))
         );
         assert_eq!(follows(Field::StationLevel(2)), None);
+    }
+
+    #[test]
+    fn a_long_line_is_shown_in_parts_that_hold_every_station_once() {
+        assert_eq!(windows(0), vec![]);
+        assert_eq!(windows(50), vec![(0, 49)]);
+        // A short rest is not a part of its own.
+        assert_eq!(windows(57), vec![(0, 56)]);
+        assert_eq!(windows(75), vec![(0, 49), (50, 74)]);
+        for count in 1..300 {
+            let all: Vec<usize> = windows(count)
+                .into_iter()
+                .flat_map(|(from, to)| from..=to)
+                .collect();
+            assert_eq!(all, (0..count).collect::<Vec<_>>());
+            for place in 0..count {
+                let (from, to) = windows(count)[window_of(count, place)];
+                assert!((from..=to).contains(&place));
+            }
+        }
     }
 
     #[test]
