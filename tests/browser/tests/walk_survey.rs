@@ -208,10 +208,8 @@ fn a_humped_line_is_entered_cut_and_printed() {
         assert_eq!(book.line.stretches[1].from_station, 4);
 
         // Every station is in the table that stands for the drawing.
-        page.find_css("[data-test=stations-found] summary")
-            .await?
-            .click()
-            .await?;
+        let fold = page.find_css("[data-test=stations-found] summary").await?;
+        page.tap_on(&fold).await?;
         for station in &found.resolved.profile.usable {
             page.find_test(&format!("found-{}", station.id)).await?;
         }
