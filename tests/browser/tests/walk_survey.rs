@@ -6,6 +6,7 @@
 //! book as the page has stored it.
 
 use std::collections::HashSet;
+use std::process::Command;
 use walkthrough::{Key, Page, Paper, Result, walk};
 use words::{Language, Words, csv};
 use workbook::cut::{Proposal, proposals};
@@ -225,15 +226,23 @@ async fn check_lists(page: &mut Page) -> Result {
     page.sheet("print").await?;
     page.find_test("print-laying").await?;
     let (book, found) = stored(page).await?;
-    let pdf = page.print("survey", Paper::A4).await?;
+    // In the order it was painted: cell by cell.
+    let pdf = page.print_to("survey", Paper::A4).await?;
+    let output = Command::new("pdftotext")
+        .arg("-raw")
+        .arg(&pdf)
+        .arg("-")
+        .output()?;
+    let pdf = String::from_utf8(output.stdout)?;
     let flat = |text: &str| text.split_whitespace().collect::<String>().to_lowercase();
     let printed = flat(&pdf);
     let words = metric();
     let rows = laying(&found, book.print.laid).map_err(|e| format!("{e:?}"))?;
     assert_eq!(rows.len(), book.line.stations.len());
+    let title = flat(words.say(words::Key::LAY_TITLE));
+    let list = printed.split(&title).last().unwrap_or_default();
     let mut order = Vec::new();
     for row in &rows {
-        let station = flat(&words::capital(&words.about(&book).station(row.station)));
         let shown = page.text(&format!("laid-{}", row.station)).await?;
         assert!(
             flat(&shown).contains(&flat(&words.value(row.at))),
@@ -244,10 +253,11 @@ async fn check_lists(page: &mut Page) -> Result {
                 assert!(flat(&shown).contains(&flat(&said)), "{shown} lacks {said}");
             }
         }
+        // Each line has a level of its own here.
+        let line = flat(&words::text::line_level_is(words, &words.figure(row.level)));
         order.push(
-            printed
-                .rfind(&station)
-                .ok_or(format!("{station} is not printed"))?,
+            list.find(&line)
+                .ok_or(format!("{line} is not printed in {list}"))?,
         );
     }
     assert!(order.is_sorted(), "laid from the powerhouse up: {order:?}");
