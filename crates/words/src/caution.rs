@@ -186,6 +186,18 @@ impl About<'_> {
             Assumption::IntakeApproach(Approach::Symmetrical) => {
                 words.say(Key::ASSUMPTION_APPROACH_SYMMETRICAL).to_owned()
             }
+            Assumption::StraightArea => words.say(Key::ASSUMPTION_STRAIGHT_AREA).to_owned(),
+            Assumption::EntrainedAir(share) => {
+                text::assumption_entrained_air(words, &words.figure(Measure::share(*share)))
+            }
+            Assumption::OpeningAsClosing => {
+                words.say(Key::ASSUMPTION_OPENING_AS_CLOSING).to_owned()
+            }
+            Assumption::SurgeAllowance(stretch, pressure) => text::assumption_surge_allowance(
+                words,
+                &words.figure(*pressure),
+                &self.stretch(*stretch),
+            ),
             Assumption::WarmestWaterUnknown => words.say(Key::ASSUMPTION_WARMEST_WATER).to_owned(),
             _ => words.say(Key::ASSUMPTION_OTHER).to_owned(),
         }

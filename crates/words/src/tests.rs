@@ -137,6 +137,7 @@ fn every_trouble_and_lack_says_what_and_what_to_do() {
         Place::Pipe("nothing".to_owned()),
         Place::Line,
         Place::Jets,
+        Place::Surge,
     ] {
         said(&book, &format!("{place:?}"), |w| w.place(&place));
     }
@@ -327,6 +328,10 @@ fn every_caution_and_assumption_speaks() {
         Assumption::NoEntrance,
         Assumption::WarmestWaterUnknown,
         Assumption::BendsRatedAsPipe,
+        Assumption::StraightArea,
+        Assumption::EntrainedAir(0.001),
+        Assumption::OpeningAsClosing,
+        Assumption::SurgeAllowance(2, GaugePressure::from_pa(12e5)),
         Assumption::IntakeApproach(Approach::Lateral),
         Assumption::IntakeApproach(Approach::Symmetrical),
     ] {

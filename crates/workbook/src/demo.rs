@@ -78,6 +78,7 @@ pub fn demo(id: &str) -> Book {
             pipe: Some(pipe.to_owned()),
             laying: Laying::Buried,
             cover_m: typed(Field::StretchCover(id), "0.8", "m"),
+            ..StretchEntry::default()
         })
         .collect();
     book.pipes = STRETCHES

@@ -80,6 +80,7 @@ pub fn sheet(place: &Place) -> Sheet {
         Place::Station(_) | Place::Fitting(_) | Place::Line => Sheet::Line,
         Place::Stretch(_) | Place::OwnPipe(_) | Place::Pipe(_) => Sheet::Pipe,
         Place::Jets => Sheet::Jets,
+        Place::Surge => Sheet::Surge,
     }
 }
 
@@ -122,6 +123,7 @@ fn field_sheet(field: Field) -> Sheet {
         | Field::FittingRating(_) => Sheet::Line,
         Field::Own(..)
         | Field::Price(_)
+        | Field::SurgeAllowed(_)
         | Field::TightMargin
         | Field::LossCap
         | Field::VelocityHigh
@@ -134,5 +136,18 @@ fn field_sheet(field: Field) -> Sheet {
         | Field::BranchK
         | Field::BranchBore
         | Field::JetRating => Sheet::Jets,
+        Field::ClosingTime
+        | Field::FastTime
+        | Field::SlowTime
+        | Field::Knee
+        | Field::NeedleAngle
+        | Field::NeedleTravel
+        | Field::ValveStroke(_)
+        | Field::ValveOpen(_)
+        | Field::OpeningTime
+        | Field::SlamTime
+        | Field::EntrainedAir
+        | Field::SlowestClosing
+        | Field::ClosingReserve => Sheet::Surge,
     }
 }

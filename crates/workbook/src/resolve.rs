@@ -3,6 +3,7 @@
 //! stands in for those left empty; entries that cannot be used are named.
 
 pub mod bends;
+pub mod drive;
 pub mod own_pipe;
 pub mod parts;
 pub mod profile;
@@ -12,6 +13,7 @@ use crate::entry::{Entry, EntryTrouble};
 use crate::field::{Field, Preset};
 use crate::figure::{Figure, Gap, Trouble};
 use bends::Turn;
+use drive::Drive;
 use hydraulics::air::standard_pressure;
 use hydraulics::quantity::{AbsolutePressure, GaugePressure, Head, Level};
 use hydraulics::water::Water;
@@ -50,6 +52,15 @@ pub enum Assumption {
     BendsRatedAsPipe,
     /// How the water comes to the intake.
     IntakeApproach(Approach),
+    /// The open area follows the stroke in a straight line.
+    StraightArea,
+    /// Air carried as bubbles slows the wave: not the careful choice.
+    EntrainedAir(f64),
+    /// The jets open in the time they close in.
+    OpeningAsClosing,
+    /// A surge allowance entered for a stretch stands in for its lasting
+    /// pressure.
+    SurgeAllowance(crate::book::Id, GaugePressure),
 }
 
 /// Levels of the forebay.
@@ -128,6 +139,8 @@ pub struct Resolved {
     pub intake_approach: Approach,
     /// Nozzles.
     pub jets: Figure<JetSpec>,
+    /// How they are shut and opened.
+    pub drive: Drive,
     /// Water as cold as it gets: the most viscous, so the most is lost.
     pub cold_water: Figure<Water>,
     /// Water as warm as it gets: boils first.
@@ -251,6 +264,7 @@ pub fn resolve(book: &Book) -> Resolved {
     let turns = bends::turns(r, &profile, &stretches);
     let air_slope_change = r.needed(Field::AirSlopeChange);
     let jets = jets(r);
+    let drive = drive::drive(r);
     let (cold_water, warm_water) = waters(r);
     let warmest_wall = warmest_wall(r);
     let atmosphere = atmosphere(r);
@@ -281,6 +295,7 @@ pub fn resolve(book: &Book) -> Resolved {
         air_slope_change,
         intake_approach: book.limits.intake_approach,
         jets,
+        drive,
         cold_water,
         warm_water,
         warmest_wall,
