@@ -9,6 +9,7 @@ use workbook::book::{
     Reckoning, RoughnessAge, SurveyWay,
 };
 use workbook::caution::Sheet;
+use workbook::transient::EventKind;
 use workbook::units::{Kind, UnitSystem};
 
 /// A thing with a name of its own.
@@ -120,6 +121,13 @@ named! {
     MachineKind {
         Impulse => OPTION_MACHINE_IMPULSE,
         FlowWithSpeed => OPTION_MACHINE_FLOW_WITH_SPEED,
+    }
+    EventKind {
+        Closing => EVENT_CLOSING,
+        Blocked => EVENT_BLOCKED,
+        Opening => EVENT_OPENING,
+        LoadLost => EVENT_LOAD_LOST,
+        Slam => EVENT_SLAM,
     }
     ClosingSpeeds {
         One => OPTION_CLOSING_ONE,

@@ -35,6 +35,9 @@ impl About<'_> {
             Lack::NotConverged { moved } => {
                 text::lack_converged(words, &words.figure(Measure::share(*moved)))
             }
+            Lack::NotBalanced { left } => {
+                text::lack_balanced(words, &words.figure(Measure::share(*left)))
+            }
             Lack::ColumnParts { at } => text::lack_separation(words, &words.figure(*at)),
             Lack::Rating(fitting) => text::lack_rating(words, &self.fitting(*fitting)),
             Lack::Source(stretch) => text::lack_source(words, &self.stretch(*stretch)),

@@ -724,6 +724,10 @@ pub struct SurgeEntries {
     /// Time in which a slammed guard valve shuts, s.
     #[serde(skip_serializing_if = "Entry::is_untouched")]
     pub slam_time_s: Entry,
+    /// Whether nothing that could block a jet gets past the rack: a blocked jet
+    /// is then shown, and no verdict rests on it.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub jets_kept_clear: bool,
     /// Whether deflectors throw the jets off the wheel: load lost then moves
     /// no flow.
     #[serde(skip_serializing_if = "is_usual")]

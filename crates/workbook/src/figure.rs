@@ -46,6 +46,11 @@ pub enum Lack {
         /// How far, as a share of the rise.
         moved: f64,
     },
+    /// The balances of volume and energy of the transient do not close.
+    NotBalanced {
+        /// What they leave over, as a share.
+        left: f64,
+    },
     /// The water column parts: what follows cannot be trusted.
     ColumnParts {
         /// Where the largest cavity stood.
@@ -288,6 +293,7 @@ impl Lack {
             Lack::Surge
             | Lack::Machine
             | Lack::NotConverged { .. }
+            | Lack::NotBalanced { .. }
             | Lack::ColumnParts { .. }
             | Lack::Source(_) => None,
         }

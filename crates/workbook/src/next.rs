@@ -49,6 +49,8 @@ fn lacks(book: &Book, found: &Resolved, walls: &Walls) -> Vec<Lack> {
     for stretch in &found.stretches {
         push(&mut all, &stretch.pipe);
     }
+    push(&mut all, &found.drive.speeds);
+    push(&mut all, &found.drive.area);
     if let Ok(jets) = &found.jets
         && jets.sizing == BoreSizing::Chosen
     {

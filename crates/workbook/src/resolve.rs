@@ -56,6 +56,13 @@ pub enum Assumption {
     StraightArea,
     /// Air carried as bubbles slows the wave: not the careful choice.
     EntrainedAir(f64),
+    /// Plastics stiffen in the cold: the wave speeds stand on this wall.
+    ColdWall {
+        /// The wall's temperature.
+        wall: ThermodynamicTemperature,
+        /// The greatest factor on a modulus.
+        stiffening: f64,
+    },
     /// The jets open in the time they close in.
     OpeningAsClosing,
     /// A surge allowance entered for a stretch stands in for its lasting
@@ -145,6 +152,9 @@ pub struct Resolved {
     pub cold_water: Figure<Water>,
     /// Water as warm as it gets: boils first.
     pub warm_water: Figure<Water>,
+    /// The coldest wall, where entered: the stiffest, so that waves are
+    /// fastest.
+    pub coldest_wall: Figure<Option<ThermodynamicTemperature>>,
     /// The warmest wall, which ratings stand on.
     pub warmest_wall: Figure<ThermodynamicTemperature>,
     /// Pressure of the air at the site.
@@ -266,6 +276,9 @@ pub fn resolve(book: &Book) -> Resolved {
     let jets = jets(r);
     let drive = drive::drive(r);
     let (cold_water, warm_water) = waters(r);
+    let coldest_wall = r
+        .optional(Field::ColdestWall)
+        .map(|t| t.map(ThermodynamicTemperature::new::<degree_celsius>));
     let warmest_wall = warmest_wall(r);
     let atmosphere = atmosphere(r);
     let limits = limits(r);
@@ -273,7 +286,6 @@ pub fn resolve(book: &Book) -> Resolved {
     for field in [
         Field::TailLevel,
         Field::GaugeLevel,
-        Field::ColdestWall,
         Field::BendRadius,
         Field::JointDeflection,
     ] {
@@ -298,6 +310,7 @@ pub fn resolve(book: &Book) -> Resolved {
         drive,
         cold_water,
         warm_water,
+        coldest_wall,
         warmest_wall,
         atmosphere,
         limits,

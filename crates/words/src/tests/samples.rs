@@ -421,6 +421,7 @@ pub(super) fn lacks() -> Vec<Lack> {
         Lack::Machine,
         Lack::ValveTable,
         Lack::NotConverged { moved: 0.012 },
+        Lack::NotBalanced { left: 0.002 },
         Lack::ColumnParts { at: at(151.0) },
         Lack::Rating(91),
         Lack::Rating(999),

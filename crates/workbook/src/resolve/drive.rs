@@ -72,6 +72,8 @@ pub struct Drive {
     pub guard_may_slam: bool,
     /// Time in which it then shuts.
     pub slam: Figure<Time>,
+    /// Whether nothing gets past the rack that could block a jet.
+    pub jets_kept_clear: bool,
     /// Whether deflectors are fitted.
     pub deflectors: bool,
     /// How the pipe is held.
@@ -94,6 +96,7 @@ pub(crate) fn drive(r: &mut Reader<'_>) -> Drive {
     let entered = &r.book.surge;
     let (machine, held) = (entered.machine, entered.held);
     let (deflectors, guard_may_slam) = (entered.deflectors, entered.guard_may_slam);
+    let jets_kept_clear = entered.jets_kept_clear;
     let unsteady_friction = entered.unsteady_friction;
     let speeds = speeds(r);
     let area = area(r);
@@ -118,6 +121,7 @@ pub(crate) fn drive(r: &mut Reader<'_>) -> Drive {
         opening,
         guard_may_slam,
         slam,
+        jets_kept_clear,
         deflectors,
         restraint: match held {
             PipeHeld::Throughout => Restraint::Throughout,
