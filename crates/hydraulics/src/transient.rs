@@ -140,4 +140,4 @@ pub use run::{
 };
 pub use search::{ClosingAnswer, ClosingSearch, SearchSpec, StartCase};
 pub use surge_line::{Foot, SurgeLine, SurgeSpec};
-pub use two_speed::{TwoSpeedAnswer, TwoSpeedSpec, two_speed};
+pub use two_speed::{TwoSpeedAnswer, TwoSpeedSearch, TwoSpeedSpec, two_speed};

@@ -466,6 +466,13 @@ fn every_working_of_the_demo_names_its_parts() {
         FigureKey::ClosingError,
         FigureKey::SubmergenceNeeded,
         FigureKey::ClassNeeded(1),
+        FigureKey::SurgeHighest(1),
+        FigureKey::SurgeLowest(1),
+        FigureKey::SurgeShare(1),
+        FigureKey::SurgeCollapse(1),
+        FigureKey::Michaud,
+        FigureKey::Allievi,
+        FigureKey::WaterStarting,
     ] {
         said(&book, &format!("{key:?}"), |w| w.figure_name(key));
         for input in found.working(key).unwrap().inputs {

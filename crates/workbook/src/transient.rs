@@ -31,6 +31,8 @@ mod quick;
 mod setup;
 mod solve;
 mod starts;
+#[cfg(test)]
+mod tests;
 mod trace;
 
 pub use found::{
@@ -177,5 +179,3 @@ fn assumptions(found: &Resolved, quick: &[(Id, Figure<QuickSurge>)]) -> Vec<Assu
     }
     all
 }
-#[cfg(test)]
-mod timing_test;

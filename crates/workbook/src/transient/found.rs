@@ -2,7 +2,7 @@
 
 use super::starts::{EventKind, Start};
 use crate::book::Id;
-use hydraulics::quantity::{GaugePressure, Level, PipeLength};
+use hydraulics::quantity::{GaugePressure, Head, Level, PipeLength};
 use hydraulics::transient::{Balance, Trace};
 use uom::si::f64::{Time, Velocity, Volume};
 
@@ -146,6 +146,8 @@ pub struct Surge {
     pub period: Time,
     /// Water starting time, all jets open.
     pub water_starting: Time,
+    /// Length, mean velocity (by momentum) and net head it is figured from.
+    pub running: (PipeLength, Velocity, Head),
     /// Time step, alterations, convergence and balances of the run shown.
     pub trust: Trust,
 }

@@ -7,7 +7,7 @@ use crate::resolve::Resolved;
 use crate::resolve::parts::Stretch;
 use hydraulics::constants::standard_gravity;
 use hydraulics::line::RunLoss;
-use hydraulics::quantity::{GaugePressure, Head, Level};
+use hydraulics::quantity::{GaugePressure, Head, Level, PipeLength};
 use hydraulics::surge::{
     EntrainedAir, PipeWall, StretchWave, SurgeError, WaveSeries, allievi, joukowsky, michaud,
     wave_speed, wave_speed_with_air,
@@ -36,6 +36,12 @@ pub struct QuickSurge {
 pub struct QuickClosing {
     /// Time from full stroke to shut.
     pub closing: Time,
+    /// Length of the equal pipe.
+    pub length: PipeLength,
+    /// Its wave speed.
+    pub wave_speed: Velocity,
+    /// Its velocity.
+    pub velocity: Velocity,
     /// Rise at the foot by Michaud.
     pub michaud: Head,
     /// Rise at the foot by Allievi's chain, for an area that closes in a
@@ -139,6 +145,9 @@ pub(super) fn closing(found: &Resolved, line: &WaveSeries) -> Figure<QuickClosin
     let (length, speed, velocity) = (line.length, line.wave_speed, line.velocity);
     Ok(QuickClosing {
         closing: time,
+        length,
+        wave_speed: speed,
+        velocity,
         michaud: michaud(length, speed, velocity, time, g).map_err(surge_trouble(first))?,
         allievi: allievi(length, speed, velocity, head, time, g).map_err(surge_trouble(first))?,
     })

@@ -10,7 +10,7 @@ use super::found::{
 };
 use super::setup::{Moves, Setup, trouble};
 use super::starts::{EventKind, Start, starts};
-use crate::figure::{Figure, Gap, Lack};
+use crate::figure::{Figure, Gap, Lack, Trouble};
 use hydraulics::quantity::{Head, Level, PipeLength};
 use hydraulics::transient::{
     Duration, Event, Grid, Model, Run, RunOptions, Scratch, StretchExtremes, TransientError,
@@ -18,8 +18,9 @@ use hydraulics::transient::{
 
 /// Least share of the rise that the coarse grid is taken to fall short by.
 pub(crate) const LEAST_ERROR: f64 = 0.01;
-/// Rises below this share of the standing head are no measure of an error.
-const SMALL_RISE: f64 = 0.01;
+/// Rises below this share of the standing head count as that: an error is
+/// measured against no less, and no less is raised by it.
+const SMALL_RISE: f64 = 0.02;
 /// Most starts refined for their extremes; beyond them the coarse grid's,
 /// raised by its error, stand.
 const MOST_FINE: usize = 16;
@@ -63,6 +64,7 @@ enum Sense {
 }
 
 /// A line, its moves, and room to run.
+#[derive(Debug)]
 pub(crate) struct Solver<'a> {
     pub(crate) setup: &'a Setup,
     pub(crate) moves: &'a Moves,
@@ -223,11 +225,17 @@ impl<'a> Solver<'a> {
     /// is worse.
     fn badness(&self, extremes: &StretchExtremes, sense: Sense, error: f64) -> f64 {
         let head = self.of(extremes, sense).0.m();
-        let by = error * self.excess(extremes, sense);
+        let by = error * self.large(self.excess(extremes, sense));
         match sense {
             Sense::Highest => head + by,
             Sense::Lowest => by - head,
         }
+    }
+
+    /// A rise, or what counts for a small one.
+    fn large(&self, rise: f64) -> f64 {
+        let least = SMALL_RISE * self.standing;
+        if rise > least { rise } else { least }
     }
 
     /// The share of its rise by which a coarse run falls short of a fine one,
@@ -236,13 +244,15 @@ impl<'a> Solver<'a> {
         let mut most = 0.0;
         for (c, f) in coarse.stretches.iter().zip(&fine.stretches) {
             for sense in [Sense::Highest, Sense::Lowest] {
-                let (c, f) = (self.excess(c, sense), self.excess(f, sense));
-                if f > SMALL_RISE * self.standing && f > c {
-                    // Of what the coarse one has: that is what is raised.
-                    let short = (f - c) / c.max(SMALL_RISE * self.standing);
-                    if short > most {
-                        most = short;
-                    }
+                let heads = (self.of(c, sense).0.m(), self.of(f, sense).0.m());
+                let apart = match sense {
+                    Sense::Highest => heads.1 - heads.0,
+                    Sense::Lowest => heads.0 - heads.1,
+                };
+                // Of what the coarse one has: that is what is raised.
+                let short = apart / self.large(self.excess(c, sense));
+                if short > most {
+                    most = short;
                 }
             }
         }
@@ -253,8 +263,8 @@ impl<'a> Solver<'a> {
     fn raised(&self, found: &Found, error: f64) -> Found {
         let mut found = found.clone();
         for extremes in &mut found.stretches {
-            let up = error * self.excess(extremes, Sense::Highest);
-            let down = error * self.excess(extremes, Sense::Lowest);
+            let up = error * self.large(self.excess(extremes, Sense::Highest));
+            let down = error * self.large(self.excess(extremes, Sense::Lowest));
             extremes.highest.0 += Head::from_m(up);
             extremes.lowest.0 = extremes.lowest.0 - Head::from_m(down);
         }
@@ -301,6 +311,12 @@ impl<'a> Solver<'a> {
             parted: all.iter().find_map(|f| f.parted),
             draws_air: all.iter().any(|f| f.draws_air),
         }
+    }
+
+    /// The extremes of one run, raised by an error.
+    pub(crate) fn raised_peaks(&self, start: Start, run: &Run, error: f64) -> Peaks {
+        let raised = self.raised(&self.found(start, run), error);
+        self.peaks(&[&raised])
     }
 
     /// Only the coarse grid, every extreme raised by `error`: for studies.
@@ -354,7 +370,7 @@ impl<'a> Solver<'a> {
         ] {
             for sense in [Sense::Highest, Sense::Lowest] {
                 if let Some(index) = self.worst_foot(all, event, sense) {
-                    self.refine_one(all, index, grid, &mut refined)?;
+                    self.refine_one(all, index, (coarse, grid), &mut refined)?;
                 }
             }
         }
@@ -362,13 +378,9 @@ impl<'a> Solver<'a> {
             let Some(index) = self.unrefined_worst(all, &refined) else {
                 break;
             };
-            if let Some(found) = all.get_mut(index).filter(|f| f.cut_short) {
-                let options = without_cavities(RunOptions::lean());
-                let run = self.run(coarse, found.start, &options)?;
-                *found = self.found(found.start, &run);
-                continue;
+            if !self.to_the_end(all, index, coarse)? {
+                self.refine_one(all, index, (coarse, grid), &mut refined)?;
             }
-            self.refine_one(all, index, grid, &mut refined)?;
         }
         Ok(refined)
     }
@@ -449,19 +461,42 @@ impl<'a> Solver<'a> {
         None
     }
 
-    fn refine_one(
+    /// Runs a start that was cut short to its end, if it counts; whether it
+    /// did.
+    fn to_the_end(
         &mut self,
-        all: &[Found],
+        all: &mut [Found],
         index: usize,
         grid: &Grid,
+    ) -> Result<bool, TransientError> {
+        let Some(start) = all
+            .get(index)
+            .filter(|f| f.cut_short && self.counts(f.start.event))
+            .map(|f| f.start)
+        else {
+            return Ok(false);
+        };
+        let run = self.run(grid, start, &without_cavities(RunOptions::lean()))?;
+        if let Some(found) = all.get_mut(index) {
+            *found = self.found(start, &run);
+        }
+        Ok(true)
+    }
+
+    fn refine_one(
+        &mut self,
+        all: &mut [Found],
+        index: usize,
+        (coarse, grid): (&Grid, &Grid),
         refined: &mut Refined,
     ) -> Result<(), TransientError> {
-        let Some(coarse) = all.get(index) else {
-            return Ok(());
-        };
         if refined.has(index) {
             return Ok(());
         }
+        self.to_the_end(all, index, coarse)?;
+        let Some(coarse) = all.get(index) else {
+            return Ok(());
+        };
         let run = self.run(grid, coarse.start, &without_cavities(shown_options()))?;
         let found = self.found(coarse.start, &run);
         if found.parted.is_none() && !coarse.cut_short {
@@ -545,15 +580,13 @@ impl<'a> Solver<'a> {
             .steady(&vec![1.0; setup.jets as usize])
             .map_err(trouble)?
             .ok_or(Gap::Unsettled(Lack::Surge))?;
+        let stretch = setup.stretches.first().copied().unwrap_or(1);
+        let wrong = |why| Gap::Wrong(Trouble::Surge { stretch, why });
         let water_starting = setup
             .line
             .water_starting_time(full.grade.flow, full.net_head)
-            .map_err(|why| {
-                Gap::Wrong(crate::figure::Trouble::Surge {
-                    stretch: setup.stretches.first().copied().unwrap_or(1),
-                    why,
-                })
-            })?;
+            .map_err(wrong)?;
+        let one = setup.line.equivalent(full.grade.flow).map_err(wrong)?;
         Ok(Surge {
             peaks,
             events: self.events(&refined),
@@ -566,6 +599,7 @@ impl<'a> Solver<'a> {
             closing: self.moves.law.full_stroke_time(),
             period: setup.line.period(),
             water_starting,
+            running: (one.length, one.velocity, full.net_head),
             trust: Trust {
                 step: fine.step(),
                 cells: fine.cells(),
