@@ -26,6 +26,7 @@ use workbook::verdict::{Check, CheckKind, StretchVerdict, Verdict, Weakest};
 
 mod imports;
 mod samples;
+mod surge;
 
 /// A book with one of everything that can be named.
 fn book() -> Book {

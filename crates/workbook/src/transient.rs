@@ -27,6 +27,7 @@
 //! runs made on both, is added.
 
 mod found;
+mod outcome;
 mod quick;
 mod setup;
 mod solve;

@@ -1,6 +1,10 @@
 //! Laws every book obeys, shown on the invented demo book and on altered
 //! copies of it.
-#![allow(clippy::unwrap_used, reason = "a helper of tests fails as a test does")]
+#![allow(
+    clippy::unwrap_used,
+    clippy::panic,
+    reason = "a helper of tests fails as a test does"
+)]
 
 use proptest::prelude::*;
 use workbook::book::{DistanceKind, Reckoning, Station, SurveyWay};

@@ -194,11 +194,11 @@ fn area(r: &mut Reader<'_>) -> Figure<Area> {
     whole_table(r, table)
 }
 
+/// A row as entered: stroke and open share.
+type Row = (Figure<Option<f64>>, Figure<Option<f64>>);
+
 /// The table with its ends; strokes must rise and shares not fall.
-fn whole_table(
-    r: &mut Reader<'_>,
-    rows: Vec<(Figure<Option<f64>>, Figure<Option<f64>>)>,
-) -> Figure<Area> {
+fn whole_table(r: &mut Reader<'_>, rows: Vec<Row>) -> Figure<Area> {
     if rows.is_empty() {
         return Err(Gap::Unsettled(Lack::ValveTable));
     }

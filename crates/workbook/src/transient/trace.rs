@@ -56,7 +56,7 @@ pub fn show(
         ..RunOptions::default()
     };
     let run: Run = Solver::new(&setup, &moves)
-        .to_show(&coarse, &fine, start, &options)
+        .shown_run(&coarse, &fine, start, &options)
         .map_err(trouble)?;
     Ok(Shown {
         start,
