@@ -136,8 +136,8 @@ pub use grid::{Grid, GridSpec, StretchGrid};
 pub use law::{ClosingLaw, Stroke};
 pub use model::Model;
 pub use run::{
-    Balance, Duration, NodeEnvelope, Probe, Run, RunOptions, Scratch, Separation, Trace,
+    Balance, Duration, NodeEnvelope, Picture, Probe, Run, RunOptions, Scratch, Separation, Trace,
 };
 pub use search::{ClosingAnswer, ClosingSearch, SearchSpec, StartCase};
 pub use surge_line::{Foot, SurgeLine, SurgeSpec};
-pub use two_speed::{TwoSpeedAnswer, TwoSpeedSpec, two_speed};
+pub use two_speed::{TwoSpeedAnswer, TwoSpeedSearch, TwoSpeedSpec, two_speed};

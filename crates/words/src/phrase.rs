@@ -7,13 +7,27 @@ use crate::text::Key;
 use crate::{Language, Words};
 
 /// The phrases, longer ones first, so that none hides within another.
-const PHRASES: [Key; 30] = [
+const PHRASES: [Key; 44] = [
     Key::PHRASE_NET_HEAD,
     Key::PHRASE_CAREFUL_RULE,
     Key::PHRASE_GREATEST,
     Key::PHRASE_LOSSES,
     Key::PHRASE_STOP,
     Key::PHRASE_SEARCHED,
+    Key::PHRASE_GRADE_LOWEST,
+    Key::PHRASE_GRADE_HIGHEST,
+    Key::PHRASE_CHAIN,
+    Key::PHRASE_ABOVE_PERIOD,
+    Key::PHRASE_ESTIMATE,
+    Key::PHRASE_BUBBLES,
+    Key::PHRASE_HELD_UPPER,
+    Key::PHRASE_HELD_JOINTS,
+    Key::PHRASE_COLD,
+    Key::PHRASE_CHARACTERISTICS,
+    Key::PHRASE_CHAPTERS,
+    Key::PHRASE_STARTING,
+    Key::PHRASE_RIGID,
+    Key::PHRASE_SUCTION,
     Key::PHRASE_WEAKEST,
     Key::PHRASE_HELD,
     Key::PHRASE_LEVELS,
@@ -97,6 +111,9 @@ mod tests {
             FigureKey::SubmergenceNeeded,
             FigureKey::Deflection(3),
             FigureKey::BendLoss(3),
+            FigureKey::Michaud,
+            FigureKey::Allievi,
+            FigureKey::WaterStarting,
         ];
         for stretch in &book.line.stretches {
             keys.extend([
@@ -110,6 +127,10 @@ mod tests {
                 FigureKey::QuickRise(stretch.id),
                 FigureKey::Collapse(stretch.id),
                 FigureKey::Mass(stretch.id),
+                FigureKey::SurgeHighest(stretch.id),
+                FigureKey::SurgeLowest(stretch.id),
+                FigureKey::SurgeShare(stretch.id),
+                FigureKey::SurgeCollapse(stretch.id),
             ]);
         }
         keys.extend(
@@ -135,6 +156,10 @@ mod tests {
             Key::PHRASE_JOINT,
             Key::PHRASE_USER,
             Key::PHRASE_COMMON_PRACTICE,
+            // Of other restraints, and of air.
+            Key::PHRASE_BUBBLES,
+            Key::PHRASE_HELD_UPPER,
+            Key::PHRASE_HELD_JOINTS,
         ];
         for phrase in PHRASES {
             let english = phrase.of(Language::English);

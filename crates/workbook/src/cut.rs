@@ -1,19 +1,22 @@
-//! Where the standing pressure runs through the class of a stretch's pipe: a
-//! study that proposes where to cut the stretch, and what to lay below.
+//! Where the pressure runs through the class of a stretch's pipe: a study that
+//! proposes where to cut the stretch, and what to lay below.
 //!
-//! A stretch's pipe is enough as far as the standing pressure, from the
-//! highest forebay level, leaves the margin called tight within what it may
-//! bear at the warmest wall. Below that place the weakest pipe of the same
-//! series and outside diameter is proposed that is enough at the stretch's
-//! lowest place. Surge is not in it: what is proposed is judged as any other
-//! pipe.
+//! A stretch's pipe is enough as far as the highest pressure leaves the margin
+//! called tight within what it may bear at the warmest wall (in a surge, within
+//! what the user allows it): the highest level of the transient along the line
+//! where that is solved, else the highest forebay level. Below that place the
+//! weakest pipe of the same series and outside diameter is proposed that is
+//! enough for the stretch. Another pipe has another wave speed, so what is
+//! proposed is judged as any other pipe.
 
 use crate::book::{Book, Id};
 use crate::edit;
 use crate::evaluate::Findings;
 use crate::figure::{CloneGap, Figure, Gap, Lack};
+use crate::resolve::profile::StationAt;
+use crate::transient::EnvelopeNode;
 use hydraulics::constants::standard_gravity;
-use hydraulics::quantity::{GaugePressure, Level, PipeLength};
+use hydraulics::quantity::{GaugePressure, Head, Level, PipeLength};
 use pipes::Pipe;
 
 /// A station no further above the place than this is cut at, m, before a new
@@ -96,7 +99,16 @@ fn proposal(findings: &Findings, index: usize) -> Figure<Proposal> {
     let keep = 1.0 - found.limits.clone()?.tight_margin;
     let standing = wall.standing.clone()?.pressure;
     let holds_to = GaugePressure::new(wall.allowable.clone_gap()?.pressure * keep);
-    if standing <= holds_to {
+    let highest = match &wall.surge {
+        Ok(surge) if surge.pressure > standing => surge.pressure,
+        _ => standing,
+    };
+    // Where the user allows more in a surge, that is what surge is held to.
+    let in_surge = match stretch.surge_allowed.clone()? {
+        Some(allowed) => GaugePressure::new(allowed.get() * keep),
+        None => holds_to,
+    };
+    if standing <= holds_to && highest <= in_surge {
         return Ok(Proposal::Enough);
     }
     if crate::resolve::parts::own_id(&pipe.id).is_some() {
@@ -104,14 +116,28 @@ fn proposal(findings: &Findings, index: usize) -> Figure<Proposal> {
     }
     let kin = kin(pipe, found.warmest_wall.clone()?, keep);
     let weakest = |pressure: GaugePressure| kin.iter().find(|c| c.enough_to >= pressure);
-    let Some(below) = weakest(standing) else {
+    // A pipe's own allowance says nothing of another: surge must hold within
+    // the lasting pressure of the one proposed.
+    let Some(below) = weakest(highest) else {
         return Ok(Proposal::NoneStronger);
     };
     let below = below.pipe.id.clone();
     let density = found.cold_water.clone()?.density();
-    let head = holds_to.head(density, standard_gravity());
-    let lowest_level = found.forebay.highest.clone()? - head;
-    let Some((chainage, at)) = place(findings, (span.from, span.to), lowest_level)? else {
+    let head = |pressure: GaugePressure| pressure.head(density, standard_gravity());
+    let forebay = found.forebay.highest.clone()?;
+    let standing_at = place(findings, (span.from, span.to), head(holds_to), &|_| forebay)?;
+    let surge_at = match &findings.transient.surge {
+        Ok(surge) if highest > in_surge => {
+            let level = |at| highest_level(&surge.envelope, at).unwrap_or(forebay);
+            place(findings, (span.from, span.to), head(in_surge), &level)?
+        }
+        _ => Some(Reached::End),
+    };
+    let reached = match (standing_at, surge_at) {
+        (Some(a), Some(b)) => Some(a.first(b)),
+        _ => None,
+    };
+    let Some(Reached::At(chainage, at)) = reached else {
         return Ok(Proposal::AllAlong { pipe: below });
     };
     Ok(Proposal::Cut(Cut {
@@ -150,32 +176,71 @@ fn kin(
     kin
 }
 
-/// The last place of a stretch from its head down to which the pipe lies no
-/// lower than `lowest`; none where there is no such place to cut at.
+/// How far down a stretch its pipe is enough.
+#[derive(Debug, Clone, Copy, PartialEq)]
+enum Reached {
+    /// To this place.
+    At(PipeLength, CutAt),
+    /// To its end.
+    End,
+}
+
+impl Reached {
+    /// The one further up.
+    fn first(self, other: Reached) -> Reached {
+        match (self, other) {
+            (Reached::At(a, _), Reached::At(b, _)) if b < a => other,
+            (Reached::End, _) => other,
+            _ => self,
+        }
+    }
+}
+
+/// Highest level of the transient at a chainage, straight between nodes.
+fn highest_level(envelope: &[EnvelopeNode], at: PipeLength) -> Option<Level> {
+    let after = envelope.partition_point(|n| n.chainage < at);
+    let b = envelope.get(after).or(envelope.last())?;
+    let Some(a) = after.checked_sub(1).and_then(|i| envelope.get(i)) else {
+        return Some(b.highest);
+    };
+    let width = (b.chainage - a.chainage).m();
+    if width <= 0.0 {
+        return Some(if a.highest > b.highest {
+            a.highest
+        } else {
+            b.highest
+        });
+    }
+    let share = ((at - a.chainage).m() / width).min(1.0);
+    Some(Level::from_m(
+        a.highest.m() + share * (b.highest - a.highest).m(),
+    ))
+}
+
+/// Down to where the pressure head, from the level that stands or rises over
+/// each place, stays within `bears`; none where there is no such place to cut
+/// at. Straight between stations.
 fn place(
     findings: &Findings,
     (from, to): (PipeLength, PipeLength),
-    lowest: Level,
-) -> Figure<Option<(PipeLength, CutAt)>> {
+    bears: Head,
+    level_over: &dyn Fn(PipeLength) -> Level,
+) -> Figure<Option<Reached>> {
     let stations = findings.resolved.profile.whole()?;
+    let spare = |s: &StationAt| (bears - (level_over(s.chainage) - s.level)).m();
     let mut above = None;
     for pair in stations.windows(2) {
         let [a, b] = pair else { continue };
         if b.chainage <= from || a.chainage >= to {
             continue;
         }
-        if a.level < lowest {
+        let (at_a, at_b) = (spare(a), spare(b));
+        if at_a < 0.0 {
             break;
         }
-        let along = (b.chainage - a.chainage).m();
-        let fall = (a.level - b.level).m();
-        let down = if b.level < lowest {
-            along * (a.level - lowest).m() / fall
-        } else {
-            along
-        };
-        if b.level < lowest {
-            above = Some((a, down));
+        if at_b < 0.0 {
+            let along = (b.chainage - a.chainage).m();
+            above = Some((a, along * at_a / (at_a - at_b)));
             break;
         }
         // Only what hangs below the last station is lower still.
@@ -190,10 +255,10 @@ fn place(
     if centimetres < NEAR_M {
         // At the station above, unless the stretch begins there.
         let inside = a.chainage > from;
-        return Ok(inside.then_some((a.chainage, CutAt::Station(a.id))));
+        return Ok(inside.then_some(Reached::At(a.chainage, CutAt::Station(a.id))));
     }
     let down = PipeLength::from_m(centimetres);
-    Ok(Some((
+    Ok(Some(Reached::At(
         a.chainage + down,
         CutAt::NewBelow {
             station: a.id,
@@ -234,9 +299,11 @@ mod tests {
     use crate::field::Field;
     use crate::reading::DecimalMark;
 
-    /// The demo with one weak pipe from end to end.
+    /// The demo with one weak pipe from end to end, before a closing time is
+    /// entered.
     fn weak() -> Book {
         let mut book = demo("demo");
+        book.surge.closing_time_s = Entry::default();
         book.line.stretches.truncate(1);
         assert!(edit::lay(&mut book, 1, "pe100-iso4427/225/sdr26"));
         book
@@ -287,6 +354,26 @@ mod tests {
         for (_, proposal) in proposals(&after) {
             assert_eq!(proposal, Ok(Proposal::Enough));
         }
+    }
+
+    /// With surge the same pipe is enough less far down, and what is laid so
+    /// bears the surge too.
+    #[test]
+    fn a_cut_means_with_surge() {
+        let still = weak();
+        let mut book = still.clone();
+        let closing = Entry::typed("6", "s", Field::ClosingTime.kind(), DecimalMark::Point);
+        book.surge.closing_time_s = closing;
+        let (_, standing) = cut_of(&still);
+        let (found, cut) = cut_of(&book);
+        assert!(cut.chainage < standing.chainage);
+        apply(&mut book, &found, &cut).unwrap();
+        let after = evaluate(&book);
+        for wall in &after.walls.stretches {
+            assert!(wall.surge_share.clone().unwrap() <= 1.0);
+        }
+        let top = after.walls.stretches[0].surge_share.clone().unwrap();
+        assert!(top > 0.8, "{top}");
     }
 
     #[test]

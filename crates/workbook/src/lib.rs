@@ -2,6 +2,7 @@
 
 pub mod book;
 pub mod caution;
+pub mod closing;
 pub mod cut;
 pub mod demo;
 pub mod edit;

@@ -12,6 +12,7 @@ use crate::measure::Measure;
 use crate::relief::Collects;
 use crate::resolve::bends::Made;
 use crate::schedule::schedule;
+use crate::transient::EventKind;
 use crate::units::Kind;
 use crate::verdict::{Check, CheckKind, Verdict, Weakest};
 use hydraulics::quantity::PipeLength;
@@ -88,6 +89,8 @@ pub struct Report {
     pub lowest_pressure_at_m: Option<f64>,
     /// Time for a pressure wave to run up the line and back.
     pub pipe_period_s: Option<f64>,
+    /// The whole transient.
+    pub surge: Option<SurgeReport>,
     /// Lengths below atmospheric pressure in running: from and to, along the
     /// pipe.
     pub below_atmosphere_m: Vec<(f64, f64)>,
@@ -271,6 +274,23 @@ pub struct StretchReport {
     pub weakest_pressure_pa: Option<f64>,
     /// Standing pressure over that.
     pub share_used: Option<f64>,
+    /// Highest pressure in a surge, gauge.
+    pub surge_pressure_pa: Option<f64>,
+    /// Where, along the pipe.
+    pub surge_at_m: Option<f64>,
+    /// The event that brings it about: `closing`, `blocked`, `opening`, `slam`.
+    pub surge_event: Option<&'static str>,
+    /// Jets that are open when it begins.
+    pub surge_jets_open: Option<u32>,
+    /// Stroke they stand at, as a share of full.
+    pub surge_opening: Option<f64>,
+    /// Highest pressure in a surge over what the weakest part may bear in one.
+    pub surge_share_used: Option<f64>,
+    /// Lowest pressure in a surge, gauge, from the lowest forebay level.
+    pub surge_lowest_pa: Option<f64>,
+    /// Outside over inside pressure at that lowest, as a share of the collapse
+    /// pressure allowed.
+    pub surge_collapse_share: Option<f64>,
     /// Quick surge estimate; settles nothing.
     pub quick_surge_m: Option<f64>,
     /// Wave speed.
@@ -439,6 +459,7 @@ pub fn report(book: &Book, found: &Findings, say: Sayings<'_>) -> Report {
         lowest_pressure_pa: n.take("lowest_pressure_pa", &steady.lowest, |l| l.pressure.pa()),
         lowest_pressure_at_m: steady.lowest.as_ref().ok().map(|l| l.at.m()),
         pipe_period_s: n.take("pipe_period_s", &found.transient.period, |t| si(*t)),
+        surge: surge(found, &plan),
         below_atmosphere_m: steady
             .suction
             .iter()
@@ -610,6 +631,10 @@ fn stretch(
     let pipe = placed.pipe.as_ref().ok();
     let run = found.steady.stretches.get(index).map(|(_, r)| r);
     let quick = found.transient.quick.get(index).map(|(_, q)| q);
+    let peaks = found.transient.peaks.as_ref().ok();
+    let highest = peaks
+        .and_then(|p| p.stretches.get(index))
+        .map(|s| &s.highest);
     let order = plan
         .lines
         .iter()
@@ -652,6 +677,19 @@ fn stretch(
             .and_then(|w| w.bearing.as_ref().ok())
             .map(|b| b.pressure.pa()),
         share_used: wall.and_then(|w| w.share.as_ref().ok().copied()),
+        surge_pressure_pa: wall
+            .and_then(|w| n.take(&name("surge_pressure_pa"), &w.surge, |s| s.pressure.pa())),
+        surge_at_m: wall.and_then(|w| w.surge.as_ref().ok()).map(|s| s.at.m()),
+        surge_event: highest.map(|s| event(s.by.event)),
+        surge_jets_open: highest.map(|s| s.by.open),
+        surge_opening: highest.map(|s| s.by.opening),
+        surge_share_used: wall.and_then(|w| w.surge_share.as_ref().ok().copied()),
+        surge_lowest_pa: wall
+            .and_then(|w| w.surge_lowest.as_ref().ok())
+            .map(|s| s.pressure.pa()),
+        surge_collapse_share: wall
+            .and_then(|w| w.collapse_in_surge.as_ref().ok())
+            .map(|c| c.share),
         quick_surge_m: quick.and_then(|q| n.take(&name("quick_surge_m"), q, |q| q.rise.m())),
         wave_speed_m_s: quick
             .and_then(|q| q.as_ref().ok())
@@ -685,6 +723,102 @@ fn stretch(
             .map(|v| v.checks.iter().map(|c| check(c, n)).collect())
             .unwrap_or_default(),
     }
+}
+
+fn event(kind: EventKind) -> &'static str {
+    match kind {
+        EventKind::Closing => "closing",
+        EventKind::Blocked => "blocked",
+        EventKind::Opening => "opening",
+        EventKind::LoadLost => "load_lost",
+        EventKind::Slam => "slam",
+    }
+}
+
+/// The surge of the line as a whole.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct SurgeReport {
+    /// Time from full stroke to shut.
+    pub closing_s: f64,
+    /// The reserve asked for holds: the drive may be that much faster.
+    pub reserve_holds: bool,
+    /// Time for a wave to run up the line and back.
+    pub period_s: f64,
+    /// Water starting time, all jets open.
+    pub water_starting_s: f64,
+    /// Highest grade level at the foot.
+    pub foot_highest_m: f64,
+    /// Every kind of event, from its worst start.
+    pub events: Vec<EventReport>,
+    /// Time step of the run shown.
+    pub step_s: f64,
+    /// Cells over the line.
+    pub cells: usize,
+    /// Greatest alteration of a wave speed, as a share.
+    pub altered_share: f64,
+    /// How far half the step moves the peak, as a share of the rise.
+    pub moved_share: f64,
+    /// What the balance of volume leaves over, as a share.
+    pub volume_left_share: f64,
+    /// What the balance of energy leaves over, as a share.
+    pub energy_left_share: f64,
+    /// How much the coarser grid falls short, as a share of the rise.
+    pub coarse_error_share: f64,
+}
+
+/// One kind of event.
+#[derive(Debug, Clone, PartialEq, Serialize, JsonSchema)]
+pub struct EventReport {
+    /// `closing`, `blocked`, `opening`, `load_lost`, `slam`.
+    pub event: &'static str,
+    /// Whether the verdicts rest on it.
+    pub counts: bool,
+    /// Jets open when it begins.
+    pub jets_open: u32,
+    /// Stroke they stand at, as a share of full.
+    pub opening: f64,
+    /// Highest grade level at the foot.
+    pub foot_highest_m: f64,
+    /// Lowest grade level at the foot.
+    pub foot_lowest_m: f64,
+    /// The water column parts.
+    pub column_parts: bool,
+}
+
+fn surge(found: &Findings, plan: &crate::schedule::Schedule) -> Option<SurgeReport> {
+    let surge = found.transient.surge.as_ref().ok()?;
+    let trust = &surge.trust;
+    Some(SurgeReport {
+        closing_s: si(surge.closing),
+        reserve_holds: plan.closing.as_ref().is_ok_and(|c| c.reserve_holds),
+        period_s: si(surge.period),
+        water_starting_s: si(surge.water_starting),
+        foot_highest_m: surge.foot_highest.0.m(),
+        events: surge
+            .events
+            .iter()
+            .map(|e| EventReport {
+                event: event(e.start.event),
+                counts: e.counts,
+                jets_open: e.start.open,
+                opening: e.start.opening,
+                foot_highest_m: e.foot_highest.m(),
+                foot_lowest_m: e.foot_lowest.m(),
+                column_parts: e.parted.is_some(),
+            })
+            .collect(),
+        step_s: si(trust.step),
+        cells: trust.cells,
+        altered_share: trust
+            .stretches
+            .iter()
+            .map(|s| s.altered.abs())
+            .fold(0.0, f64::max),
+        moved_share: trust.moved,
+        volume_left_share: trust.balance.volume,
+        energy_left_share: trust.balance.energy,
+        coarse_error_share: trust.coarse_error,
+    })
 }
 
 fn check(check: &Check, n: &Noting<'_>) -> CheckReport {

@@ -6,14 +6,15 @@ use crate::figure::{CloneGap, Figure, Gap, Lack};
 use crate::relief::{Drain, Vent};
 use crate::resolve::Resolved;
 use crate::resolve::bends::Made;
+use crate::resolve::drive::Speeds;
 use crate::resolve::parts::PlacedFitting;
 use crate::sweep::class;
-use crate::verdict::StretchVerdict;
+use crate::verdict::{StretchVerdict, Verdict};
 use crate::walls::StretchWalls;
 use hydraulics::quantity::{Head, PipeLength};
 use pipes::{Pipe, SupplyKind};
 use std::sync::Arc;
-use uom::si::f64::{Length, LinearMassDensity, Mass};
+use uom::si::f64::{Length, LinearMassDensity, Mass, Time};
 
 /// Pieces to order.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -101,6 +102,22 @@ pub struct BendGroup {
     pub stations: Vec<(Id, f64)>,
 }
 
+/// The closing time as ordered.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct ClosingOrder {
+    /// Speeds of the drive, as in the book.
+    pub speeds: Speeds,
+    /// Time from full stroke to shut.
+    pub full_stroke: Time,
+    /// Reserve asked for, a share.
+    pub reserve: f64,
+    /// The time that reserve leaves: the drive may be this fast and the line
+    /// still keeps to its limits, if `reserve_holds`.
+    pub with_reserve: Time,
+    /// Whether it does: no stretch fails, every event solved in full.
+    pub reserve_holds: bool,
+}
+
 /// The schedule.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Schedule {
@@ -116,6 +133,8 @@ pub struct Schedule {
     pub vents: Figure<Vec<Vent>>,
     /// Places that need a drain.
     pub drains: Figure<Vec<Drain>>,
+    /// The closing time the drive of the jets is ordered with.
+    pub closing: Figure<ClosingOrder>,
     /// Length in all.
     pub length: Figure<PipeLength>,
     /// Mass of pipe in all.
@@ -141,9 +160,34 @@ pub fn schedule(book: &Book, findings: &Findings) -> Schedule {
         bends: bends(&findings.resolved),
         vents: findings.relief.vents.clone(),
         drains: findings.relief.drains.clone(),
+        closing: closing(findings),
         length: findings.resolved.profile.pipe_length.clone(),
         mass,
     }
+}
+
+/// The closing time ordered, and whether its reserve is one.
+fn closing(findings: &Findings) -> Figure<ClosingOrder> {
+    let surge = findings.transient.surge.clone_gap()?;
+    let speeds = findings.resolved.drive.speeds.clone()?;
+    let reserve = findings.resolved.drive.reserve.clone()?;
+    let faster = |time: Time| time / (1.0 + reserve);
+    let sped_up = match speeds {
+        Speeds::One { time } => Speeds::One { time: faster(time) },
+        Speeds::Two { fast, slow, knee } => Speeds::Two {
+            fast: faster(fast),
+            slow: faster(slow),
+            knee,
+        },
+    };
+    let verdict = crate::closing::verdict_with(&findings.resolved, &findings.steady, sped_up);
+    Ok(ClosingOrder {
+        speeds,
+        full_stroke: surge.closing,
+        reserve,
+        with_reserve: sped_up.full_stroke(),
+        reserve_holds: verdict <= Verdict::Tight,
+    })
 }
 
 fn line(findings: &Findings, index: usize) -> Option<Figure<Line>> {

@@ -10,9 +10,11 @@ use crate::figure::{CloneGap, Figure, Gap, Lack};
 use crate::measure::Measure;
 use crate::resolve::bends::Turn;
 use crate::steady::roughness;
+use crate::transient::Surge;
 use crate::units::Kind;
 use hydraulics::constants::STANDARD_GRAVITY_M_S2;
 use hydraulics::quantity::PipeLength;
+use hydraulics::surge::Restraint;
 use pipes::{Basis, Pipe};
 use uom::si::kinematic_viscosity::square_meter_per_second;
 use uom::si::length::meter;
@@ -70,6 +72,20 @@ pub enum FigureKey {
     WaveSpeed(Id),
     /// Quick surge estimate of a stretch.
     QuickRise(Id),
+    /// Highest pressure in a surge of a stretch.
+    SurgeHighest(Id),
+    /// Lowest pressure in a surge of a stretch.
+    SurgeLowest(Id),
+    /// Highest pressure in a surge over what is allowed.
+    SurgeShare(Id),
+    /// Suction in a surge over the collapse pressure allowed.
+    SurgeCollapse(Id),
+    /// Michaud's estimate of the closing.
+    Michaud,
+    /// Allievi's estimate of the closing.
+    Allievi,
+    /// Water starting time.
+    WaterStarting,
     /// Collapse pressure of a stretch.
     Collapse(Id),
     /// Flow as a share of that of greatest power.
@@ -191,6 +207,22 @@ pub enum Term {
     ApproachCoefficient,
     /// Height of the intake's opening.
     IntakeHeight,
+    /// Grade level.
+    GradeLevel,
+    /// How much stiffer the wall is in the cold.
+    Stiffening,
+    /// Closing time.
+    ClosingTime,
+    /// Time for a wave to run up the line and back.
+    Period,
+    /// Pressure in a surge.
+    SurgePressure,
+    /// Pressure below that of the air.
+    Suction,
+    /// Outside pressure allowed against collapse.
+    CollapseAllowed,
+    /// Share of air carried as bubbles.
+    AirShare,
 }
 
 /// One number put in.
@@ -267,6 +299,11 @@ impl Findings {
             FigureKey::Allowable(id) => self.allowable_working(id),
             FigureKey::Share(id) => self.share_working(id),
             FigureKey::WaveSpeed(id) | FigureKey::QuickRise(id) => self.wave_working(key, id),
+            FigureKey::SurgeHighest(id) | FigureKey::SurgeLowest(id) => self.surge_working(key, id),
+            FigureKey::SurgeShare(id) => self.surge_share_working(id),
+            FigureKey::SurgeCollapse(id) => self.surge_collapse_working(id),
+            FigureKey::Michaud | FigureKey::Allievi => self.quick_closing_working(key),
+            FigureKey::WaterStarting => self.water_starting_working(),
             FigureKey::Collapse(id) => self.collapse_working(id),
             FigureKey::GreatestPower => self.greatest_working(),
             FigureKey::Mass(id) => self.mass_working(id),
@@ -731,21 +768,170 @@ impl Findings {
             });
         }
         let water = self.resolved.cold_water.clone()?;
+        let air = self.resolved.drive.air_share.clone()?;
+        let formula = match (self.resolved.drive.restraint, air > 0.0) {
+            (_, true) => {
+                "1/(ρ a²) = 1/K + D c/(f_c E e) + α/p, with air carried as bubbles: not the careful choice"
+            }
+            (Restraint::Throughout, _) => {
+                "a = √(K/ρ) / √(1 + K D c/(f_c E e)), pipe held throughout, thick wall reckoned"
+            }
+            (Restraint::UpstreamEnd, _) => {
+                "a = √(K/ρ) / √(1 + K D c/(f_c E e)), pipe held at its upper end, thick wall reckoned"
+            }
+            (Restraint::ExpansionJoints, _) => {
+                "a = √(K/ρ) / √(1 + K D c/(f_c E e)), pipe with expansion joints, thick wall reckoned"
+            }
+        };
+        let mut sources = vec![
+            "Korteweg 1878; Wylie and Streeter 1993".to_owned(),
+            format!("modulus: {}", pipe.modulus_short.source),
+        ];
+        if quick.stiffening > 1.0 {
+            sources.push(pipes::COLD_SOURCE.to_owned());
+        }
+        let mut more = vec![number("f_c", Term::Stiffening, quick.stiffening)];
+        if air > 0.0 {
+            more.push(input("α", Term::AirShare, Measure::share(air)));
+        }
         Ok(Working {
-            formula: "a = √(K/ρ) / √(1 + K D c/(E e)), pipe held throughout, thick wall reckoned",
+            formula,
+            sources,
+            inputs: [
+                vec![
+                    input("K", Term::BulkModulus, stress(water.bulk_modulus())),
+                    self.water_density()?,
+                    input("D", Term::Bore, Measure::bore(pipe.bore())),
+                    input("e", Term::WallMean, Measure::bore(pipe.wall_mean())),
+                    input("E", Term::ModulusShort, stress(pipe.modulus_short.value)),
+                    number("ν", Term::Poisson, pipe.poisson.value),
+                ],
+                more,
+            ]
+            .concat(),
+            result: quick.wave_speed.into(),
+        })
+    }
+
+    fn surge(&self) -> Figure<&Surge> {
+        self.transient.surge.clone_gap()
+    }
+
+    /// The level of the pipe, or of the jets where the pressure is theirs, that
+    /// a pressure at a grade level stands on.
+    fn surge_working(&self, key: FigureKey, id: Id) -> Figure<Working> {
+        let surge = self.surge()?;
+        let wall = self.wall(id)?;
+        let highest = key == FigureKey::SurgeHighest(id);
+        let found = if highest {
+            wall.surge.clone()?
+        } else {
+            wall.surge_lowest.clone()?
+        };
+        let level = self
+            .resolved
+            .profile
+            .level_at(found.at)
+            .ok_or(Gap::Unsettled(Lack::Pipe(id)))?;
+        let density = self.resolved.cold_water.clone()?.density();
+        let head = found
+            .pressure
+            .head(density, hydraulics::constants::standard_gravity());
+        Ok(Working {
+            formula: if highest {
+                "p = ρ g (z_g − z), z_g the highest grade level of every event and start that counts"
+            } else {
+                "p = ρ g (z_g − z), z_g the lowest grade level of every event and start that counts, from the lowest forebay level"
+            },
             sources: vec![
-                "Korteweg 1878; Wylie and Streeter 1993".to_owned(),
-                format!("modulus: {}", pipe.modulus_short.source),
+                "method of characteristics: Wylie and Streeter 1993, chapters 3 and 4 (from memory)"
+                    .to_owned(),
             ],
             inputs: vec![
-                input("K", Term::BulkModulus, stress(water.bulk_modulus())),
+                input("z_g", Term::GradeLevel, level + head),
+                input("z", Term::PipeLevel, level),
                 self.water_density()?,
-                input("D", Term::Bore, Measure::bore(pipe.bore())),
-                input("e", Term::WallMean, Measure::bore(pipe.wall_mean())),
-                input("E", Term::ModulusShort, stress(pipe.modulus_short.value)),
-                number("ν", Term::Poisson, pipe.poisson.value),
+                gravity(),
+                input("T", Term::ClosingTime, surge.closing),
+                input("2 L/a", Term::Period, surge.period),
             ],
-            result: quick.wave_speed.into(),
+            result: found.pressure.into(),
+        })
+    }
+
+    fn surge_share_working(&self, id: Id) -> Figure<Working> {
+        let wall = self.wall(id)?;
+        Ok(Working {
+            formula: "p / p_allowed, of the weakest of pipe, fittings and nozzles",
+            sources: vec![
+                "careful rule after EN 805 (DP ≤ PFA), by analogy with water supply".to_owned(),
+            ],
+            inputs: vec![
+                input("p", Term::SurgePressure, wall.surge.clone()?.pressure),
+                input(
+                    "p_allowed",
+                    Term::Allowed,
+                    wall.surge_bearing.clone()?.pressure,
+                ),
+            ],
+            result: Measure::share(wall.surge_share.clone()?),
+        })
+    }
+
+    fn surge_collapse_working(&self, id: Id) -> Figure<Working> {
+        let wall = self.wall(id)?;
+        let found = wall.collapse_in_surge.clone()?;
+        Ok(Working {
+            formula: "s / p_c, s the pressure below that of the air at the lowest",
+            sources: vec![
+                "Bresse; Timoshenko and Gere, Theory of Elastic Stability; ovality as in ASTM F1216 (from memory)"
+                    .to_owned(),
+            ],
+            inputs: vec![
+                input("s", Term::Suction, found.suction),
+                input("p_c", Term::CollapseAllowed, wall.collapse.clone()?.allowed),
+            ],
+            result: Measure::share(found.share),
+        })
+    }
+
+    fn quick_closing_working(&self, key: FigureKey) -> Figure<Working> {
+        let quick = self.transient.quick_closing.clone()?;
+        let period = input("2 L/a", Term::Period, self.transient.period.clone()?);
+        let time = input("T", Term::ClosingTime, quick.closing);
+        let length = input("L", Term::Length, quick.length);
+        let velocity = input("V", Term::Velocity, quick.velocity);
+        let wave = input("a", Term::WaveSpeed, quick.wave_speed);
+        let head = input("H", Term::GrossHead, self.resolved.gross_head.clone()?);
+        Ok(match key {
+            FigureKey::Michaud => Working {
+                formula: "Δh = 2 L V/(g T), for T above 2 L/a: an estimate, settles nothing",
+                sources: vec!["Michaud 1878".to_owned()],
+                inputs: vec![length, velocity, time, period, gravity()],
+                result: quick.michaud.into(),
+            },
+            _ => Working {
+                formula: "Δh by the chain of phases 2 L/a, area closed in a straight line, no friction: an estimate, settles nothing",
+                sources: vec!["Allievi 1913".to_owned()],
+                inputs: vec![head, velocity, wave, time, period, gravity()],
+                result: quick.allievi.into(),
+            },
+        })
+    }
+
+    fn water_starting_working(&self) -> Figure<Working> {
+        let surge = self.surge()?;
+        let (length, velocity, net_head) = surge.running;
+        Ok(Working {
+            formula: "T_w = L V / (g H_n), all jets open, new pipe, highest forebay level",
+            sources: vec!["momentum of the water (rigid column)".to_owned()],
+            inputs: vec![
+                input("L", Term::Length, length),
+                input("V", Term::Velocity, velocity),
+                input("H_n", Term::NetHead, net_head),
+                gravity(),
+            ],
+            result: surge.water_starting.into(),
         })
     }
 
@@ -838,6 +1024,9 @@ mod tests {
             FigureKey::JetPower,
             FigureKey::Lowest,
             FigureKey::GreatestPower,
+            FigureKey::Michaud,
+            FigureKey::Allievi,
+            FigureKey::WaterStarting,
             FigureKey::ClosingError,
             FigureKey::SubmergenceNeeded,
             FigureKey::Deflection(3),
@@ -856,6 +1045,10 @@ mod tests {
                 FigureKey::Collapse(*id),
                 FigureKey::Mass(*id),
                 FigureKey::ClassNeeded(*id),
+                FigureKey::SurgeHighest(*id),
+                FigureKey::SurgeLowest(*id),
+                FigureKey::SurgeShare(*id),
+                FigureKey::SurgeCollapse(*id),
             ]);
         }
         keys.extend(fittings.iter().map(|id| FigureKey::FittingLoss(*id)));
@@ -970,6 +1163,35 @@ mod tests {
 
         let w = found.working(FigureKey::ClassNeeded(2)).unwrap();
         near(w.result.value, get(&w, "p") / get(&w, "f_t"));
+
+        for key in [FigureKey::SurgeHighest(2), FigureKey::SurgeLowest(1)] {
+            let w = found.working(key).unwrap();
+            near(
+                w.result.value,
+                get(&w, "ρ") * get(&w, "g") * (get(&w, "z_g") - get(&w, "z")),
+            );
+        }
+        let w = found.working(FigureKey::WaterStarting).unwrap();
+        near(
+            w.result.value,
+            get(&w, "L") * get(&w, "V") / (get(&w, "g") * get(&w, "H_n")),
+        );
+        let w = found.working(FigureKey::Michaud).unwrap();
+        near(
+            w.result.value,
+            2.0 * get(&w, "L") * get(&w, "V") / (get(&w, "g") * get(&w, "T")),
+        );
+        let w = found.working(FigureKey::SurgeShare(2)).unwrap();
+        near(w.result.value, get(&w, "p") / get(&w, "p_allowed"));
+
+        let w = found.working(FigureKey::WaveSpeed(1)).unwrap();
+        let (d, e, nu) = (get(&w, "D"), get(&w, "e"), get(&w, "ν"));
+        let c = 2.0 * e / d * (1.0 + nu) + d / (d + e) * (1.0 - nu * nu);
+        let give = get(&w, "K") * d * c / (get(&w, "f_c") * get(&w, "E") * e);
+        near(
+            w.result.value,
+            (get(&w, "K") / get(&w, "ρ")).sqrt() / (1.0 + give).sqrt(),
+        );
 
         let w = found.working(FigureKey::QuickRise(1)).unwrap();
         near(w.result.value, get(&w, "a") * get(&w, "V") / get(&w, "g"));

@@ -1,11 +1,17 @@
 //! The grid: a group of figures for each kernel, as text of their bits.
 
-use hydraulics::constants::standard_gravity;
+use hydraulics::constants::{standard_atmosphere, standard_gravity};
 use hydraulics::fittings::LossCoefficient;
 use hydraulics::friction::{FrictionLaw, colebrook_factor, colebrook_factors, factor_si};
 use hydraulics::line::{Line, LineSpec, LocalLoss, NozzleTemplate, Point, Run};
 use hydraulics::math;
-use hydraulics::quantity::{Length, Level, PipeLength, ThermodynamicTemperature, VolumeRate, unit};
+use hydraulics::quantity::{
+    Length, Level, PipeLength, ThermodynamicTemperature, Time, Velocity, VolumeRate, unit,
+};
+use hydraulics::transient::{
+    Characteristic, ClosingLaw, Event, Foot, FrictionModel, Grid, GridSpec, Model, RunOptions,
+    Scratch, SurgeLine, SurgeSpec,
+};
 use hydraulics::water::Water;
 use std::error::Error;
 
@@ -23,6 +29,7 @@ pub(crate) fn groups() -> Result<Vec<Group>, Box<dyn Error>> {
         ("Colebrook-White", colebrook()),
         ("water", water()?),
         ("steady line", steady_line()?),
+        ("transient", transient()?),
         ("demo book", demo_book()),
     ])
 }
@@ -194,6 +201,74 @@ fn steady_line() -> Result<Vec<String>, Box<dyn Error>> {
     Ok(lines)
 }
 
+/// One closing of a line of two pipes with traces and pictures, and one that
+/// parts the column, in the form that Rust prints.
+fn transient() -> Result<Vec<String>, Box<dyn Error>> {
+    let metres = Length::new::<unit::length::meter>;
+    let at = PipeLength::from_m;
+    let seconds = Time::new::<unit::time::second>;
+    let friction = FrictionLaw::ColebrookWhite {
+        roughness: metres(1e-5),
+    };
+    let run = |to: f64, bore: f64| Run {
+        to: at(to),
+        bore: metres(bore),
+        friction,
+    };
+    let speed = Velocity::new::<unit::velocity::meter_per_second>;
+    let line = SurgeLine::new(SurgeSpec {
+        line: Line::new(LineSpec {
+            forebay: Level::from_m(181.5),
+            points: vec![
+                Point {
+                    chainage: at(0.0),
+                    level: Level::from_m(178.0),
+                },
+                Point {
+                    chainage: at(410.0),
+                    level: Level::from_m(96.5),
+                },
+            ],
+            runs: vec![run(180.0, 0.2), run(410.0, 0.16)],
+            losses: vec![],
+            water: Water::at(celsius(8.0))?,
+            gravity: standard_gravity(),
+        })?,
+        wave_speeds: vec![speed(350.0), speed(480.0)],
+        foot: Foot {
+            nozzles: NozzleTemplate {
+                count: 2,
+                velocity_coefficient: 0.97,
+                contraction_coefficient: 0.9,
+                axis: Level::from_m(96.0),
+                branch_k: 0.4,
+                branch_bore: metres(0.1),
+            }
+            .set(metres(0.03))?,
+            characteristic: Characteristic::Linear,
+        },
+        atmosphere: standard_atmosphere(),
+    })?;
+    let grid = Grid::new(&line, GridSpec::default())?;
+    let mut lines = Vec::new();
+    for (unsteady, time) in [(false, 12.0), (true, 12.0), (false, 0.5)] {
+        let model_of = FrictionModel {
+            unsteady,
+            ..FrictionModel::default()
+        };
+        let model = Model::new(&line, &grid, &[1.0, 0.6], model_of)?;
+        let event = Event::close(model.strokes(), &ClosingLaw::linear(seconds(time))?)?;
+        let options = RunOptions {
+            probes: vec![at(180.0)],
+            pictures: 20,
+            ..RunOptions::default()
+        };
+        let run = model.run(&event, &options, &mut Scratch::new())?;
+        lines.push(format!("{run:?}"));
+    }
+    Ok(lines)
+}
+
 /// Everything found in the demo book, and the sweep over the catalogue for it,
 /// in the form that Rust prints.
 fn demo_book() -> Vec<String> {
@@ -201,9 +276,13 @@ fn demo_book() -> Vec<String> {
     let mut sweep = workbook::sweep::Sweep::new(&book);
     let rows = sweep.advance(sweep.total());
     let found = workbook::evaluate(&book);
+    // The second pass, with surge, over a part of the rows.
+    let mut second = workbook::sweep::SurgeSweep::new(sweep, &rows, &found);
+    let solved = second.advance(40);
     format!("{found:#?}")
         .lines()
         .map(str::to_owned)
         .chain(rows.iter().map(|row| format!("{row:?}")))
+        .chain(solved.iter().map(|row| format!("{row:?}")))
         .collect()
 }

@@ -278,6 +278,12 @@ impl ClosingSearch {
         self.runs
     }
 
+    /// The slowest time it began at.
+    #[must_use]
+    pub fn slowest(&self) -> Time {
+        Time::new::<second>(self.slowest)
+    }
+
     /// Share of the times that is scanned, 0 to 1: progress.
     #[must_use]
     pub fn progress(&self) -> f64 {
