@@ -136,7 +136,7 @@ pub use grid::{Grid, GridSpec, StretchGrid};
 pub use law::{ClosingLaw, Stroke};
 pub use model::Model;
 pub use run::{
-    Balance, Duration, NodeEnvelope, Probe, Run, RunOptions, Scratch, Separation, Trace,
+    Balance, Duration, NodeEnvelope, Picture, Probe, Run, RunOptions, Scratch, Separation, Trace,
 };
 pub use search::{ClosingAnswer, ClosingSearch, SearchSpec, StartCase};
 pub use surge_line::{Foot, SurgeLine, SurgeSpec};

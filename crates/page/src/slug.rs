@@ -26,7 +26,7 @@ pub fn place(place: &Place) -> String {
         Place::Stretch(id) => format!("stretch-{id}"),
         Place::Fitting(id) => format!("fitting-{id}"),
         Place::OwnPipe(id) => format!("own-pipe-{id}"),
-        Place::Pipe(_) | Place::Line | Place::Jets => "sheet".to_owned(),
+        Place::Pipe(_) | Place::Line | Place::Jets | Place::Surge => "sheet".to_owned(),
     }
 }
 

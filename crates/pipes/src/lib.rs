@@ -10,6 +10,7 @@
 //! data files are part of the program.
 
 mod catalogue;
+mod cold;
 mod derating;
 mod material;
 mod own;
@@ -22,6 +23,7 @@ mod steel_data;
 mod table;
 
 pub use catalogue::{Catalogue, Series, catalogue};
+pub use cold::SOURCE as COLD_SOURCE;
 pub use derating::{Derating, DeratingPoint};
 pub use material::{Material, Properties};
 pub use own::{OwnPipe, OwnPipeError, OwnRating, plate_steel};

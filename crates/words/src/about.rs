@@ -149,7 +149,10 @@ impl About<'_> {
             | Field::StationStaffBack(id)
             | Field::StationStaffFore(id)
             | Field::StationTurn(id) => self.station(id),
-            Field::StretchCover(id) => self.stretch(id),
+            Field::StretchCover(id) | Field::SurgeAllowed(id) => self.stretch(id),
+            Field::ValveStroke(row) | Field::ValveOpen(row) => {
+                text::place_valve_row(self.words, &self.words.count(row + 1))
+            }
             Field::FittingCount(id)
             | Field::FittingAngle(id)
             | Field::FittingRadius(id)
@@ -178,6 +181,7 @@ impl About<'_> {
             Place::OwnPipe(id) => self.own_pipe(*id),
             Place::Pipe(id) => text::place_pipe(self.words, &self.pipe(id)),
             Place::Line => self.words.say(Key::PLACE_LINE).to_owned(),
+            Place::Surge => self.words.say(Key::PLACE_SURGE).to_owned(),
             Place::Jets => self.words.say(Key::PLACE_JETS).to_owned(),
         }
     }

@@ -1,7 +1,9 @@
 //! Cautions and assumptions in words.
 
 use crate::about::About;
+use crate::name::lower;
 use crate::text::{self, Key};
+use hydraulics::quantity::PipeLength;
 use workbook::book::{Approach, RoughnessAge};
 use workbook::caution::Caution;
 use workbook::measure::Measure;
@@ -43,6 +45,44 @@ impl About<'_> {
         };
         match caution {
             Caution::SurgeUnsolved => plain(Key::CAUTION_SURGE, Key::CAUTION_SURGE_BODY),
+            Caution::ColumnParts { event, at } => (
+                Key::CAUTION_COLUMN,
+                text::caution_column_body(words, &lower(words.name(*event)), &words.figure(*at)),
+                None,
+            ),
+            Caution::Slam {
+                highest,
+                beyond,
+                parts,
+            } => (
+                Key::CAUTION_SLAM,
+                text::caution_slam_body(words, &words.figure(*highest)),
+                self.beyond(beyond, *parts),
+            ),
+            Caution::JetBlocked {
+                highest,
+                beyond,
+                parts,
+            } => (
+                Key::CAUTION_BLOCKED,
+                text::caution_blocked_body(words, &words.figure(*highest)),
+                self.beyond(beyond, *parts),
+            ),
+            Caution::ClosingTimeBuiltIn { closing } => (
+                Key::CAUTION_CLOSING,
+                text::caution_closing_body(words, &words.figure(*closing)),
+                None,
+            ),
+            Caution::PlasticsTire { stretches } => (
+                Key::CAUTION_PLASTICS,
+                text::caution_plastics_body(words, &self.stretches(stretches)),
+                None,
+            ),
+            Caution::EntrappedAir { drawn } => (
+                Key::CAUTION_ENTRAPPED_AIR,
+                words.say(Key::CAUTION_ENTRAPPED_AIR_BODY).to_owned(),
+                drawn.then(|| words.say(Key::CAUTION_ENTRAPPED_AIR_DRAWN).to_owned()),
+            ),
             Caution::TemperatureAndSun { bare } => (
                 Key::CAUTION_TEMPERATURE,
                 words.say(Key::CAUTION_TEMPERATURE_BODY).to_owned(),
@@ -148,6 +188,19 @@ impl About<'_> {
         }
     }
 
+    /// What an event that does not count takes beyond its limits.
+    fn beyond(self, beyond: &[u32], parts: Option<PipeLength>) -> Option<String> {
+        let words = self.words;
+        let mut said = Vec::new();
+        if !beyond.is_empty() {
+            said.push(text::caution_beyond(words, &self.stretches(beyond)));
+        }
+        if let Some(at) = parts {
+            said.push(text::caution_beyond_parts(words, &words.figure(at)));
+        }
+        (!said.is_empty()).then(|| said.join(" "))
+    }
+
     /// Something taken for granted, in one sentence.
     #[must_use]
     pub fn assumption(self, assumption: &Assumption) -> String {
@@ -186,6 +239,24 @@ impl About<'_> {
             Assumption::IntakeApproach(Approach::Symmetrical) => {
                 words.say(Key::ASSUMPTION_APPROACH_SYMMETRICAL).to_owned()
             }
+            Assumption::StraightArea => words.say(Key::ASSUMPTION_STRAIGHT_AREA).to_owned(),
+            Assumption::EntrainedAir(share) => {
+                text::assumption_entrained_air(words, &words.figure(Measure::share(*share)))
+            }
+            Assumption::ColdWall { wall, stiffening } => text::assumption_cold_wall(
+                words,
+                &words.figure(*wall),
+                &words.figure(Measure::number(*stiffening)),
+                &words.source(pipes::COLD_SOURCE),
+            ),
+            Assumption::OpeningAsClosing => {
+                words.say(Key::ASSUMPTION_OPENING_AS_CLOSING).to_owned()
+            }
+            Assumption::SurgeAllowance(stretch, pressure) => text::assumption_surge_allowance(
+                words,
+                &words.figure(*pressure),
+                &self.stretch(*stretch),
+            ),
             Assumption::WarmestWaterUnknown => words.say(Key::ASSUMPTION_WARMEST_WATER).to_owned(),
             _ => words.say(Key::ASSUMPTION_OTHER).to_owned(),
         }

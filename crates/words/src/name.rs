@@ -4,10 +4,12 @@ use crate::Words;
 use crate::text::Key;
 use pipes::Material;
 use workbook::book::{
-    Approach, BendKind, BoreSizing, DistanceKind, FittingKind, Laying, LayingOrder, NozzleKind,
-    OwnMaterial, OwnRating, Paper, PrintParts, Reckoning, RoughnessAge, SurveyWay,
+    Approach, BendKind, BoreSizing, ClosingSpeeds, DistanceKind, FittingKind, Laying, LayingOrder,
+    MachineKind, NozzleKind, OpenArea, OwnMaterial, OwnRating, Paper, PipeHeld, PrintParts,
+    Reckoning, RoughnessAge, SurveyWay,
 };
 use workbook::caution::Sheet;
+use workbook::transient::EventKind;
 use workbook::units::{Kind, UnitSystem};
 
 /// A thing with a name of its own.
@@ -115,6 +117,32 @@ named! {
     NozzleKind {
         Fixed => OPTION_NOZZLE_FIXED,
         Needle => OPTION_NOZZLE_NEEDLE,
+    }
+    MachineKind {
+        Impulse => OPTION_MACHINE_IMPULSE,
+        FlowWithSpeed => OPTION_MACHINE_FLOW_WITH_SPEED,
+    }
+    EventKind {
+        Closing => EVENT_CLOSING,
+        Blocked => EVENT_BLOCKED,
+        Opening => EVENT_OPENING,
+        LoadLost => EVENT_LOAD_LOST,
+        Slam => EVENT_SLAM,
+    }
+    ClosingSpeeds {
+        One => OPTION_CLOSING_ONE,
+        Two => OPTION_CLOSING_TWO,
+    }
+    OpenArea {
+        AsNozzle => OPTION_AREA_AS_NOZZLE,
+        Straight => OPTION_AREA_STRAIGHT,
+        Needle => OPTION_AREA_NEEDLE,
+        Table => OPTION_AREA_TABLE,
+    }
+    PipeHeld {
+        Throughout => OPTION_HELD_THROUGHOUT,
+        UpperEnd => OPTION_HELD_UPPER_END,
+        ExpansionJoints => OPTION_HELD_JOINTS,
     }
     RoughnessAge {
         Aged => SETTING_ROUGHNESS_AGED,

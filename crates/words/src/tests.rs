@@ -3,7 +3,9 @@
 use crate::{About, Language, Words, capital};
 use hydraulics::quantity::{AbsolutePressure, GaugePressure, Head, Level};
 use samples::*;
+use uom::si::f64::Time;
 use uom::si::f64::{Pressure, Velocity};
+use uom::si::time::second;
 use uom::si::velocity::meter_per_second;
 use workbook::book::{
     Approach, Book, FittingEntry, FittingKind, OwnPipeEntry, Price, RoughnessAge,
@@ -18,6 +20,7 @@ use workbook::measure::Measure;
 use workbook::relief::Collects;
 use workbook::resolve::Assumption;
 use workbook::resolve::bends::Made;
+use workbook::transient::EventKind;
 use workbook::units::{Kind, UnitSystem};
 use workbook::verdict::{Check, CheckKind, StretchVerdict, Verdict, Weakest};
 
@@ -137,6 +140,7 @@ fn every_trouble_and_lack_says_what_and_what_to_do() {
         Place::Pipe("nothing".to_owned()),
         Place::Line,
         Place::Jets,
+        Place::Surge,
     ] {
         said(&book, &format!("{place:?}"), |w| w.place(&place));
     }
@@ -241,10 +245,11 @@ fn the_demo_verdict_reads_as_a_sentence() {
             .unwrap();
         let word = capital(words.words.verdict(verdict.verdict));
         assert!(text.starts_with(&format!("{word} in {pipe}, ")), "{text}");
-        assert!(text.contains("bar standing of"), "{text}");
-        if verdict.verdict == Verdict::Unsettled {
-            assert!(text.contains("surge is not solved yet"), "{text}");
-        }
+        let figures = match verdict.verdict {
+            Verdict::Unsettled => "bar standing of",
+            _ => "bar with surge of",
+        };
+        assert!(text.contains(figures), "{text}");
     }
 }
 
@@ -254,6 +259,31 @@ fn every_caution_and_assumption_speaks() {
     let velocity = Velocity::new::<meter_per_second>(3.4);
     let all = [
         Caution::SurgeUnsolved,
+        Caution::ColumnParts {
+            event: EventKind::Blocked,
+            at: at(54.0),
+        },
+        Caution::Slam {
+            highest: GaugePressure::from_pa(16.2e5),
+            beyond: vec![1, 2],
+            parts: Some(at(160.0)),
+        },
+        Caution::Slam {
+            highest: GaugePressure::from_pa(8.2e5),
+            beyond: vec![],
+            parts: None,
+        },
+        Caution::JetBlocked {
+            highest: GaugePressure::from_pa(12e5),
+            beyond: vec![2],
+            parts: None,
+        },
+        Caution::ClosingTimeBuiltIn {
+            closing: Time::new::<second>(15.0),
+        },
+        Caution::PlasticsTire { stretches: vec![1] },
+        Caution::EntrappedAir { drawn: true },
+        Caution::EntrappedAir { drawn: false },
         Caution::TemperatureAndSun { bare: vec![] },
         Caution::TemperatureAndSun { bare: vec![1, 2] },
         Caution::SubAtmospheric {
@@ -313,7 +343,7 @@ fn every_caution_and_assumption_speaks() {
         );
     }
     titles.dedup();
-    assert_eq!(titles.len(), 19, "one title for each caution: {titles:?}");
+    assert_eq!(titles.len(), 25, "one title for each caution: {titles:?}");
     let preset = Field::ColdestWater.preset().unwrap();
     for assumption in [
         Assumption::ForebayAtFirstStation(Level::from_m(10.0)),
@@ -327,6 +357,14 @@ fn every_caution_and_assumption_speaks() {
         Assumption::NoEntrance,
         Assumption::WarmestWaterUnknown,
         Assumption::BendsRatedAsPipe,
+        Assumption::StraightArea,
+        Assumption::EntrainedAir(0.001),
+        Assumption::OpeningAsClosing,
+        Assumption::ColdWall {
+            wall: celsius(2.0),
+            stiffening: 1.57,
+        },
+        Assumption::SurgeAllowance(2, GaugePressure::from_pa(12e5)),
         Assumption::IntakeApproach(Approach::Lateral),
         Assumption::IntakeApproach(Approach::Symmetrical),
     ] {

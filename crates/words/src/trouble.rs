@@ -30,6 +30,15 @@ impl About<'_> {
             Lack::Entry(field) => text::lack_entry(words, &self.field(*field)),
             Lack::Pipe(stretch) => text::lack_pipe(words, &self.stretch(*stretch)),
             Lack::Surge => words.say(Key::LACK_SURGE).to_owned(),
+            Lack::Machine => words.say(Key::LACK_MACHINE).to_owned(),
+            Lack::ValveTable => words.say(Key::LACK_VALVE_TABLE).to_owned(),
+            Lack::NotConverged { moved } => {
+                text::lack_converged(words, &words.figure(Measure::share(*moved)))
+            }
+            Lack::NotBalanced { left } => {
+                text::lack_balanced(words, &words.figure(Measure::share(*left)))
+            }
+            Lack::ColumnParts { at } => text::lack_separation(words, &words.figure(*at)),
             Lack::Rating(fitting) => text::lack_rating(words, &self.fitting(*fitting)),
             Lack::Source(stretch) => text::lack_source(words, &self.stretch(*stretch)),
             _ => words.say(Key::LACK_MORE).to_owned(),
@@ -127,6 +136,8 @@ impl About<'_> {
                 &self.stretch(*stretch),
                 words.say(Key::WHY_WAVE_SPEED),
             ),
+            Trouble::ValveRow { row } => text::trouble_valve_row(words, &words.count(row + 1)),
+            Trouble::Transient(why) => words.transient_error(why),
             Trouble::Surge { stretch, why } => {
                 text::trouble_surge(words, &self.stretch(*stretch), words.surge_error(why))
             }

@@ -7,6 +7,7 @@ use hydraulics::fittings::FittingError;
 use hydraulics::line::LineError;
 use hydraulics::nozzle::NozzleError;
 use hydraulics::surge::SurgeError;
+use hydraulics::transient::TransientError;
 use hydraulics::water::WaterError;
 use pipes::RatingError;
 use statics::{Input, WallError};
@@ -161,6 +162,26 @@ impl Words {
             _ => Key::WHY_OTHER,
         };
         self.say(key).to_owned()
+    }
+
+    pub(crate) fn transient_error(self, why: &TransientError) -> String {
+        match why {
+            TransientError::Line(why) => text::trouble_transient(self, &self.line_error(why)),
+            TransientError::StartsBelowVapour { chainage, .. } => {
+                text::trouble_transient_starts(self, &self.figure(*chainage))
+            }
+            TransientError::GridTooFine { .. } | TransientError::GridTooCoarse { .. } => {
+                self.say(Key::TROUBLE_TRANSIENT_GRID).to_owned()
+            }
+            TransientError::TooLong { .. } => self.say(Key::TROUBLE_TRANSIENT_LONG).to_owned(),
+            TransientError::NotFinite { chainage, .. } => {
+                text::trouble_transient_run(self, &self.figure(*chainage))
+            }
+            TransientError::WaveSpeed { .. } => {
+                text::trouble_transient(self, self.say(Key::WHY_WAVE_SPEED))
+            }
+            _ => text::trouble_transient(self, &sentence(self.say(Key::WHY_OTHER))),
+        }
     }
 
     pub(crate) fn surge_error(self, why: &SurgeError) -> &'static str {

@@ -64,6 +64,9 @@ pub struct Book {
     /// Prices from the user's own list.
     #[serde(default)]
     pub prices: Prices,
+    /// How the jets are shut and opened, and what else moves the water.
+    #[serde(default, skip_serializing_if = "is_usual")]
+    pub surge: SurgeEntries,
     /// Limits and margins that are the user's to change.
     #[serde(default)]
     pub limits: Limits,
@@ -324,6 +327,10 @@ pub struct StretchEntry {
     /// Cover over a buried pipe, m.
     #[serde(default, skip_serializing_if = "Entry::is_untouched")]
     pub cover_m: Entry,
+    /// Pressure this stretch may see in a surge, by a maker's word or a
+    /// standard's (PMA): stands in for the lasting one where entered, Pa.
+    #[serde(default, skip_serializing_if = "Entry::is_untouched")]
+    pub surge_allowed_pa: Entry,
 }
 
 /// A kind of fitting, valve or other local loss.
@@ -606,6 +613,143 @@ pub struct Jets {
     pub rating_pa: Entry,
 }
 
+/// At how many speeds the jets are shut.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum ClosingSpeeds {
+    /// One, from full stroke to shut.
+    #[default]
+    One,
+    /// A fast one down to the knee, a slow one from there.
+    Two,
+}
+
+/// How the open area of a jet follows the stroke of what shuts it.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum OpenArea {
+    /// As the kind of nozzle says: a needle by its geometry, the valve before
+    /// a plain nozzle in a straight line.
+    #[default]
+    AsNozzle,
+    /// In a straight line.
+    Straight,
+    /// A needle, by its geometry.
+    Needle,
+    /// By a table of the valve's own.
+    Table,
+}
+
+/// How the pipe is held along its axis: decides its wave speed.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum PipeHeld {
+    /// Against all movement: buried, or anchored throughout. The fastest wave.
+    #[default]
+    Throughout,
+    /// At its upper end only.
+    UpperEnd,
+    /// By expansion joints throughout: no stress along the axis.
+    ExpansionJoints,
+}
+
+/// What the water drives.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(rename_all = "snake_case")]
+pub enum MachineKind {
+    /// An impulse wheel: its speed does not reach back to the jets.
+    #[default]
+    Impulse,
+    /// One whose flow changes with its speed: a reaction turbine, or a pump
+    /// run as turbine.
+    FlowWithSpeed,
+}
+
+/// A row of a valve's own table.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct ValveRow {
+    /// Stroke, as a share of full.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub stroke_share: Entry,
+    /// Flow the valve lets through at one head, as a share of that at full
+    /// stroke.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub open_share: Entry,
+}
+
+/// How the jets are shut and opened, and what else moves the water.
+#[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
+#[serde(deny_unknown_fields, default)]
+pub struct SurgeEntries {
+    /// What the water drives.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub machine: MachineKind,
+    /// One speed or two.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub speeds: ClosingSpeeds,
+    /// Time from full stroke to shut at one speed, s.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub closing_time_s: Entry,
+    /// Of two speeds: time of a full stroke at the fast one, s.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub fast_time_s: Entry,
+    /// Of two speeds: time of a full stroke at the slow one, s.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub slow_time_s: Entry,
+    /// Of two speeds: the stroke at which the slow one begins, as a share of
+    /// full.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub knee_share: Entry,
+    /// How the open area follows the stroke.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub area: OpenArea,
+    /// Half angle at the needle's tip, degree.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub needle_half_angle_deg: Entry,
+    /// Travel of the needle from shut to full stroke, m. Where none is
+    /// entered, as far as its orifice is not yet wholly open.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub needle_travel_m: Entry,
+    /// The valve's own table, strokes rising; shut and fully open need no row.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub valve: Vec<ValveRow>,
+    /// Time from shut to full stroke, s. Where none is entered, that of
+    /// closing.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub opening_time_s: Entry,
+    /// Whether the guard valve can be slammed, so that the line must bear it.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub guard_may_slam: bool,
+    /// Time in which a slammed guard valve shuts, s.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub slam_time_s: Entry,
+    /// Whether nothing that could block a jet gets past the rack: a blocked jet
+    /// is then shown, and no verdict rests on it.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub jets_kept_clear: bool,
+    /// Whether deflectors throw the jets off the wheel: load lost then moves
+    /// no flow.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub deflectors: bool,
+    /// How the pipe is held.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub held: PipeHeld,
+    /// Whether unsteady friction is reckoned with.
+    #[serde(skip_serializing_if = "is_usual")]
+    pub unsteady_friction: bool,
+    /// Share of the volume that is air carried as bubbles, at standing
+    /// pressure: slows the wave, and is not the careful choice.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub air_share: Entry,
+    /// Slowest closing time looked at in a search for the shortest safe one, s.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub slowest_closing_s: Entry,
+    /// What is ordered above the shortest safe closing time, as a share of it.
+    #[serde(skip_serializing_if = "Entry::is_untouched")]
+    pub closing_reserve_share: Entry,
+}
+
 /// Prices, from the user's own list.
 #[derive(Debug, Clone, PartialEq, Default, Serialize, Deserialize, JsonSchema)]
 #[serde(deny_unknown_fields, default)]
@@ -747,6 +891,7 @@ impl Book {
             own_pipes: Vec::new(),
             jets: Jets::default(),
             prices: Prices::default(),
+            surge: SurgeEntries::default(),
             limits: Limits::default(),
             print: PrintSetup::default(),
         };

@@ -2,7 +2,9 @@
 //! every print.
 
 use crate::book::Id;
-use hydraulics::quantity::{Head, PipeLength, Velocity};
+use crate::transient::EventKind;
+use hydraulics::quantity::{GaugePressure, Head, PipeLength, Velocity};
+use uom::si::f64::Time;
 
 /// A view of the book.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
@@ -33,6 +35,46 @@ pub enum Sheet {
 pub enum Caution {
     /// Surge is not solved: no pipe here is shown to hold.
     SurgeUnsolved,
+    /// The water column parts in an event that counts.
+    ColumnParts {
+        /// The event.
+        event: EventKind,
+        /// Where.
+        at: PipeLength,
+    },
+    /// What a slammed guard valve would do, where none may be slammed.
+    Slam {
+        /// The highest pressure.
+        highest: GaugePressure,
+        /// Stretches it takes beyond what they bear.
+        beyond: Vec<Id>,
+        /// Where the column parts, if it does.
+        parts: Option<PipeLength>,
+    },
+    /// What a jet blocked at once would do, where the rack is to prevent it.
+    JetBlocked {
+        /// The highest pressure.
+        highest: GaugePressure,
+        /// Stretches it takes beyond what they bear.
+        beyond: Vec<Id>,
+        /// Where the column parts, if it does.
+        parts: Option<PipeLength>,
+    },
+    /// The closing time must be built into the drive, not left to a hand.
+    ClosingTimeBuiltIn {
+        /// Time from full stroke to shut.
+        closing: Time,
+    },
+    /// Plastics tire under surge that comes again and again.
+    PlasticsTire {
+        /// Stretches of plastic pipe.
+        stretches: Vec<Id>,
+    },
+    /// Air shut in the pipe makes pressures that no solution here knows.
+    EntrappedAir {
+        /// Whether a jet draws air in an event that counts.
+        drawn: bool,
+    },
     /// Ratings fall with temperature; sun on bare pipe.
     TemperatureAndSun {
         /// Stretches that lie bare.
@@ -118,9 +160,16 @@ impl Caution {
     #[must_use]
     pub fn sheets(&self) -> &'static [Sheet] {
         match self {
-            Caution::SurgeUnsolved | Caution::TemperatureAndSun { .. } => {
-                &[Sheet::Pipe, Sheet::Print]
+            Caution::SurgeUnsolved => &[Sheet::Pipe, Sheet::Surge, Sheet::Print],
+            Caution::TemperatureAndSun { .. } => &[Sheet::Pipe, Sheet::Print],
+            Caution::ColumnParts { .. }
+            | Caution::Slam { .. }
+            | Caution::JetBlocked { .. }
+            | Caution::ClosingTimeBuiltIn { .. } => {
+                &[Sheet::Pipe, Sheet::Jets, Sheet::Surge, Sheet::Print]
             }
+            Caution::PlasticsTire { .. } => &[Sheet::Pipe, Sheet::Surge, Sheet::Print],
+            Caution::EntrappedAir { .. } => &[Sheet::Line, Sheet::Surge, Sheet::Print],
             Caution::SubAtmospheric { .. }
             | Caution::CollapseAndVents { .. }
             | Caution::AirCollects { .. }
@@ -142,6 +191,7 @@ impl Caution {
                 Sheet::Line,
                 Sheet::Pipe,
                 Sheet::Jets,
+                Sheet::Surge,
                 Sheet::Print,
             ],
         }
@@ -153,6 +203,8 @@ impl Caution {
     pub fn is_pressing(&self) -> bool {
         match self {
             Caution::SurgeUnsolved
+            | Caution::ColumnParts { .. }
+            | Caution::ClosingTimeBuiltIn { .. }
             | Caution::SubAtmospheric { .. }
             | Caution::SourceNotSeen { .. }
             | Caution::RegimeUncertain
@@ -163,6 +215,11 @@ impl Caution {
             | Caution::Submergence { .. }
             | Caution::SightsDiffer { .. }
             | Caution::Invented => true,
+            Caution::Slam { beyond, parts, .. } | Caution::JetBlocked { beyond, parts, .. } => {
+                !beyond.is_empty() || parts.is_some()
+            }
+            Caution::EntrappedAir { drawn } => *drawn,
+            Caution::PlasticsTire { .. } => false,
             Caution::TemperatureAndSun { bare } => !bare.is_empty(),
             Caution::CollapseAndVents { weak } => !weak.is_empty(),
             Caution::VelocityAndSilt { fast } => fast.is_some(),

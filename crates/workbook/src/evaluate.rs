@@ -92,6 +92,7 @@ impl Findings {
             .assumptions
             .iter()
             .chain(&self.steady.assumptions)
+            .chain(&self.transient.assumptions)
             .chain(&self.intake.assumptions)
     }
 
@@ -115,6 +116,7 @@ impl Findings {
         for (_, quick) in &self.transient.quick {
             add(quick.as_ref().err());
         }
+        add(self.transient.surge.as_ref().err());
         for wall in &self.walls.stretches {
             add(wall.allowable.as_ref().err());
             add(wall.collapse.as_ref().err());

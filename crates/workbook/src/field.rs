@@ -95,6 +95,34 @@ pub enum Field {
     JetRating,
     /// Price of the pipe at this place in the list.
     Price(usize),
+    /// Pressure a stretch may see in a surge.
+    SurgeAllowed(Id),
+    /// Time from full stroke to shut.
+    ClosingTime,
+    /// Full stroke at the fast one of two speeds.
+    FastTime,
+    /// Full stroke at the slow one of two speeds.
+    SlowTime,
+    /// Stroke at which the slow speed begins.
+    Knee,
+    /// Half angle at the needle's tip.
+    NeedleAngle,
+    /// Travel of the needle.
+    NeedleTravel,
+    /// Stroke of the valve's table at this row.
+    ValveStroke(usize),
+    /// Open share of the valve's table at this row.
+    ValveOpen(usize),
+    /// Time from shut to full stroke.
+    OpeningTime,
+    /// Time in which a slammed guard valve shuts.
+    SlamTime,
+    /// Share of air carried as bubbles.
+    EntrainedAir,
+    /// Slowest closing time looked at.
+    SlowestClosing,
+    /// Reserve on the closing time ordered.
+    ClosingReserve,
     /// Share under which a margin is tight.
     TightMargin,
     /// Most share of head to lose.
@@ -226,8 +254,20 @@ impl Field {
             | Field::LossCap
             | Field::Spare
             | Field::AirSlopeChange => Kind::Share,
-            Field::FittingRating(_) | Field::JetRating => Kind::Pressure,
-            Field::JetBore | Field::BranchBore => Kind::Bore,
+            Field::FittingRating(_) | Field::JetRating | Field::SurgeAllowed(_) => Kind::Pressure,
+            Field::JetBore | Field::BranchBore | Field::NeedleTravel => Kind::Bore,
+            Field::ClosingTime
+            | Field::FastTime
+            | Field::SlowTime
+            | Field::OpeningTime
+            | Field::SlamTime
+            | Field::SlowestClosing => Kind::Time,
+            Field::NeedleAngle => Kind::Angle,
+            Field::Knee
+            | Field::ValveStroke(_)
+            | Field::ValveOpen(_)
+            | Field::EntrainedAir
+            | Field::ClosingReserve => Kind::Share,
             Field::Price(_) => Kind::PricePerLength,
             Field::VelocityHigh => Kind::Velocity,
             Field::Own(_, own) => own.kind(),
@@ -271,7 +311,20 @@ impl Field {
             Field::RackGap(_) => (0.001, 1.0),
             Field::RackClogged(_) => (0.0, 0.9),
             Field::FittingK(_) | Field::BranchK => (0.0, 1000.0),
-            Field::FittingRating(_) | Field::JetRating => (1e4, 1e8),
+            Field::FittingRating(_) | Field::JetRating | Field::SurgeAllowed(_) => (1e4, 1e8),
+            // 0 is at once. Above ten minutes nothing is shut by a drive.
+            Field::ClosingTime | Field::FastTime | Field::SlowTime | Field::OpeningTime => {
+                (0.0, 600.0)
+            }
+            Field::SlamTime => (0.0, 60.0),
+            Field::SlowestClosing => (1.0, 600.0),
+            Field::Knee => (0.02, 0.95),
+            Field::NeedleAngle => (5.0, 80.0),
+            Field::NeedleTravel => (0.001, 1.0),
+            Field::ValveStroke(_) | Field::ValveOpen(_) => (0.0, 1.0),
+            // The range of the wave speed's equation, hydraulics::surge.
+            Field::EntrainedAir => (0.0, 0.02),
+            Field::ClosingReserve => (0.0, 5.0),
             Field::JetCount => (1.0, 6.0),
             Field::JetBore => (0.001, 1.0),
             Field::JetVelocityCoefficient => (0.8, 1.0),
@@ -331,6 +384,13 @@ impl Field {
             // Half clogged is how a rack is found after a storm.
             Field::RackClogged(_) => common(0.5),
             Field::VelocityHigh => common(3.0),
+            // At once: the worst there is.
+            Field::SlamTime => common(0.0),
+            // What a hand wheel or a geared drive still takes.
+            Field::SlowestClosing => common(60.0),
+            Field::ClosingReserve | Field::Knee => common(0.25),
+            // A point of 50 degrees.
+            Field::NeedleAngle => common(25.0),
             Field::CollapseSafety => common(2.0),
             Field::Spare => common(0.05),
             Field::ColdestWater => common(5.0),
@@ -490,6 +550,23 @@ macro_rules! find_entry {
             Field::BranchBore => Some($($borrow)+ $book.jets.branch_bore_m),
             Field::JetRating => Some($($borrow)+ $book.jets.rating_pa),
             Field::Price(i) => $book.prices.pipes.$get(i).map(|p| $($borrow)+ p.price_per_m),
+            Field::SurgeAllowed(id) => {
+                $book.line.stretches.$iter().find(|s| s.id == id)
+                    .map(|s| $($borrow)+ s.surge_allowed_pa)
+            }
+            Field::ClosingTime => Some($($borrow)+ $book.surge.closing_time_s),
+            Field::FastTime => Some($($borrow)+ $book.surge.fast_time_s),
+            Field::SlowTime => Some($($borrow)+ $book.surge.slow_time_s),
+            Field::Knee => Some($($borrow)+ $book.surge.knee_share),
+            Field::NeedleAngle => Some($($borrow)+ $book.surge.needle_half_angle_deg),
+            Field::NeedleTravel => Some($($borrow)+ $book.surge.needle_travel_m),
+            Field::ValveStroke(i) => $book.surge.valve.$get(i).map(|r| $($borrow)+ r.stroke_share),
+            Field::ValveOpen(i) => $book.surge.valve.$get(i).map(|r| $($borrow)+ r.open_share),
+            Field::OpeningTime => Some($($borrow)+ $book.surge.opening_time_s),
+            Field::SlamTime => Some($($borrow)+ $book.surge.slam_time_s),
+            Field::EntrainedAir => Some($($borrow)+ $book.surge.air_share),
+            Field::SlowestClosing => Some($($borrow)+ $book.surge.slowest_closing_s),
+            Field::ClosingReserve => Some($($borrow)+ $book.surge.closing_reserve_share),
             Field::TightMargin => Some($($borrow)+ $book.limits.tight_margin_share),
             Field::LossCap => Some($($borrow)+ $book.limits.loss_cap_share),
             Field::VelocityHigh => Some($($borrow)+ $book.limits.velocity_high_m_s),
@@ -556,7 +633,7 @@ impl Book {
             self.line
                 .stretches
                 .iter()
-                .map(|s| Field::StretchCover(s.id)),
+                .flat_map(|s| [Field::StretchCover(s.id), Field::SurgeAllowed(s.id)]),
         );
         for f in &self.line.fittings {
             all.push(Field::FittingCount(f.id));
@@ -574,6 +651,24 @@ impl Book {
             Field::BranchK,
             Field::BranchBore,
             Field::JetRating,
+        ]);
+        all.extend([
+            Field::ClosingTime,
+            Field::FastTime,
+            Field::SlowTime,
+            Field::Knee,
+            Field::NeedleAngle,
+            Field::NeedleTravel,
+        ]);
+        all.extend(
+            (0..self.surge.valve.len()).flat_map(|i| [Field::ValveStroke(i), Field::ValveOpen(i)]),
+        );
+        all.extend([
+            Field::OpeningTime,
+            Field::SlamTime,
+            Field::EntrainedAir,
+            Field::SlowestClosing,
+            Field::ClosingReserve,
         ]);
         all.extend((0..self.prices.pipes.len()).map(Field::Price));
         all.extend([
@@ -672,6 +767,7 @@ mod tests {
             pipe: "own/1".into(),
             ..Default::default()
         });
+        book.surge.valve = vec![Default::default(); 2];
         book
     }
 

@@ -9,8 +9,9 @@ use hydraulics::fittings::FittingError;
 use hydraulics::intake::IntakeError;
 use hydraulics::line::LineError;
 use hydraulics::nozzle::NozzleError;
-use hydraulics::quantity::Level;
+use hydraulics::quantity::{Level, PipeLength};
 use hydraulics::surge::{SurgeError, WaveError};
+use hydraulics::transient::TransientError;
 use hydraulics::water::WaterError;
 
 /// A figure, or why there is none.
@@ -36,6 +37,25 @@ pub enum Lack {
     /// The whole transient has not been solved: a quick formula's figure
     /// settles nothing.
     Surge,
+    /// The machine's flow changes with its speed, which is not modelled.
+    Machine,
+    /// The valve closes by a table that has no row.
+    ValveTable,
+    /// Halving the step of the transient moves its peak too far.
+    NotConverged {
+        /// How far, as a share of the rise.
+        moved: f64,
+    },
+    /// The balances of volume and energy of the transient do not close.
+    NotBalanced {
+        /// What they leave over, as a share.
+        left: f64,
+    },
+    /// The water column parts: what follows cannot be trusted.
+    ColumnParts {
+        /// Where the largest cavity stood.
+        at: PipeLength,
+    },
     /// A fitting has no rating entered.
     Rating(Id),
     /// The limit rests on a value whose source was not seen.
@@ -175,6 +195,14 @@ pub enum Trouble {
         /// Why.
         why: WaveError,
     },
+    /// A row of the valve's table does not follow from the one before, or the
+    /// row of full stroke is not fully open.
+    ValveRow {
+        /// Its index.
+        row: usize,
+    },
+    /// The transient cannot be computed.
+    Transient(TransientError),
     /// The quick surge figure cannot be had.
     Surge {
         /// The stretch.
@@ -203,6 +231,8 @@ pub enum Place {
     Line,
     /// The nozzles.
     Jets,
+    /// How the jets are shut.
+    Surge,
 }
 
 impl Gap {
@@ -226,6 +256,8 @@ impl Trouble {
             | Trouble::StationRepeated { station }
             | Trouble::StationUpright { station }
             | Trouble::Bend { station, .. } => Place::Station(*station),
+            Trouble::ValveRow { row } => Place::Field(Field::ValveStroke(*row)),
+            Trouble::Transient(_) => Place::Surge,
             Trouble::NothingToSpread => Place::Field(Field::KnownFall),
             Trouble::StretchStart { stretch }
             | Trouble::PipeUnknown { stretch, .. }
@@ -257,7 +289,13 @@ impl Lack {
             Lack::Entry(field) => Some(Place::Field(*field)),
             Lack::Pipe(stretch) => Some(Place::Stretch(*stretch)),
             Lack::Rating(fitting) => Some(Place::Field(Field::FittingRating(*fitting))),
-            Lack::Surge | Lack::Source(_) => None,
+            Lack::ValveTable => Some(Place::Surge),
+            Lack::Surge
+            | Lack::Machine
+            | Lack::NotConverged { .. }
+            | Lack::NotBalanced { .. }
+            | Lack::ColumnParts { .. }
+            | Lack::Source(_) => None,
         }
     }
 }

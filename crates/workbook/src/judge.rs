@@ -15,11 +15,12 @@ use crate::operation::Operation;
 use crate::relief::Relief;
 use crate::resolve::Resolved;
 use crate::steady::Steady;
-use crate::transient::Transient;
+use crate::transient::{EventKind, EventPeak, Transient};
 use crate::verdict::{Check, CheckKind, StretchVerdict, Verdict};
-use crate::walls::{StretchWalls, Walls};
+use crate::walls::{Bearing, PressureAt, StretchWalls, Walls};
 use hydraulics::line::{LineCaution, LineError};
 use hydraulics::quantity::Head;
+use pipes::Material;
 use uom::si::f64::Pressure;
 
 /// A flow above this share of the flow of greatest power draws a caution.
@@ -99,8 +100,8 @@ pub fn verdicts(
             let checks = vec![
                 passes_flow(found, steady),
                 standing(wall, &margin),
-                surge(transient),
-                lowest(wall),
+                surge(transient, wall, &margin),
+                lowest(transient, wall),
                 collapse(wall, found, &margin),
             ];
             StretchVerdict::of(wall.stretch, checks)
@@ -130,75 +131,138 @@ fn passes_flow(found: &Resolved, steady: &Steady) -> Check {
 
 fn standing(wall: &StretchWalls, margin: &Figure<f64>) -> Check {
     const KIND: CheckKind = CheckKind::StandingPressure;
-    let attempt = || -> Figure<Check> {
-        let standing = wall.standing.clone()?;
-        let margin = margin.clone()?;
-        let found = Measure::from(standing.pressure);
-        let check = match (&wall.bearing, &wall.at_rating) {
-            (Ok(bearing), _) => {
-                let mut check = Check::against(KIND, found, bearing.pressure.into(), margin);
-                check.weakest = Some(bearing.weakest);
-                check
-            }
-            // The temperature is missing, but no temperature would help.
-            (Err(gap), Ok(rated)) if found.value > pascals(rated.pressure) => {
-                let mut check = Check::against(KIND, found, rated.pressure.into(), margin);
-                check.gap = Some(gap.clone());
-                check
-            }
-            (Err(gap), _) => {
-                let mut check = Check::unsettled(KIND, gap.clone());
-                check.found = Some(found);
-                check
-            }
-        };
-        let seen = wall.allowable.as_ref().is_ok_and(|a| a.attested.is_seen());
-        let mut check = Check {
-            at: Some(standing.at),
-            ..check
-        };
-        if let Some(fitting) = wall.unrated.first() {
-            check = check.wanting(Lack::Rating(*fitting));
-        }
-        if wall.jets_unrated {
-            check = check.wanting(Lack::Entry(crate::field::Field::JetRating));
-        }
-        if !seen {
-            check = check.wanting(Lack::Source(wall.stretch));
-        }
-        Ok(check)
-    };
-    attempt().unwrap_or_else(|gap| Check::unsettled(KIND, gap))
+    wall.standing
+        .clone()
+        .and_then(|standing| against_bearing(KIND, standing, wall, &wall.bearing, margin))
+        .unwrap_or_else(|gap| Check::unsettled(KIND, gap))
 }
 
-fn surge(transient: &Transient) -> Check {
-    let gap = match &transient.surge {
-        Err(gap) => gap.clone(),
-        Ok(_) => Gap::Unsettled(Lack::Surge),
-    };
-    Check::unsettled(CheckKind::SurgePressure, gap)
+/// A highest pressure in a surge against what the weakest part bears: the rule
+/// of the verdicts, and of every search for a closing that keeps to it.
+///
+/// # Errors
+/// What the margin lacks.
+pub(crate) fn highest_in_surge(
+    highest: PressureAt,
+    wall: &StretchWalls,
+    margin: &Figure<f64>,
+) -> Figure<Check> {
+    const KIND: CheckKind = CheckKind::SurgePressure;
+    against_bearing(KIND, highest, wall, &wall.surge_bearing, margin)
 }
 
-fn lowest(wall: &StretchWalls) -> Check {
+/// A lowest pressure in a surge against the suction permitted: the same rule
+/// for both.
+///
+/// # Errors
+/// What the permitted suction lacks.
+pub(crate) fn lowest_in_surge(lowest: PressureAt, wall: &StretchWalls) -> Figure<Check> {
+    const KIND: CheckKind = CheckKind::LowestPressure;
+    let allowed = wall.suction_allowed.clone()?;
+    let below = -lowest.pressure.pa();
+    let mut check = if below <= 0.0 {
+        Check {
+            verdict: Verdict::Holds,
+            gap: None,
+            found: Some(lowest.pressure.into()),
+            ..Check::unsettled(KIND, Gap::Unsettled(Lack::Surge))
+        }
+    } else {
+        // Any suction is tight at best.
+        let suction = Measure::new(below, crate::units::Kind::Pressure);
+        Check::against(KIND, suction, allowed.into(), 1.0)
+    };
+    check.at = Some(lowest.at);
+    Ok(check)
+}
+
+/// A pressure against what the weakest part of a stretch bears, with what
+/// keeps that from being sure.
+fn against_bearing(
+    kind: CheckKind,
+    standing: PressureAt,
+    wall: &StretchWalls,
+    bearing: &Figure<Bearing>,
+    margin: &Figure<f64>,
+) -> Figure<Check> {
+    let margin = margin.clone()?;
+    let found = Measure::from(standing.pressure);
+    let by_user = kind == CheckKind::SurgePressure && wall.surge_by_user;
+    let check = match (bearing, &wall.at_rating) {
+        (Ok(bearing), _) => {
+            let mut check = Check::against(kind, found, bearing.pressure.into(), margin);
+            check.weakest = Some(bearing.weakest);
+            check
+        }
+        // The temperature is missing, but no temperature would help.
+        (Err(gap), Ok(rated)) if !by_user && found.value > pascals(rated.pressure) => {
+            let mut check = Check::against(kind, found, rated.pressure.into(), margin);
+            check.gap = Some(gap.clone());
+            check
+        }
+        (Err(gap), _) => {
+            let mut check = Check::unsettled(kind, gap.clone());
+            check.found = Some(found);
+            check
+        }
+    };
+    // What the user entered is the user's word.
+    let seen = by_user || wall.allowable.as_ref().is_ok_and(|a| a.attested.is_seen());
+    let mut check = Check {
+        at: Some(standing.at),
+        ..check
+    };
+    if let Some(fitting) = wall.unrated.first() {
+        check = check.wanting(Lack::Rating(*fitting));
+    }
+    if wall.jets_unrated {
+        check = check.wanting(Lack::Entry(crate::field::Field::JetRating));
+    }
+    if !seen {
+        check = check.wanting(Lack::Source(wall.stretch));
+    }
+    Ok(check)
+}
+
+fn surge(transient: &Transient, wall: &StretchWalls, margin: &Figure<f64>) -> Check {
+    const KIND: CheckKind = CheckKind::SurgePressure;
+    let check = wall
+        .surge
+        .clone()
+        .and_then(|highest| highest_in_surge(highest, wall, margin))
+        .unwrap_or_else(|gap| Check::unsettled(KIND, gap));
+    match parted(transient) {
+        Some(lack) => check.wanting(lack),
+        None => check,
+    }
+}
+
+/// What is lacking where the column parts: such a run proves nothing but that
+/// the event must not happen.
+fn parted(transient: &Transient) -> Option<Lack> {
+    let parted = transient.peaks.as_ref().ok()?.parted?;
+    Some(Lack::ColumnParts { at: parted.at })
+}
+
+fn lowest(transient: &Transient, wall: &StretchWalls) -> Check {
     const KIND: CheckKind = CheckKind::LowestPressure;
     let attempt = || -> Figure<Check> {
-        let lowest = wall.lowest.clone()?;
-        let allowed = wall.suction_allowed.clone()?;
-        let below = -lowest.pressure.pa();
-        let mut check = if below <= 0.0 {
-            Check {
-                verdict: Verdict::Holds,
-                gap: None,
-                found: Some(lowest.pressure.into()),
-                ..Check::unsettled(KIND, Gap::Unsettled(Lack::Surge))
-            }
-        } else {
-            // Any suction in running is tight at best.
-            let suction = Measure::new(below, crate::units::Kind::Pressure);
-            Check::against(KIND, suction, allowed.into(), 1.0)
+        let running = wall.lowest.clone()?;
+        let lowest = match &wall.surge_lowest {
+            Ok(surge) if surge.pressure < running.pressure => *surge,
+            _ => running,
         };
-        check.at = Some(lowest.at);
-        Ok(check)
+        let mut check = lowest_in_surge(lowest, wall)?;
+        if let Err(gap) = &transient.peaks
+            && check.verdict < Verdict::Unsettled
+        {
+            check.verdict = Verdict::Unsettled;
+            check.gap = Some(gap.clone());
+        }
+        Ok(match parted(transient) {
+            Some(lack) => check.wanting(lack),
+            None => check,
+        })
     };
     attempt().unwrap_or_else(|gap| Check::unsettled(KIND, gap))
 }
@@ -244,9 +308,7 @@ fn cautions(
     if invented {
         all.push(Caution::Invented);
     }
-    if transient.surge.is_err() {
-        all.push(Caution::SurgeUnsolved);
-    }
+    all.extend(surge_cautions(found, transient, walls));
     all.extend(suction(steady));
     all.push(Caution::CollapseAndVents {
         weak: weak_in_vacuum(walls),
@@ -296,6 +358,94 @@ fn cautions(
         Caution::LocalCodesAndReview,
     ]);
     all
+}
+
+/// Cautions of what moves.
+fn surge_cautions(found: &Resolved, transient: &Transient, walls: &Walls) -> Vec<Caution> {
+    let mut all = Vec::new();
+    let surge = match &transient.surge {
+        Ok(surge) => surge,
+        Err(_) => return vec![Caution::SurgeUnsolved],
+    };
+    if let Some(parted) = surge.peaks.parted {
+        all.push(Caution::ColumnParts {
+            event: parted.by.event,
+            at: parted.at,
+        });
+    }
+    for event in [EventKind::Slam, EventKind::Blocked] {
+        let Some(peak) = surge.event(event).filter(|e| !e.counts) else {
+            continue;
+        };
+        let beyond = beyond(peak, walls);
+        let parts = peak.parted.map(|p| p.at);
+        let highest = peak
+            .highest
+            .iter()
+            .copied()
+            .reduce(|a, b| if b.0 > a.0 { b } else { a });
+        let Some((highest, _)) = highest else {
+            continue;
+        };
+        all.push(match event {
+            EventKind::Slam => Caution::Slam {
+                highest,
+                beyond,
+                parts,
+            },
+            _ => Caution::JetBlocked {
+                highest,
+                beyond,
+                parts,
+            },
+        });
+    }
+    all.push(Caution::ClosingTimeBuiltIn {
+        closing: surge.closing,
+    });
+    let plastics: Vec<Id> = found
+        .stretches
+        .iter()
+        .filter(|s| s.pipe.as_ref().is_ok_and(|p| is_plastic(p.material)))
+        .map(|s| s.id)
+        .collect();
+    if !plastics.is_empty() {
+        all.push(Caution::PlasticsTire {
+            stretches: plastics,
+        });
+    }
+    all.push(Caution::EntrappedAir {
+        drawn: surge.peaks.draws_air,
+    });
+    all
+}
+
+/// Stretches that an event takes beyond what they bear.
+fn beyond(peak: &EventPeak, walls: &Walls) -> Vec<Id> {
+    walls
+        .stretches
+        .iter()
+        .zip(peak.highest.iter().zip(&peak.lowest))
+        .filter(|(wall, (high, low))| {
+            let over = wall
+                .surge_bearing
+                .as_ref()
+                .is_ok_and(|b| high.0 > b.pressure);
+            let under = wall
+                .suction_allowed
+                .as_ref()
+                .is_ok_and(|allowed| -low.0.get() > *allowed);
+            over || under
+        })
+        .map(|(wall, _)| wall.stretch)
+        .collect()
+}
+
+fn is_plastic(material: Material) -> bool {
+    matches!(
+        material,
+        Material::Pe100 | Material::Pe4710 | Material::PvcU | Material::PvcO | Material::Grp
+    )
 }
 
 /// Cautions of places that need something.

@@ -49,6 +49,8 @@ fn lacks(book: &Book, found: &Resolved, walls: &Walls) -> Vec<Lack> {
     for stretch in &found.stretches {
         push(&mut all, &stretch.pipe);
     }
+    push(&mut all, &found.drive.speeds);
+    push(&mut all, &found.drive.area);
     if let Ok(jets) = &found.jets
         && jets.sizing == BoreSizing::Chosen
     {
@@ -80,6 +82,7 @@ pub fn sheet(place: &Place) -> Sheet {
         Place::Station(_) | Place::Fitting(_) | Place::Line => Sheet::Line,
         Place::Stretch(_) | Place::OwnPipe(_) | Place::Pipe(_) => Sheet::Pipe,
         Place::Jets => Sheet::Jets,
+        Place::Surge => Sheet::Surge,
     }
 }
 
@@ -122,6 +125,7 @@ fn field_sheet(field: Field) -> Sheet {
         | Field::FittingRating(_) => Sheet::Line,
         Field::Own(..)
         | Field::Price(_)
+        | Field::SurgeAllowed(_)
         | Field::TightMargin
         | Field::LossCap
         | Field::VelocityHigh
@@ -134,5 +138,18 @@ fn field_sheet(field: Field) -> Sheet {
         | Field::BranchK
         | Field::BranchBore
         | Field::JetRating => Sheet::Jets,
+        Field::ClosingTime
+        | Field::FastTime
+        | Field::SlowTime
+        | Field::Knee
+        | Field::NeedleAngle
+        | Field::NeedleTravel
+        | Field::ValveStroke(_)
+        | Field::ValveOpen(_)
+        | Field::OpeningTime
+        | Field::SlamTime
+        | Field::EntrainedAir
+        | Field::SlowestClosing
+        | Field::ClosingReserve => Sheet::Surge,
     }
 }

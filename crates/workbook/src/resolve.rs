@@ -3,6 +3,7 @@
 //! stands in for those left empty; entries that cannot be used are named.
 
 pub mod bends;
+pub mod drive;
 pub mod own_pipe;
 pub mod parts;
 pub mod profile;
@@ -12,6 +13,7 @@ use crate::entry::{Entry, EntryTrouble};
 use crate::field::{Field, Preset};
 use crate::figure::{Figure, Gap, Trouble};
 use bends::Turn;
+use drive::Drive;
 use hydraulics::air::standard_pressure;
 use hydraulics::quantity::{AbsolutePressure, GaugePressure, Head, Level};
 use hydraulics::water::Water;
@@ -50,6 +52,22 @@ pub enum Assumption {
     BendsRatedAsPipe,
     /// How the water comes to the intake.
     IntakeApproach(Approach),
+    /// The open area follows the stroke in a straight line.
+    StraightArea,
+    /// Air carried as bubbles slows the wave: not the careful choice.
+    EntrainedAir(f64),
+    /// Plastics stiffen in the cold: the wave speeds stand on this wall.
+    ColdWall {
+        /// The wall's temperature.
+        wall: ThermodynamicTemperature,
+        /// The greatest factor on a modulus.
+        stiffening: f64,
+    },
+    /// The jets open in the time they close in.
+    OpeningAsClosing,
+    /// A surge allowance entered for a stretch stands in for its lasting
+    /// pressure.
+    SurgeAllowance(crate::book::Id, GaugePressure),
 }
 
 /// Levels of the forebay.
@@ -128,10 +146,15 @@ pub struct Resolved {
     pub intake_approach: Approach,
     /// Nozzles.
     pub jets: Figure<JetSpec>,
+    /// How they are shut and opened.
+    pub drive: Drive,
     /// Water as cold as it gets: the most viscous, so the most is lost.
     pub cold_water: Figure<Water>,
     /// Water as warm as it gets: boils first.
     pub warm_water: Figure<Water>,
+    /// The coldest wall, where entered: the stiffest, so that waves are
+    /// fastest.
+    pub coldest_wall: Figure<Option<ThermodynamicTemperature>>,
     /// The warmest wall, which ratings stand on.
     pub warmest_wall: Figure<ThermodynamicTemperature>,
     /// Pressure of the air at the site.
@@ -251,7 +274,11 @@ pub fn resolve(book: &Book) -> Resolved {
     let turns = bends::turns(r, &profile, &stretches);
     let air_slope_change = r.needed(Field::AirSlopeChange);
     let jets = jets(r);
+    let drive = drive::drive(r);
     let (cold_water, warm_water) = waters(r);
+    let coldest_wall = r
+        .optional(Field::ColdestWall)
+        .map(|t| t.map(ThermodynamicTemperature::new::<degree_celsius>));
     let warmest_wall = warmest_wall(r);
     let atmosphere = atmosphere(r);
     let limits = limits(r);
@@ -259,7 +286,6 @@ pub fn resolve(book: &Book) -> Resolved {
     for field in [
         Field::TailLevel,
         Field::GaugeLevel,
-        Field::ColdestWall,
         Field::BendRadius,
         Field::JointDeflection,
     ] {
@@ -281,8 +307,10 @@ pub fn resolve(book: &Book) -> Resolved {
         air_slope_change,
         intake_approach: book.limits.intake_approach,
         jets,
+        drive,
         cold_water,
         warm_water,
+        coldest_wall,
         warmest_wall,
         atmosphere,
         limits,

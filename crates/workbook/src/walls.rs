@@ -7,7 +7,7 @@ use crate::figure::{CloneGap, Figure, Gap, Lack, Trouble};
 use crate::resolve::Resolved;
 use crate::resolve::parts::{Stretch, bears_pressure};
 use crate::steady::Steady;
-use crate::transient::Transient;
+use crate::transient::{Extreme, Transient};
 use crate::verdict::Weakest;
 use hydraulics::constants::standard_gravity;
 use hydraulics::quantity::{AbsolutePressure, GaugePressure, Level, PipeLength};
@@ -58,6 +58,18 @@ pub struct CollapseFigures {
     pub safety: f64,
 }
 
+/// How far the lowest pressure in a surge leaves the free pipe from collapse.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct CollapseInSurge {
+    /// Outside less inside pressure at the lowest; 0 where it stays above the
+    /// air's.
+    pub suction: Pressure,
+    /// That over what is allowed: the share used.
+    pub share: f64,
+    /// What is left.
+    pub left: Pressure,
+}
+
 /// What stage 4 finds for one stretch.
 #[derive(Debug, Clone, PartialEq)]
 pub struct StretchWalls {
@@ -85,8 +97,21 @@ pub struct StretchWalls {
     pub share: Figure<f64>,
     /// The same with the quick surge estimate on top: an estimate, no check.
     pub share_with_quick: Figure<f64>,
+    /// The weakest of pipe and rated fittings in a surge: the user's allowance
+    /// stands in for the pipe's lasting pressure where one is entered.
+    pub surge_bearing: Figure<Bearing>,
+    /// Whether that allowance is entered.
+    pub surge_by_user: bool,
+    /// Highest pressure in a surge, with its place.
+    pub surge: Figure<PressureAt>,
+    /// Highest pressure in a surge over what the weakest part bears.
+    pub surge_share: Figure<f64>,
+    /// Lowest pressure in a surge, with its place.
+    pub surge_lowest: Figure<PressureAt>,
     /// Collapse.
     pub collapse: Figure<CollapseFigures>,
+    /// How far the lowest pressure in a surge leaves the pipe from it.
+    pub collapse_in_surge: Figure<CollapseInSurge>,
     /// Lowest running pressure, from the lowest forebay level where entered.
     pub lowest: Figure<PressureAt>,
     /// Suction a running line may use here.
@@ -135,9 +160,31 @@ fn one(
         .pipe
         .clone_gap()
         .and_then(|pipe| allowable_at(stretch, pipe, rating_temperature(pipe)));
-    let bearing = allowable
-        .clone_gap()
-        .and_then(|a| bearing(found, stretch, a, is_last));
+    let bearing = allowable.clone_gap().and_then(|a| {
+        let pipe = GaugePressure::new(a.pressure);
+        bearing_of(found, stretch, pipe, is_last)
+    });
+    let surge_by_user = matches!(stretch.surge_allowed, Ok(Some(_)));
+    let surge_bearing = match stretch.surge_allowed.clone() {
+        Ok(None) => bearing.clone(),
+        Ok(Some(allowed)) => bearing_of(found, stretch, allowed, is_last),
+        Err(gap) => Err(gap),
+    };
+    let extremes = transient.peaks.clone_gap().and_then(|peaks| {
+        let found = peaks.stretches.get(index);
+        found.copied().ok_or(Gap::Unsettled(Lack::Surge))
+    });
+    let at = |e: Extreme| PressureAt {
+        pressure: e.pressure,
+        at: e.at,
+    };
+    let surge = extremes.clone().map(|e| at(e.highest));
+    let surge_lowest = extremes.map(|e| at(e.lowest));
+    let surge_share = surge
+        .clone()
+        .and_then(|s| Ok(s.pressure.pa() / surge_bearing.clone_gap()?.pressure.pa()));
+    let collapse = collapse(found, stretch);
+    let collapse_in_surge = collapse_in_surge(&collapse, &surge_lowest);
     let share = standing
         .clone()
         .and_then(|s| Ok(s.pressure.pa() / bearing.clone_gap()?.pressure.pa()));
@@ -157,7 +204,13 @@ fn one(
         .collect();
     StretchWalls {
         stretch: stretch.id,
-        collapse: collapse(found, stretch),
+        surge_bearing,
+        surge_by_user,
+        surge,
+        surge_share,
+        surge_lowest,
+        collapse,
+        collapse_in_surge,
         lowest: lowest(found, steady, index),
         suction_allowed: suction_allowed(found),
         standing,
@@ -229,14 +282,15 @@ fn standing(found: &Resolved, stretch: &Stretch, is_last: bool) -> Figure<Pressu
     })
 }
 
-fn bearing(
+/// The weakest of a pipe that bears this much and what is rated on it.
+fn bearing_of(
     found: &Resolved,
     stretch: &Stretch,
-    allowable: &Allowable,
+    pipe: GaugePressure,
     is_last: bool,
 ) -> Figure<Bearing> {
     let mut least = Bearing {
-        pressure: GaugePressure::new(allowable.pressure),
+        pressure: pipe,
         weakest: Weakest::Pipe,
     };
     for fitting in found
@@ -263,6 +317,21 @@ fn bearing(
         };
     }
     Ok(least)
+}
+
+fn collapse_in_surge(
+    collapse: &Figure<CollapseFigures>,
+    lowest: &Figure<PressureAt>,
+) -> Figure<CollapseInSurge> {
+    let below = -lowest.clone()?.pressure.get();
+    let none = Pressure::default();
+    let suction = if below > none { below } else { none };
+    let allowed = collapse.clone()?.allowed;
+    Ok(CollapseInSurge {
+        suction,
+        share: (suction / allowed).get::<uom::si::ratio::ratio>(),
+        left: allowed - suction,
+    })
 }
 
 fn collapse(found: &Resolved, stretch: &Stretch) -> Figure<CollapseFigures> {

@@ -1,7 +1,7 @@
 //! What a march leaves behind.
 
 use super::march::March;
-use super::run::{Balance, NodeEnvelope, Run, Separation};
+use super::run::{Balance, NodeEnvelope, Picture, Run, Separation};
 use super::traces::Traces;
 use crate::quantity::{Level, PipeLength, Time, Volume, VolumeRate};
 use uom::si::time::second;
@@ -43,6 +43,35 @@ impl March<'_> {
         (head - self.velocity * reach.velocity_head * q * q, q)
     }
 
+    /// The whole line as it stands, in the order of [`Run::nodes`].
+    pub(super) fn picture(&self, time: f64) -> Picture {
+        let model = self.model;
+        let mut grades = Vec::with_capacity(self.nodes + 2);
+        for node in 0..self.nodes {
+            grades.push(self.state(node).0 + model.axis);
+        }
+        if self.inlet_is_lumped() {
+            let first = grades.first().copied().unwrap_or(f64::NAN);
+            grades.insert(0, first);
+        }
+        grades.push(self.foot_grade + model.axis);
+        Picture {
+            time: Time::new::<second>(time),
+            grades,
+            flow_out: self.foot_flow,
+        }
+    }
+
+    /// Whether a lumped run stands above the first node, so that the inlet is
+    /// put in before it.
+    fn inlet_is_lumped(&self) -> bool {
+        let inlet = self.model.ends.0.0;
+        self.model
+            .chainages
+            .first()
+            .is_some_and(|at| *at > inlet + 1e-6)
+    }
+
     pub(super) fn finish(&self, traces: Traces, balance: Option<Balance>) -> Run {
         let model = self.model;
         let mut nodes = Vec::with_capacity(self.nodes + 2);
@@ -64,10 +93,7 @@ impl March<'_> {
             )
         };
         let (inlet, foot) = model.ends;
-        if let Some(first) = nodes
-            .first()
-            .filter(|node| node.chainage.m() > inlet.0 + 1e-6)
-        {
+        if let Some(first) = nodes.first().filter(|_| self.inlet_is_lumped()) {
             let lumped = NodeEnvelope {
                 chainage: PipeLength::from_m(inlet.0),
                 level: Level::from_m(inlet.1),
@@ -94,6 +120,7 @@ impl March<'_> {
             flow_greatest: flow(traces.flow_greatest),
             foot: traces.foot,
             probes: traces.probes.into_iter().map(|(_, probe)| probe).collect(),
+            pictures: traces.pictures,
             separation: self.separation(),
             draws_air: self.draws_air,
             balance,

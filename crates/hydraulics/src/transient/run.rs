@@ -31,6 +31,9 @@ pub struct RunOptions {
     pub probes: Vec<PipeLength>,
     /// About how many points a trace has; 0 for no traces.
     pub trace_points: usize,
+    /// About how many pictures of the whole line are kept, evenly spaced in
+    /// time, first and last included; 0 for none.
+    pub pictures: usize,
     /// Whether energy and volume are added up.
     pub balance: bool,
     /// Whether grade is energy less velocity head. `false` leaves the velocity
@@ -47,6 +50,7 @@ impl Default for RunOptions {
             cavity: Some(GasCavity::default()),
             probes: Vec::new(),
             trace_points: 400,
+            pictures: 0,
             balance: true,
             velocity_head: true,
         }
@@ -102,6 +106,22 @@ pub struct Probe {
     pub trace: Trace,
 }
 
+/// The whole line at one time.
+///
+/// Where cavities stand, the head within a reach is that of the waves that meet
+/// there, before the gas of this step gives way: it may lie a little outside
+/// the envelope. The same holds of [`Probe`].
+#[derive(Debug, Clone, PartialEq)]
+pub struct Picture {
+    /// Time from the start of the event.
+    pub time: Time,
+    /// Grade level, m above the survey's datum, at the nodes of
+    /// [`Run::nodes`] in their order.
+    pub grades: Vec<f64>,
+    /// Flow out of the nozzles, m3/s.
+    pub flow_out: f64,
+}
+
 /// What the arithmetic leaves over.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Balance {
@@ -154,6 +174,8 @@ pub struct Run {
     pub foot: Trace,
     /// Traces asked for, in their order.
     pub probes: Vec<Probe>,
+    /// Pictures asked for.
+    pub pictures: Vec<Picture>,
     /// The column parts: the head fell to the vapour pressure. Such a run
     /// proves nothing but that the event must not happen: it never holds.
     pub separation: Option<Separation>,

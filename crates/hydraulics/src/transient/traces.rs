@@ -2,7 +2,7 @@
 
 use super::error::TransientError;
 use super::march::March;
-use super::run::{Probe, Trace};
+use super::run::{Picture, Probe, Trace};
 use crate::quantity::PipeLength;
 
 /// What is kept of the course in time.
@@ -15,6 +15,8 @@ pub(super) struct Traces {
     pub(super) flow_greatest: f64,
     pub(super) foot: Trace,
     pub(super) probes: Vec<(usize, Probe)>,
+    every_picture: usize,
+    pub(super) pictures: Vec<Picture>,
 }
 
 impl Traces {
@@ -45,6 +47,11 @@ impl Traces {
             flow_greatest: 0.0,
             foot: Trace::default(),
             probes,
+            every_picture: match march.options.pictures {
+                0 => 0,
+                wanted => march.steps.div_ceil(wanted).max(1),
+            },
+            pictures: Vec::new(),
         })
     }
 
@@ -61,6 +68,11 @@ impl Traces {
         }
         if flow > self.flow_greatest {
             self.flow_greatest = flow;
+        }
+        let pictured = self.every_picture > 0
+            && (number.is_multiple_of(self.every_picture) || number == march.steps);
+        if pictured {
+            self.pictures.push(march.picture(time));
         }
         let due = self.every > 0 && (number.is_multiple_of(self.every) || number == march.steps);
         if !due {

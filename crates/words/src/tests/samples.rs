@@ -6,6 +6,7 @@ use hydraulics::line::{LineError, Point};
 use hydraulics::nozzle::NozzleError;
 use hydraulics::quantity::{Head, Level, PipeLength};
 use hydraulics::surge::{SurgeError, WaveError};
+use hydraulics::transient::TransientError;
 use hydraulics::water::WaterError;
 use pipes::{Material, OwnPipeError, RatingError};
 use statics::{Input, WallError};
@@ -367,6 +368,32 @@ pub(super) fn troubles() -> Vec<Trouble> {
         ]
         .map(|why| Trouble::Surge { stretch, why }),
     );
+    all.push(Trouble::ValveRow { row: 2 });
+    all.extend(
+        [
+            TransientError::Line(LineError::NoRun),
+            TransientError::StartsBelowVapour {
+                chainage: at(24.5),
+                grade: Level::from_m(101.0),
+            },
+            TransientError::GridTooFine {
+                cells: 20_000,
+                alteration: 0.02,
+            },
+            TransientError::GridTooCoarse { run: 1 },
+            TransientError::TooLong { steps: 1e9 },
+            TransientError::NotFinite {
+                time: Time::new::<second>(1.0),
+                chainage: at(24.5),
+            },
+            TransientError::WaveSpeed {
+                run: 1,
+                wave_speed: velocity,
+            },
+            TransientError::StartsDiffer,
+        ]
+        .map(Trouble::Transient),
+    );
     all.extend(
         [
             PipeCopyError::Material("cheese".to_owned()),
@@ -391,6 +418,11 @@ pub(super) fn lacks() -> Vec<Lack> {
         Lack::Entry(Field::StationLevel(1)),
         Lack::Pipe(1),
         Lack::Surge,
+        Lack::Machine,
+        Lack::ValveTable,
+        Lack::NotConverged { moved: 0.012 },
+        Lack::NotBalanced { left: 0.002 },
+        Lack::ColumnParts { at: at(151.0) },
         Lack::Rating(91),
         Lack::Rating(999),
         Lack::Source(2),

@@ -43,6 +43,8 @@ pub struct Stretch {
     pub pipe: Figure<Arc<Pipe>>,
     /// How it is laid.
     pub laying: Laying,
+    /// Pressure it may see in a surge, where the user entered one.
+    pub surge_allowed: Figure<Option<GaugePressure>>,
 }
 
 /// A fitting on the profile.
@@ -117,11 +119,18 @@ pub(crate) fn stretches(r: &mut Reader<'_>, profile: &Profile) -> Vec<Stretch> {
         .zip(spans)
         .map(|(entry, span)| {
             let _ = r.optional(Field::StretchCover(entry.id));
+            let surge_allowed = r
+                .optional(Field::SurgeAllowed(entry.id))
+                .map(|allowed| allowed.map(GaugePressure::from_pa));
+            if let Ok(Some(allowed)) = surge_allowed {
+                r.assume(Assumption::SurgeAllowance(entry.id, allowed));
+            }
             Stretch {
                 id: entry.id,
                 span,
                 pipe: pipe_of(r, entry),
                 laying: entry.laying,
+                surge_allowed,
             }
         })
         .collect()

@@ -245,3 +245,33 @@ fn one_start_does_not_run_another_event() {
     let found = model.run(&other, &RunOptions::lean(), &mut Scratch::new());
     assert_eq!(found, Err(TransientError::StartsDiffer));
 }
+
+/// Pictures are what probes see, laid over the nodes of the run.
+#[test]
+fn pictures_agree_with_traces_and_lie_in_the_envelope() {
+    let bench = rich();
+    let model = bench.model(60, &[1.0, 1.0]);
+    let law = ClosingLaw::linear(s(6.0)).unwrap();
+    let event = Event::close(&[1.0, 1.0], &law).unwrap();
+    let options = RunOptions {
+        trace_points: 40,
+        pictures: 40,
+        ..RunOptions::default()
+    };
+    let run = model.run(&event, &options, &mut Scratch::new()).unwrap();
+    assert_eq!(run.separation, None);
+    assert_eq!(run.pictures.len(), run.foot.times.len());
+    assert!(run.pictures.len() >= 40);
+    for (number, picture) in run.pictures.iter().enumerate() {
+        assert_eq!(picture.grades.len(), run.nodes.len());
+        let foot = picture.grades.last().copied().unwrap();
+        assert!((foot - run.foot.grades[number]).abs() < 1e-12);
+        assert!((picture.flow_out - run.foot.flows[number]).abs() < 1e-15);
+        for (grade, node) in picture.grades.iter().zip(&run.nodes) {
+            assert!(
+                (node.lowest.m() - 1e-6..=node.highest.m() + 1e-6).contains(grade),
+                "{grade} {node:?}"
+            );
+        }
+    }
+}
