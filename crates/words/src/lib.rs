@@ -21,6 +21,7 @@ mod laying;
 mod name;
 mod number;
 mod phrase;
+mod surge;
 #[cfg(test)]
 mod tests;
 pub mod text;
