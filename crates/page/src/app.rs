@@ -15,6 +15,7 @@ use crate::sheets::line::LineSheet;
 use crate::sheets::pipe::PipeSheet;
 use crate::sheets::print::PrintSheet;
 use crate::sheets::stream::StreamSheet;
+use crate::sheets::surge::SurgeSheet;
 use crate::state::{State, sheet_of, sheet_slug};
 use crate::sweeping;
 use leptos::ev;
@@ -44,6 +45,7 @@ pub fn App() -> impl IntoView {
             Sheet::Line => view! { <LineSheet/> }.into_any(),
             Sheet::Pipe => view! { <PipeSheet/> }.into_any(),
             Sheet::Jets => view! { <JetsSheet/> }.into_any(),
+            Sheet::Surge => view! { <SurgeSheet/> }.into_any(),
             Sheet::Print => view! { <PrintSheet/> }.into_any(),
             _ => view! { <StreamSheet/> }.into_any(),
         }

@@ -28,11 +28,12 @@ use workbook::working::FigureKey;
 use workbook::{Book, Entry, Field, Findings, evaluate};
 
 /// The sheets of this edition, in the order of the tabs.
-pub const SHEETS: [Sheet; 5] = [
+pub const SHEETS: [Sheet; 6] = [
     Sheet::Stream,
     Sheet::Line,
     Sheet::Pipe,
     Sheet::Jets,
+    Sheet::Surge,
     Sheet::Print,
 ];
 
@@ -310,6 +311,11 @@ impl State {
             }
             _ => {}
         }
+        // Beside the other entries of the surge.
+        let sheet = match place {
+            Place::Field(Field::SurgeAllowed(_)) => Sheet::Surge,
+            _ => sheet,
+        };
         self.go(sheet);
         let id = crate::slug::place(place);
         // The sheet draws itself first.

@@ -9,6 +9,7 @@
 //!
 //! - [`long_section`]: the line with its ground, static level and grade line
 //! - [`sweep_chart`]: loss against bore for every pipe of the catalogue
+//! - [`trace_chart`]: the level at a place against time
 //! - [`verdict_mark`]: the small scale beside a verdict
 //!
 //! Text sizes and the pipe's widths are attributes, because the layout was made
@@ -24,6 +25,7 @@ pub mod shape;
 pub mod svg;
 pub mod sweep_chart;
 pub mod ticks;
+pub mod trace_chart;
 pub mod verdict_mark;
 
 #[cfg(test)]

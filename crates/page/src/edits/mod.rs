@@ -7,6 +7,7 @@ pub mod fittings;
 pub mod pipes;
 pub mod stations;
 pub mod stretches;
+pub mod valve;
 
 use workbook::edit::{free_id, place_of};
 

@@ -9,5 +9,5 @@ pub mod typing;
 
 pub use choice::{choice, choice_of};
 pub use number_field::{NumberCell, NumberField};
-pub use picker::picker;
+pub use picker::{choice_in_list, picker};
 pub use text_field::{TextLook, text_field};

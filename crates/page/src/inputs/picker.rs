@@ -1,7 +1,11 @@
 //! One of many, in a list that opens.
 
+use super::choice::OptionOf;
 use crate::gate::gate;
+use crate::state::state;
 use leptos::prelude::*;
+use words::Key;
+use workbook::Book;
 
 /// A list to pick from: each option a value and its words. `id` is its `id` and
 /// `data-test`.
@@ -46,4 +50,38 @@ pub fn picker(
         </div>
     }
     .into_any()
+}
+
+/// A choice of the book whose options are too long to stand side by side: one
+/// of a few, in a list. `slug` is its `id` and `data-test`, each option's name
+/// its value.
+pub fn choice_in_list<T>(
+    slug: &'static str,
+    label: Key,
+    options: &'static [OptionOf<T>],
+    get: impl Fn(&Book) -> T + Copy + Send + Sync + 'static,
+    set: impl Fn(&mut Book, T) + Copy + Send + Sync + 'static,
+) -> AnyView
+where
+    T: Copy + PartialEq + Send + Sync + 'static,
+{
+    let state = state();
+    let named = Signal::derive(move || state.words.get().say(label).to_owned());
+    let all = Signal::derive(move || {
+        let words = state.words.get();
+        options
+            .iter()
+            .map(|(_, name, key)| ((*name).to_owned(), words.say(*key).to_owned()))
+            .collect::<Vec<_>>()
+    });
+    let now = Signal::derive(move || {
+        let value = state.book.with(|b| get(b));
+        let found = options.iter().find(|o| o.0 == value);
+        found.map_or("", |o| o.1).to_owned()
+    });
+    picker(slug, named, all, now, move |name| {
+        if let Some((value, ..)) = options.iter().find(|o| o.1 == name) {
+            state.act(move |book| set(book, *value));
+        }
+    })
 }

@@ -3,12 +3,15 @@
 
 use crate::drawing::long_section::{
     FittingMark, Glyph, LevelLine, LinePoint, LongSection, MarkedPoint, StandingLevel, StretchBand,
+    SurgeBand,
 };
 use crate::drawing::{Verdict as Mark, long_section};
+use hydraulics::quantity::Level;
 use pipes::Pipe;
 use words::{Key, Words, text};
 use workbook::book::{FittingKind, Id};
 use workbook::sweep::class;
+use workbook::transient::EnvelopeNode;
 use workbook::units::Kind;
 use workbook::verdict::Verdict;
 use workbook::{Book, Findings, Measure};
@@ -67,7 +70,7 @@ pub fn named(
         static_level: standing(findings, words, &unit),
         highest_static: highest(findings, words, &unit),
         grade: grade(findings, words, &unit),
-        surge: None,
+        surge: surge(findings, words, &unit),
         stretches: bands,
         lowest: lowest(findings, words, &unit),
         sub_atmospheric: findings
@@ -165,6 +168,21 @@ fn grade(findings: &Findings, words: Words, unit: &Scale) -> Option<LevelLine> {
             .map(|n| (unit.x(n.chainage), unit.y(n.grade)))
             .collect(),
         label,
+    })
+}
+
+fn surge(findings: &Findings, words: Words, unit: &Scale) -> Option<SurgeBand> {
+    let nodes = &findings.transient.surge.as_ref().ok()?.envelope;
+    let line = |key: Key, level: fn(&EnvelopeNode) -> Level| LevelLine {
+        points: nodes
+            .iter()
+            .map(|n| (unit.x(n.chainage), unit.y(level(n))))
+            .collect(),
+        label: words.say(key).to_owned(),
+    };
+    Some(SurgeBand {
+        highest: line(Key::SECTION_SURGE_HIGHEST, |n| n.highest),
+        lowest: line(Key::SECTION_SURGE_LOWEST, |n| n.lowest),
     })
 }
 
@@ -343,6 +361,9 @@ mod tests {
             assert_eq!(named.stretches, vec![1, 2]);
             assert!(named.section.stretches[0].selected);
             assert!(named.section.grade.is_some() && named.section.lowest.is_some());
+            let band = named.section.surge.as_ref().unwrap();
+            let pairs = band.highest.points.iter().zip(&band.lowest.points);
+            assert!(pairs.clone().count() > 10 && pairs.clone().all(|(h, l)| h.1 > l.1));
             assert!(drawn(named.section, Size::screen(360.0, 240.0), words).is_ok());
         }
     }

@@ -5,6 +5,7 @@ pub mod line;
 pub mod pipe;
 pub mod print;
 pub mod stream;
+pub mod surge;
 
 use crate::state::state;
 use leptos::prelude::*;
