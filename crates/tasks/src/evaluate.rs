@@ -70,12 +70,16 @@ mod tests {
     use workbook::demo::demo;
 
     #[test]
-    fn the_demo_is_evaluated_and_unsettled_for_want_of_surge() {
-        let text = format::write(&demo("demo")).unwrap();
+    fn the_demo_is_evaluated_and_unsettled_without_a_closing_time() {
+        let mut book = demo("demo");
+        let text = format::write(&book).unwrap();
         let (json, code) = evaluated(text.as_bytes()).unwrap();
         let report: serde_json::Value = serde_json::from_str(&json).unwrap();
         assert_eq!(report["invented"], true);
-        assert_eq!(code, 3);
+        assert_eq!(code, 0);
+        book.surge.closing_time_s = workbook::Entry::default();
+        let text = format::write(&book).unwrap();
+        assert_eq!(evaluated(text.as_bytes()).unwrap().1, 3);
         assert!(report["flow_m3_s"].as_f64().is_some_and(|flow| flow > 0.0));
         assert!(
             report["cautions"]
