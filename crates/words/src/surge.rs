@@ -14,7 +14,7 @@ impl Words {
         let open = start.open as usize;
         match start.event {
             EventKind::Opening => text::surge_opened(self, open),
-            _ => text::surge_from(self, open, &self.figure(Measure::share(start.opening))),
+            _ => text::surge_from(self, open, &self.brief(Measure::share(start.opening))),
         }
     }
 
@@ -47,7 +47,7 @@ mod tests {
             opening: 0.3,
         };
         let said = words.event(&closing);
-        assert!(said.contains("1 jet open at 30"), "{said}");
+        assert!(said.contains("1 jet open at 30\u{202f}%"), "{said}");
         let opening = Start {
             event: EventKind::Opening,
             open: 2,
