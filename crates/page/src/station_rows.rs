@@ -143,7 +143,7 @@ mod tests {
         book.line.stations[2].name = "foot".to_owned();
         stations::insert_before(&mut book, 1);
         let wrong = Trouble::StationRepeated { station: third };
-        rows.follow(words(), &book, &[wrong.clone()]);
+        rows.follow(words(), &book, std::slice::from_ref(&wrong));
         assert_eq!(first.get_untracked().place, Some(1));
         assert_eq!(last.get_untracked().station.name, "foot");
         assert_eq!(last.get_untracked().troubles, [wrong]);

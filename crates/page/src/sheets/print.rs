@@ -3,6 +3,7 @@
 
 mod notes;
 mod pieces;
+mod surge;
 mod tables;
 
 use crate::drawing::Size;
@@ -176,6 +177,7 @@ fn paper(state: State) -> AnyView {
                         {section(words, &book, &findings)}
                         {tables::schedule(words, &book, &schedule)}
                         {tables::pressures(words, &book, &schedule)}
+                        {surge::section(words, &book, &findings)}
                         {pieces::section(words, &book, &findings, &schedule)}
                         {tables::fittings(words, &book, &findings)}
                         {tables::nozzles(words, &book, &findings)}

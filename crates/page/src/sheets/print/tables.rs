@@ -14,7 +14,7 @@ use workbook::working::FigureKey;
 use workbook::{Book, Findings, Measure};
 
 /// Head of a column: its name, the unit under it.
-fn th(words: Words, key: Key, kind: Option<Kind>) -> AnyView {
+pub(super) fn th(words: Words, key: Key, kind: Option<Kind>) -> AnyView {
     let unit = kind.map_or("", |k| words.unit(k));
     view! {
         <th scope="col" class:num=kind.is_some()>
@@ -24,19 +24,19 @@ fn th(words: Words, key: Key, kind: Option<Kind>) -> AnyView {
     .into_any()
 }
 
-fn td(text: String) -> AnyView {
+pub(super) fn td(text: String) -> AnyView {
     view! { <td class="num">{text}</td> }.into_any()
 }
 
 /// A figure in a cell; where there is none, its reason is told below.
-fn figure<T: Copy + Into<Measure>>(words: Words, figure: &Figure<T>) -> String {
+pub(super) fn figure<T: Copy + Into<Measure>>(words: Words, figure: &Figure<T>) -> String {
     figure
         .as_ref()
         .map_or_else(|_| speak::none(), |x| words.value(*x))
 }
 
 /// Number of a stretch, from 1.
-fn number(book: &Book, stretch: Id) -> String {
+pub(super) fn number(book: &Book, stretch: Id) -> String {
     book.line
         .stretches
         .iter()

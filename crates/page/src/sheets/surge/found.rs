@@ -6,7 +6,7 @@ use crate::parts::figures::gap_class;
 use crate::parts::verdicts::verdict_line;
 use crate::state::State;
 use leptos::prelude::*;
-use words::{Key, Words, text};
+use words::{Key, Words, capital, text};
 use workbook::book::Id;
 use workbook::transient::{EventKind, EventPeak, StretchOnGrid, Surge};
 use workbook::units::Kind;
@@ -147,18 +147,21 @@ fn events(words: Words, findings: &Findings, surge: &Surge) -> AnyView {
             let kind = event.start.event;
             let mut more = vec![words.start(event.start)];
             if let Some(parted) = &event.parted {
-                let said = text::surge_parts(words, &words.figure(parted.at));
-                more.push(said.trim_end_matches('.').to_owned());
+                more.push(text::surge_parts(words, &words.figure(parted.at)));
             }
             if !event.counts {
                 more.push(words.say(Key::SURGE_NOT_COUNTED).to_owned());
             }
+            let more = more
+                .into_iter()
+                .map(|said| view! { <span class="pick-more">{said}</span> })
+                .collect_view();
             Some(
                 view! {
                     <tr data-test=format!("event-{kind:?}")>
                         <th scope="row">
                             {words.name(kind)}
-                            <span class="pick-more">{more.join("; ")}</span>
+                            {more}
                         </th>
                         <td class="num">{words.value(highest)}</td>
                         <td class="num">{words.value(lowest)}</td>
@@ -225,11 +228,21 @@ fn list(all: Vec<Said>) -> AnyView {
 fn beside(words: Words, book: &Book, findings: &Findings) -> AnyView {
     let transient = &findings.transient;
     let run = transient.surge.as_ref().ok().map(|surge| {
+        let waves = surge
+            .trust
+            .stretches
+            .iter()
+            .map(|s| {
+                let test = format!("surge-wave-{}", s.stretch);
+                view! { <p class="quiet" data-test=test>{wave(words, book, s)}</p> }
+            })
+            .collect_view();
         view! {
             {list(times(words, surge))}
             <details class="sheet-part fold" data-test="surge-trust">
                 <summary>{words.say(Key::SURGE_TRUST)}</summary>
-                {list(trust(words, book, surge))}
+                {list(trust(words, surge))}
+                {waves}
             </details>
         }
         .into_any()
@@ -267,15 +280,15 @@ fn times(words: Words, surge: &Surge) -> Vec<Said> {
 }
 
 /// Every figure that says how far the run can be trusted.
-fn trust(words: Words, book: &Book, surge: &Surge) -> Vec<Said> {
+fn trust(words: Words, surge: &Surge) -> Vec<Said> {
     let trust = &surge.trust;
-    let share = |x: f64| words.full(Measure::share(round_share(x)));
+    let share = |x: f64| small(words, x);
     let runs = text::surge_runs_said(
         words,
         &words.count(trust.runs.0),
         &words.count(trust.runs.1),
     );
-    let mut all: Vec<Said> = [
+    [
         ("step", Key::SURGE_TIME_STEP, words.figure(trust.step)),
         ("cells", Key::SURGE_CELLS, words.count(trust.cells)),
         ("moved", Key::SURGE_MOVED, share(trust.moved)),
@@ -308,27 +321,30 @@ fn trust(words: Words, book: &Book, surge: &Surge) -> Vec<Said> {
     ]
     .into_iter()
     .map(|(test, key, value)| Said::new(test, words.say(key), value))
-    .collect();
-    all.extend(trust.stretches.iter().map(|s| wave(words, book, s)));
-    all
+    .collect()
 }
 
-/// A small share to a hundredth of a per cent, so that rounding is not read
-/// as an error.
-fn round_share(x: f64) -> f64 {
-    (x * 1e4).round() / 1e4 + 0.0
+/// A small share; under a hundredth of a per cent no more than that is said,
+/// so that rounding is not read as an error.
+fn small(words: Words, x: f64) -> String {
+    const LEAST: f64 = 1e-4;
+    if x.abs() < LEAST {
+        return text::figure_below(words, &words.brief(Measure::share(LEAST)));
+    }
+    words.full(Measure::share((x / LEAST).round() * LEAST))
 }
 
-fn wave(words: Words, book: &Book, s: &StretchOnGrid) -> Said {
-    let speed = words.figure(s.wave_speed);
-    let value = if s.cells == 0 {
-        text::surge_wave_lumped(words, &speed)
+/// How one stretch lies on the grid, in a sentence.
+fn wave(words: Words, book: &Book, s: &StretchOnGrid) -> String {
+    let (stretch, speed) = (
+        words.about(book).stretch(s.stretch),
+        words.figure(s.wave_speed),
+    );
+    if s.cells == 0 {
+        capital(&text::surge_wave_lumped(words, &stretch, &speed))
     } else {
-        let altered = words.full(Measure::share(round_share(s.altered)));
-        text::surge_wave_altered(words, &speed, &altered)
-    };
-    let name = text::surge_wave(words, &words.about(book).stretch(s.stretch));
-    Said::new(&format!("wave-{}", s.stretch), name, value)
+        text::surge_wave_altered(words, &stretch, &speed, &small(words, s.altered))
+    }
 }
 
 fn quick(words: Words, findings: &Findings) -> Vec<Said> {
@@ -364,8 +380,8 @@ mod tests {
         for language in Language::ALL {
             for units in [UnitSystem::Metric, UnitSystem::UsCustomary] {
                 let words = Words::new(language, units);
-                let said = trust(words, &book, surge);
-                assert_eq!(said.len(), 9 + book.line.stretches.len());
+                let said = trust(words, surge);
+                assert_eq!(said.len(), 9);
                 assert!(said.iter().all(|s| !s.value.is_empty()));
                 assert_eq!(quick(words, &findings).len(), 3);
             }
@@ -377,8 +393,9 @@ mod tests {
     }
 
     #[test]
-    fn rounding_dust_is_nought() {
-        assert_eq!(round_share(-1e-12).to_bits(), 0.0_f64.to_bits());
-        assert!((round_share(0.012_34) - 0.0123).abs() < 1e-12);
+    fn dust_is_below_what_is_said() {
+        let words = Words::new(Language::English, UnitSystem::Metric);
+        assert!(small(words, -1e-12).starts_with("below"));
+        assert!(small(words, -0.012_34).contains("1.23"));
     }
 }
