@@ -25,7 +25,7 @@ use workbook::reading::DecimalMark;
 use workbook::resolve::profile::station_entry;
 use workbook::sweep::Row;
 use workbook::working::FigureKey;
-use workbook::{Book, Entry, Field, Findings, evaluate};
+use workbook::{Book, Entry, Field, Findings, evaluate, evaluate_before_surge};
 
 /// The sheets of this edition, in the order of the tabs.
 pub const SHEETS: [Sheet; 6] = [
@@ -36,6 +36,9 @@ pub const SHEETS: [Sheet; 6] = [
     Sheet::Surge,
     Sheet::Print,
 ];
+
+/// How long after a key the whole transient is solved, if no other key came.
+const SOLVE_MS: u64 = 80;
 
 /// How long good news stays in view.
 const NOTICE_MS: u64 = 6000;
@@ -136,7 +139,29 @@ impl State {
     pub fn new() -> State {
         let history = RwSignal::new(History::new(Book::new(&clock::new_key())));
         let book = Memo::new(move |_| history.with(|h| Arc::clone(h.now())));
-        let findings = Memo::new(move |_| Arc::new(evaluate(&book.get())));
+        let writing = RwSignal::new(false);
+        let solved: RwSignal<Option<(Arc<Book>, Arc<Findings>)>> = RwSignal::new(None);
+        let findings = Memo::new(move |_| {
+            let book = book.get();
+            match solved.get() {
+                Some((of, findings)) if Arc::ptr_eq(&of, &book) => findings,
+                // Between two keys there is no time for the whole transient.
+                _ if writing.get_untracked() => Arc::new(evaluate_before_surge(&book)),
+                _ => Arc::new(evaluate(&book)),
+            }
+        });
+        Effect::new(move |_| {
+            let now = book.get();
+            if !writing.get_untracked() {
+                return;
+            }
+            frame::after(SOLVE_MS, move || {
+                if Arc::ptr_eq(&book.get_untracked(), &now) {
+                    let findings = Arc::new(evaluate(&now));
+                    solved.set(Some((now, findings)));
+                }
+            });
+        });
         let troubles = gate(move || findings.with(|f| f.troubles()));
         let tags = settings::browser_languages();
         let asked: Vec<String> = settings::get(settings::LANGUAGE)
@@ -189,7 +214,7 @@ impl State {
             sheet: RwSignal::new(sheet_of(&place::sheet()).unwrap_or(Sheet::Stream)),
             stretch: RwSignal::new(None),
             station: RwSignal::new(None),
-            writing: RwSignal::new(false),
+            writing,
             saved: RwSignal::new(Saved::Nothing),
             persistence: RwSignal::new(Persistence::Unknown),
             notice: RwSignal::new(None),

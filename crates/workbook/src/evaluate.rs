@@ -10,7 +10,7 @@ use crate::relief::{Relief, relief};
 use crate::resolve::{Assumption, Resolved, resolve};
 use crate::stations::{StationFinding, stations};
 use crate::steady::{Steady, steady};
-use crate::transient::{Transient, transient};
+use crate::transient::{Depth, Transient, transient_to};
 use crate::walls::{Walls, walls};
 
 /// All that is computed from a book.
@@ -50,10 +50,21 @@ pub struct Findings {
 /// ```
 #[must_use]
 pub fn evaluate(book: &Book) -> Findings {
+    evaluate_to(book, Depth::Full)
+}
+
+/// The same but for the transient, which is left unsettled: what can be shown
+/// at once while a person still types.
+#[must_use]
+pub fn evaluate_before_surge(book: &Book) -> Findings {
+    evaluate_to(book, Depth::Quick)
+}
+
+fn evaluate_to(book: &Book, depth: Depth) -> Findings {
     let resolved = resolve(book);
     let steady = steady(&resolved);
     let operation = operation(&resolved, &steady);
-    let transient = transient(&resolved, &steady);
+    let transient = transient_to(&resolved, &steady, depth);
     let walls = walls(&resolved, &steady, &transient);
     let stations = stations(&resolved, &steady, &operation, &walls);
     let relief = relief(&resolved);

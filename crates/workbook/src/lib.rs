@@ -36,7 +36,7 @@ pub mod working;
 
 pub use book::Book;
 pub use entry::{Entry, EntryTrouble};
-pub use evaluate::{Findings, evaluate};
+pub use evaluate::{Findings, evaluate, evaluate_before_surge};
 pub use field::Field;
 pub use figure::{Figure, Gap, Lack, Place, Trouble};
 pub use measure::Measure;
