@@ -19,7 +19,7 @@ impl Words {
     }
 
     /// An event with what it starts from, with a capital: "All jets shut by the
-    /// closing law: 2 jets open at 60 % of their stroke".
+    /// closing law, 2 jets open at 60 % of their stroke".
     #[must_use]
     pub fn event(self, start: &Start) -> String {
         text::surge_event(self, self.name(start.event), &self.start(start))
@@ -54,6 +54,6 @@ mod tests {
             opening: 1.0,
         };
         assert_eq!(words.start(&opening), "2 jets opened from shut");
-        assert!(words.deciding(&opening).contains("jets opened: 2 jets"));
+        assert!(words.deciding(&opening).contains("jets opened, 2 jets"));
     }
 }
