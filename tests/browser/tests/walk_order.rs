@@ -240,7 +240,8 @@ fn a_first_book_is_entered_by_touch_and_keyboard() {
         page.text_when("next", |text| text != third).await?;
         page.screenshot("order-pipe-360").await?;
 
-        // The pipe stands in the book and its verdict is said: open, because of surge.
+        // The pipe stands in the book and its verdict is said: open, because no closing time
+        // is entered yet.
         let (book, found) = stored(page).await?;
         let words = metric();
         let judged = &found.judged.stretches[0];
@@ -256,7 +257,9 @@ fn a_first_book_is_entered_by_touch_and_keyboard() {
             "{verdict} holds not {sentence}"
         );
         assert!(
-            verdict.to_lowercase().contains("surge is not solved"),
+            verdict
+                .to_lowercase()
+                .contains("closing time, full stroke is not entered yet"),
             "{verdict}"
         );
         let holding = page
@@ -266,7 +269,10 @@ fn a_first_book_is_entered_by_touch_and_keyboard() {
                 vec![],
             )
             .await?;
-        assert_eq!(holding, 0, "a pipe is said to hold though surge is open");
+        assert_eq!(
+            holding, 0,
+            "a pipe is said to hold though no closing time is entered"
+        );
 
         add_fittings(page).await?;
         let (book, found) = stored(page).await?;

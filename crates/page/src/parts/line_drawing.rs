@@ -173,16 +173,17 @@ fn grade(findings: &Findings, words: Words, unit: &Scale) -> Option<LevelLine> {
 
 fn surge(findings: &Findings, words: Words, unit: &Scale) -> Option<SurgeBand> {
     let nodes = &findings.transient.surge.as_ref().ok()?.envelope;
-    let line = |key: Key, level: fn(&EnvelopeNode) -> Level| LevelLine {
+    let line = |label: &str, level: fn(&EnvelopeNode) -> Level| LevelLine {
         points: nodes
             .iter()
             .map(|n| (unit.x(n.chainage), unit.y(level(n))))
             .collect(),
-        label: words.say(key).to_owned(),
+        label: label.to_owned(),
     };
+    // One name for both: under the band there is room for it.
     Some(SurgeBand {
-        highest: line(Key::SECTION_SURGE_HIGHEST, |n| n.highest),
-        lowest: line(Key::SECTION_SURGE_LOWEST, |n| n.lowest),
+        highest: line("", |n| n.highest),
+        lowest: line(words.say(Key::SECTION_SURGE_BAND), |n| n.lowest),
     })
 }
 

@@ -518,6 +518,9 @@ impl Painter<'_> {
         below_first: bool,
         shares: &[f64],
     ) {
+        if text.is_empty() {
+            return;
+        }
         let words = self.words(text, class);
         // Farther off only when there is no room at the line itself: a label must
         // not seem to name the next line.
