@@ -3,7 +3,7 @@
 
 use walkthrough::{Key, Page, Result, walk};
 
-const SHEETS: [&str; 5] = ["stream", "line", "pipe", "jets", "print"];
+const SHEETS: [&str; 6] = ["stream", "line", "pipe", "jets", "surge", "print"];
 const THEMES: [&str; 3] = ["paper", "outdoor", "dark"];
 
 async fn take_theme(page: &Page, theme: &str) -> Result {

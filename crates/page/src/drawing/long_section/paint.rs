@@ -374,10 +374,7 @@ impl Painter<'_> {
             self.point_label(&lowest.label, "d-text d-halo", at, self.text);
         }
         self.sub_atmospheric_label();
-        if let Some(grade) = &section.grade {
-            let line = self.layout.pxs(&grade.points);
-            self.line_label(&grade.label, "d-text d-water d-halo", &line, true, &SHARES);
-        }
+        // The band is the outermost: under it is the room it needs.
         if let Some(surge) = &section.surge {
             let line = self.layout.pxs(&surge.highest.points);
             self.line_label(
@@ -395,6 +392,10 @@ impl Painter<'_> {
                 true,
                 &SHARES,
             );
+        }
+        if let Some(grade) = &section.grade {
+            let line = self.layout.pxs(&grade.points);
+            self.line_label(&grade.label, "d-text d-water d-halo", &line, true, &SHARES);
         }
         let line = plain(section);
         for f in section.fittings.iter().filter(|f| !f.label.is_empty()) {
