@@ -114,6 +114,8 @@ pub struct State {
     pub full: RwSignal<bool>,
     /// Stored books, as last read from the store.
     pub stored: RwSignal<Vec<Record>>,
+    /// Whether they are being read.
+    pub listing: RwSignal<bool>,
     /// A book from a file, whose key a stored book has too.
     pub incoming: RwSignal<Option<Incoming>>,
     /// Which rows of the sweep are shown.
@@ -221,6 +223,7 @@ impl State {
             working: RwSignal::new(None),
             full: RwSignal::new(false),
             stored: RwSignal::new(Vec::new()),
+            listing: RwSignal::new(false),
             incoming: RwSignal::new(None),
             filter: RwSignal::new(Filter::default()),
             rows: RwSignal::new(Arc::new(Vec::new())),

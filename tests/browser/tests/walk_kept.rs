@@ -294,7 +294,7 @@ async fn books(page: &Page) -> Result<Vec<String>> {
     page.tap_test("tab-books").await?;
     page.until(
         "the books are listed",
-        "return document.querySelector('[data-test^=book-open-]') !== null;",
+        "return document.querySelector('.books[aria-busy=false] [data-test^=book-open-]') !== null;",
     )
     .await?;
     let found = page

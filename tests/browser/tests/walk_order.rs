@@ -307,6 +307,16 @@ fn a_first_book_is_entered_by_touch_and_keyboard() {
         ] {
             agrees(page, &found, words, key).await?;
         }
+        // The last that is asked for leads to the Surge sheet.
+        page.tap_test("next").await?;
+        page.find_test("sheet-surge").await?;
+        page.write("field-ClosingTime", "30").await?;
+        page.press(Key::Tab).await?;
+        // The whole transient follows, and is what the workbook finds.
+        page.find_test("surge-table").await?;
+        let (_, found) = stored(page).await?;
+        assert!(found.transient.surge.is_ok());
+        page.screenshot("order-surge-360").await?;
         // All is entered: the line that asked for more is gone.
         page.until(
             "nothing more is asked for",

@@ -37,8 +37,11 @@ fn close() {
 }
 
 fn refresh(state: State) {
+    state.listing.set(true);
     leptos::task::spawn_local(async move {
-        match storage::list().await {
+        let listed = storage::list().await;
+        state.listing.set(false);
+        match listed {
             Ok(records) => state.stored.set(records),
             Err(why) => state.tell(store_trouble(state.words.get_untracked(), &why), true),
         }
@@ -167,7 +170,12 @@ pub fn BooksDialog() -> impl IntoView {
             </div>
             <div class="dialog-body">
                 {move || storage_words(state).map(|w| view! { <p class="quiet">{w}</p> })}
-                <ul class="books">{rows}</ul>
+                <ul
+                    class="books"
+                    aria-busy=move || if state.listing.get() { "true" } else { "false" }
+                >
+                    {rows}
+                </ul>
                 <Show when=move || state.stored.with(Vec::is_empty)>
                     <p class="quiet">{say(Key::STATE_NO_BOOKS)}</p>
                 </Show>
