@@ -82,6 +82,12 @@ fn solved(words: Words, book: &Book, findings: &Findings, surge: &Surge) -> AnyV
             .chain(air)
             .collect();
     view! {
+        <div
+            class="table-scroll"
+            tabindex="0"
+            role="region"
+            aria-label=words.say(Key::PAGE_PRESSURES)
+        >
         <table class="table" data-test="surge-table">
             <thead>
                 <tr>
@@ -95,6 +101,7 @@ fn solved(words: Words, book: &Book, findings: &Findings, surge: &Surge) -> AnyV
             </thead>
             <tbody>{rows}</tbody>
         </table>
+        </div>
         <p data-test="surge-decides">{said.join(" ")}</p>
         {events(words, findings, surge)}
     }
