@@ -2,11 +2,11 @@
 
 use crate::inputs::{choice_of, picker};
 use crate::platform::{file, place};
+use crate::sheets::line::{DISTANCES, RECKONINGS};
 use crate::state::{State, state};
 use leptos::prelude::*;
 use std::sync::Arc;
 use words::{Key, text};
-use workbook::book::{DistanceKind, Reckoning};
 use workbook::import::gpx::{self, Gpx, Settings};
 use workbook::import::table::{self, Choices, Column, Faulty, Preview, Table};
 use workbook::import::{Displaced, Given, ImportedLine, Meaning, Note, Refusal, RowFault};
@@ -30,24 +30,6 @@ enum Source {
 const MARKS: [(DecimalMark, &str, Key); 2] = [
     (DecimalMark::Point, "point", Key::OPTION_POINT),
     (DecimalMark::Comma, "comma", Key::OPTION_COMMA),
-];
-
-const KINDS: [(DistanceKind, &str, Key); 2] = [
-    (DistanceKind::Slope, "slope", Key::OPTION_SLOPE),
-    (
-        DistanceKind::Horizontal,
-        "horizontal",
-        Key::OPTION_HORIZONTAL,
-    ),
-];
-
-const RECKONINGS: [(Reckoning, &str, Key); 2] = [
-    (Reckoning::FromStart, "start", Key::OPTION_FROM_START),
-    (
-        Reckoning::FromPrevious,
-        "previous",
-        Key::OPTION_FROM_PREVIOUS,
-    ),
 ];
 
 const FAULTY: [(bool, &str, Key); 2] = [
@@ -395,7 +377,7 @@ fn table_view(import: Import, table: &Arc<Table>) -> AnyView {
                 state,
                 "import-kind",
                 Key::FIELD_DISTANCE_KIND,
-                &KINDS,
+                &DISTANCES,
                 kind,
                 move |v| import.choices.update(|c| c.distance_kind = Some(v)),
             )}

@@ -18,7 +18,8 @@ use workbook::book::{DistanceKind, Reckoning};
 use workbook::caution::Sheet;
 use workbook::working::FigureKey;
 
-const DISTANCES: [(DistanceKind, &str, Key); 2] = [
+/// How distances are measured.
+pub(crate) const DISTANCES: [(DistanceKind, &str, Key); 2] = [
     (DistanceKind::Slope, "slope", Key::OPTION_SLOPE),
     (
         DistanceKind::Horizontal,
@@ -27,7 +28,8 @@ const DISTANCES: [(DistanceKind, &str, Key); 2] = [
     ),
 ];
 
-const RECKONINGS: [(Reckoning, &str, Key); 2] = [
+/// What distances are counted from.
+pub(crate) const RECKONINGS: [(Reckoning, &str, Key); 2] = [
     (Reckoning::FromStart, "start", Key::OPTION_FROM_START),
     (
         Reckoning::FromPrevious,
